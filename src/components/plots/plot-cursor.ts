@@ -49,14 +49,14 @@ export function createPlotCursor(durationS: number, timeS = 0): PlotCursor {
       for (const listener of listeners) listener();
     });
   };
-  const fit = (wanted: View): View => {
+  const confine = (wanted: View): View => {
     const width = Math.min(extent, Math.max(shortest, wanted.untilS - wanted.fromS));
     const middle = (wanted.fromS + wanted.untilS) / 2;
     const fromS = Math.min(Math.max(0, middle - width / 2), extent - width);
     return width >= extent ? { fromS: 0, untilS: extent } : { fromS, untilS: fromS + width };
   };
   const setView = (wanted: View) => {
-    const next = fit(wanted);
+    const next = confine(wanted);
     if (next.fromS === view.fromS && next.untilS === view.untilS) return;
     view = next;
     changed();
@@ -105,7 +105,7 @@ export function createPlotCursor(durationS: number, timeS = 0): PlotCursor {
       const whole = view.fromS === 0 && view.untilS === extent;
       extent = nextDurationS;
       time = Math.min(time, extent);
-      view = whole || view.fromS >= extent ? { fromS: 0, untilS: extent } : fit(view);
+      view = whole || view.fromS >= extent ? { fromS: 0, untilS: extent } : confine(view);
       changed();
     },
     subscribe(listener) {

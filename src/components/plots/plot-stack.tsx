@@ -1,10 +1,21 @@
-import type { Ref } from "react";
+import { type Ref, useEffect, useImperativeHandle, useLayoutEffect, useMemo, useRef, useState } from "react";
+import "uplot/dist/uPlot.min.css";
+import "./plot-stack.css";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
+import { stackPng } from "./export-png.ts";
+import { onThemeChange, type Palette, paletteOf, pictureFonts } from "./palette.ts";
+import { type PlotCursor, useOnCursor, usePlotCursor, type View } from "./plot-cursor.ts";
+import { plotSignals, usualSignals } from "./plot-signals.ts";
+import { measuredTitle, measureWith, StackCanvas } from "./stack-canvas.ts";
+import { layOutStack, type StackLayout } from "./stack-layout.ts";
+import { StackOverlay, type StackOverlayHandle, valueText } from "./stack-overlay.tsx";
+import { formatTime, timeDecimals } from "./units.ts";
+import { useStackHand } from "./use-stack-hand.ts";
 
 export interface PlotStackHandle {
   /** The whole stack as it is zoomed now, in light colours, at twice the size. */
-  toPng(title: string): Promise<Blob>;
+  toPng(title: string, note: string): Promise<Blob>;
 }
 
 export interface PlotStackProps {
@@ -19,7 +30,115 @@ export interface PlotStackProps {
   ref?: Ref<PlotStackHandle>;
 }
 
+/** Counts up whenever the canvases have to be painted anew though the run is the same: theme, faces, pixel ratio. */
+function useRepaint(): number {
+  const [epoch, setEpoch] = useState(0);
+  useEffect(() => {
+    let mounted = true;
+    const again = () => mounted && setEpoch((count) => count + 1);
+    pictureFonts(getComputedStyle(document.documentElement).getPropertyValue("--face")).then(again);
+    const stop = onThemeChange(again);
+    addEventListener("resize", again);
+    return () => {
+      mounted = false;
+      stop();
+      removeEventListener("resize", again);
+    };
+  }, []);
+  return epoch;
+}
+
+function useWidth(host: React.RefObject<HTMLElement | null>): number {
+  const [width, setWidth] = useState(0);
+  useLayoutEffect(() => {
+    const element = host.current;
+    if (!element) return;
+    setWidth(Math.floor(element.clientWidth));
+    const observer = new ResizeObserver(() => setWidth(Math.floor(element.clientWidth)));
+    observer.observe(element);
+    return () => observer.disconnect();
+  }, [host]);
+  return width;
+}
+
+/** A run on fewer pixels than this shows only what its limits watch first. */
+const NARROW_SIGNALS = 2;
+
 /** Events, signals, loss tapes and time on one axis. Needs a PlotCursorContext above. */
-export function PlotStack(_: PlotStackProps) {
-  return null;
+export function PlotStack({ scenario, result, second, signals: names, stale = false, ref }: PlotStackProps) {
+  const cursor = usePlotCursor();
+  const host = useRef<HTMLDivElement>(null);
+  const hand = useRef<HTMLDivElement>(null);
+  const overlay = useRef<StackOverlayHandle>(null);
+  const canvas = useRef<StackCanvas | null>(null);
+  const painted = useRef<View | null>(null);
+  const width = useWidth(host);
+  const epoch = useRepaint();
+  const { t } = result.series;
+
+  const shown = useMemo(() => {
+    const usual = names ?? usualSignals(scenario, result);
+    const picked = !names && width > 0 && width < 480 ? usual.slice(0, NARROW_SIGNALS) : usual;
+    return plotSignals(scenario, result, picked, second);
+  }, [scenario, result, names, second, width]);
+  // biome-ignore lint/correctness/useExhaustiveDependencies: `epoch` stands for the faces, which have widths of their own
+  const { layout, titles } = useMemo(() => {
+    const palette = { face: getComputedStyle(document.documentElement).getPropertyValue("--face").trim() || "sans-serif" } as Palette;
+    const placed: StackLayout = layOutStack(result, shown, width, measureWith(palette));
+    return { layout: placed, titles: placed.plots.map((lane) => measuredTitle(palette, lane)) };
+  }, [result, shown, width, epoch]);
+
+  useLayoutEffect(() => {
+    if (!host.current) return;
+    const made = new StackCanvas(host.current);
+    canvas.current = made;
+    return () => made.destroy();
+  }, []);
+
+  // biome-ignore lint/correctness/useExhaustiveDependencies: `epoch` and `stale` change the colours that are read from the page
+  useLayoutEffect(() => {
+    if (!host.current || layout.width <= 0) return;
+    cursor.setExtent(result.durationS, Math.max(result.rounds.periodS, result.durationS / 1e5));
+    canvas.current?.update({ layout, t, palette: paletteOf(host.current) }, cursor.view);
+    painted.current = cursor.view;
+  }, [layout, t, stale, epoch, cursor]);
+
+  useOnCursor(({ view }) => {
+    if (painted.current === view || layout.width <= 0) return;
+    painted.current = view;
+    canvas.current?.draw(view);
+  });
+
+  useImperativeHandle(ref, () => ({
+    toPng: (title, note) => stackPng({ result, signals: shown, view: cursor.view, width: Math.max(layout.width, 640), title, note }),
+  }));
+
+  const decimals = timeDecimals(result.rounds.periodS / 10);
+  const describe = (at: PlotCursor) => {
+    const element = hand.current;
+    if (!element) return;
+    const values = layout.plots.map((lane) => `${lane.signal.label} ${valueText(lane, t, at.timeS) || "not recorded"}`);
+    element.setAttribute("aria-valuenow", String(Number(at.timeS.toFixed(6))));
+    element.setAttribute("aria-valuetext", [formatTime(at.timeS, decimals), ...values].join(", "));
+  };
+  useOnCursor(describe);
+  const handlers = useStackHand({ cursor, layout, t, hand, onSelect: (stretch) => overlay.current?.select(stretch) });
+
+  return (
+    <div ref={host} className="stack" style={{ height: layout.width > 0 ? layout.height : 480 }}>
+      {layout.width > 0 && <StackOverlay ref={overlay} layout={layout} t={t} titles={titles} timeDecimals={decimals} />}
+      <div
+        ref={hand}
+        className="stack-hand"
+        role="slider"
+        tabIndex={0}
+        aria-label="Time cursor of the plots"
+        aria-keyshortcuts="ArrowLeft ArrowRight Home End + - 0"
+        aria-valuemin={0}
+        aria-valuemax={result.durationS}
+        aria-valuenow={0}
+        {...handlers}
+      />
+    </div>
+  );
 }
