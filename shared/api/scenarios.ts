@@ -110,6 +110,10 @@ export type CreateScenarioRequest = z.input<typeof createScenarioRequest>;
 export const changeScenarioRequest = z.strictObject({ archived: z.boolean() });
 export type ChangeScenarioRequest = z.infer<typeof changeScenarioRequest>;
 
+/** DELETE .../scenarios/:id, of an archived one: with all its revisions and runs. */
+export const deleteScenarioResponse = z.strictObject({ deleted: z.literal(true) });
+export type DeleteScenarioResponse = z.infer<typeof deleteScenarioResponse>;
+
 /** POST .../scenarios/:id/duplicate -> 201 scenarioResponse: revision 1 of a new scenario. null: the latest revision, "Copy of ...". */
 export const duplicateScenarioRequest = z.strictObject({
   revision: z.int().positive().nullable().default(null),

@@ -1,0 +1,124 @@
+import { promisify } from "node:util";
+import { gzip } from "node:zlib";
+import type { VerdictLine } from "#shared/api/common.ts";
+import type { CreateRunResponse, RunDetail } from "#shared/api/runs.ts";
+import { encodeSeries } from "#shared/api/series.ts";
+import type { Scenario } from "#shared/scenario/schema.ts";
+import { digestRun } from "#shared/simulation/digest.ts";
+import type { RunResult } from "#shared/simulation/result.ts";
+import { verdictSentence } from "#shared/simulation/verdict-text.ts";
+import { ENGINE_VERSION } from "#shared/simulation/version.ts";
+import type { Database, Queries } from "../../db/client.ts";
+import { HttpError, notFound } from "../../http/errors.ts";
+import type { Member } from "../../http/team-routes.ts";
+import { record } from "../activity/repository.ts";
+import { findRevision } from "../revisions/repository.ts";
+import { lockScenario, type ScenarioRow, updateScenario } from "../scenarios/repository.ts";
+import { findRun, findRunId, insertRun, type RunKey } from "./repository.ts";
+import type { Simulator } from "./simulator.ts";
+
+const compress = promisify(gzip);
+
+function counted(result: RunResult): { sent: number; lost: number } {
+  const { messages } = result.figures;
+  return { sent: messages.reduce((sum, { sent }) => sum + sent, 0), lost: messages.reduce((sum, { lost }) => sum + lost, 0) };
+}
+
+/** A run as it is stored: figures, verdict, digest and the compressed record. */
+export async function recordOf(scenario: Scenario, result: RunResult) {
+  const { bytes, header } = encodeSeries(result);
+  const compressed = await compress(bytes);
+  const { word, sentence } = verdictSentence(scenario, result);
+  return {
+    bytes: compressed,
+    row: {
+      verdict: result.verdict as VerdictLine["state"],
+      verdictWord: word,
+      verdictSentence: sentence,
+      ended: result.ended,
+      endedAtS: result.endedAtS,
+      durationS: result.durationS,
+      ...counted(result),
+      figures: result.figures,
+      limits: result.limits,
+      events: result.events,
+      digest: digestRun(result),
+      points: header.points,
+      keptPoints: header.blocks[0].length,
+      keptEvery: header.keptEvery,
+      compressedBytes: compressed.length,
+    },
+  };
+}
+export type RunRecord = Awaited<ReturnType<typeof recordOf>>;
+
+/** Stores a run and, when it is of the latest revision, shows it in the table. */
+export async function storeRun(transaction: Queries, member: Pick<Member, "user" | "team">, key: RunKey, { row, bytes }: RunRecord, at = new Date()) {
+  const scenario = await lockScenario(transaction, member.team.id, key.scenarioId);
+  const id = await insertRun(transaction, { ...key, ...row, authorId: member.user.id, createdAt: at }, bytes);
+  if (id === null) return null;
+  if (scenario.latestRevision === key.revision) {
+    const { verdict, verdictWord, verdictSentence: text, sent, lost } = row;
+    await updateScenario(transaction, scenario.id, { latestRunId: id, verdict, verdictWord, verdictSentence: text, sent, lost });
+  }
+  return { id, scenario };
+}
+
+export function createRunService(db: Database, simulator: Simulator) {
+  /** The same run asked for twice at once is computed once. */
+  const underWay = new Map<string, Promise<string>>();
+
+  const make = async (member: Member, key: RunKey, scenario: Scenario): Promise<string> => {
+    const outcome = await simulator.simulate(scenario, key.seed);
+    if (!outcome.ok) {
+      const [first] = outcome.issues;
+      throw new HttpError("scenario-invalid", `Revision ${key.revision} cannot be run: ${first.message}`, { issues: outcome.issues });
+    }
+    const made = await recordOf(scenario, outcome.result);
+    return await db.transaction(async (transaction) => {
+      const stored = await storeRun(transaction, member, key, made);
+      if (stored) {
+        await record(transaction, member, { what: "run-kept", subject: stored.scenario, revision: key.revision });
+        return stored.id;
+      }
+      return (await findRunId(transaction, key)) as string;
+    });
+  };
+
+  const runOf = async (member: Member, key: RunKey, scenario: Scenario): Promise<string> => {
+    const name = `${key.scenarioId} ${key.revision} ${key.seed}`;
+    const existing = underWay.get(name);
+    if (existing) return await existing;
+    const promise = make(member, key, scenario).finally(() => underWay.delete(name));
+    underWay.set(name, promise);
+    return await promise;
+  };
+
+  return {
+    async detail(teamId: string, id: string): Promise<RunDetail> {
+      const run = await findRun(db, teamId, id);
+      if (!run) throw notFound();
+      return run;
+    },
+
+    /** With the scenario's own seed, right after saving. */
+    async runNewRevision(member: Member, scenarioId: string, revision: number, scenario: Scenario): Promise<void> {
+      await runOf(member, { scenarioId, revision, seed: scenario.run.seed, engine: ENGINE_VERSION }, scenario);
+    },
+
+    async keep(
+      member: Member,
+      { id: scenarioId, archivedAt }: ScenarioRow,
+      wanted: { revision: number; seed: number | null; digest: string | null },
+    ): Promise<CreateRunResponse & { created: boolean }> {
+      const revision = await findRevision(db, scenarioId, wanted.revision);
+      if (!revision) throw notFound();
+      const key = { scenarioId, revision: wanted.revision, seed: wanted.seed ?? revision.scenario.run.seed, engine: ENGINE_VERSION };
+      const existing = await findRunId(db, key);
+      if (existing === null && archivedAt) throw new HttpError("scenario-archived", "This scenario is archived. Restore it to keep new runs.");
+      const run = await this.detail(member.team.id, existing ?? (await runOf(member, key, revision.scenario)));
+      return { run, digestMatches: wanted.digest === null ? null : wanted.digest === run.digest, created: existing === null };
+    },
+  };
+}
+export type RunService = ReturnType<typeof createRunService>;

@@ -1,0 +1,24 @@
+import type { z } from "zod";
+import type { Issue } from "#shared/scenario/issues.ts";
+import { describeIssues, parseScenario } from "#shared/scenario/parse.ts";
+import type { Scenario } from "#shared/scenario/schema.ts";
+import { HttpError } from "./errors.ts";
+
+const MOST_ISSUES = 100;
+
+function refuse(code: "request-invalid" | "scenario-invalid", what: string, issues: Issue[]): never {
+  const rest = issues.length - 1;
+  const message = `${what}: ${issues[0].message}${rest > 0 ? ` And ${rest} more.` : ""}`;
+  throw new HttpError(code, message, { issues: issues.slice(0, MOST_ISSUES) });
+}
+
+/** Hands on the parsed value, with defaults filled in. */
+export function validated<Schema extends z.ZodType>(schema: Schema, input: unknown, what = "The request is not valid"): z.output<Schema> {
+  const parsed = schema.safeParse(input);
+  return parsed.success ? parsed.data : refuse("request-invalid", what, describeIssues(schema, parsed.error, input));
+}
+
+export function validatedScenario(input: unknown): Scenario {
+  const parsed = parseScenario(input);
+  return parsed.ok ? parsed.value : refuse("scenario-invalid", "The scenario cannot be saved", parsed.issues);
+}
