@@ -1,0 +1,92 @@
+/** Numbers with their units, and times, as people read them. Stored values are SI; the screen shows degrees, ms, mm and %. */
+
+/** Thin space and word joiner: number and unit stay together. */
+export const THIN = "\u2009\u2060";
+const MINUS = "\u2212";
+
+/** "0.188" + "m"; no space before a degree sign. */
+export const withUnit = (number: string, unit: string): string =>
+  unit === "" ? number : unit.startsWith("°") ? `${number}${unit}` : `${number}${THIN}${unit}`;
+
+const trueMinus = (text: string): string => (/[1-9]/.test(text) ? text : text.replace("-", "")).replaceAll("-", MINUS);
+
+/** Fixed decimals, true minus, never "−0.0". */
+export const fixed = (value: number, decimals: number): string => (Number.isFinite(value) ? trueMinus(value.toFixed(decimals)) : "none");
+
+/** So many significant digits, without trailing zeros; powers of ten written as "1.2e6" below 1e-4 and from 1e6 on. */
+export function significant(value: number, digits = 3): string {
+  if (!Number.isFinite(value)) return "none";
+  const size = Math.abs(value);
+  if (size !== 0 && (size >= 1e6 || size < 1e-4)) {
+    const [mantissa = "0", exponent = "0"] = value.toExponential(digits - 1).split("e");
+    return trueMinus(`${mantissa.includes(".") ? mantissa.replace(/\.?0+$/, "") : mantissa}e${Number(exponent)}`);
+  }
+  return trueMinus(String(Number(value.toPrecision(digits))));
+}
+
+export interface Shown {
+  unit: string;
+  /** Shown value = stored value x factor. */
+  factor: number;
+}
+
+const DEGREES = 180 / Math.PI;
+
+/** Radians become degrees; all else stays. Finer choices (ms, mm, %) belong to the quantity and are made where it is shown. */
+export function shownUnit(unit: string): Shown {
+  if (unit === "rad" || unit.startsWith("rad/")) return { unit: `°${unit.slice(3)}`, factor: DEGREES };
+  return { unit, factor: 1 };
+}
+
+/** Stored value with the unit that the screen uses. */
+export function quantityText(value: number, unit: string, digits = 3): string {
+  const shown = shownUnit(unit);
+  return withUnit(significant(value * shown.factor, digits), shown.unit);
+}
+
+/** "25 ms", "2.5 ms", "1200 ms" */
+export const msText = (seconds: number, digits = 3): string => withUnit(String(Number((seconds * 1000).toPrecision(Math.max(digits, 3)))), "ms");
+
+/** "88.5 %" */
+export const percentText = (share: number, decimals = 1): string => withUnit(fixed(share * 100, decimals), "%");
+
+/** "4.8 MB" */
+export function bytesText(bytes: number): string {
+  if (bytes < 1000) return withUnit(String(bytes), "B");
+  if (bytes < 1e6) return withUnit(fixed(bytes / 1e3, bytes < 1e4 ? 1 : 0), "kB");
+  return withUnit(fixed(bytes / 1e6, 1), "MB");
+}
+
+/** "1 scenario", "11 scenarios" */
+export const counted = (count: number, one: string, many = `${one}s`): string => `${count} ${count === 1 ? one : many}`;
+
+const WORDS = ["No", "One", "Two", "Three", "Four", "Five", "Six", "Seven", "Eight", "Nine", "Ten", "Eleven", "Twelve"];
+/** At the beginning of a sentence: "Eleven scenarios", "13 scenarios". */
+export const countedInWords = (count: number, one: string, many = `${one}s`): string => `${WORDS[count] ?? count} ${count === 1 ? one : many}`;
+
+/** "engineer", "engineer and reviewer", "engineer, reviewer or administrator" */
+export function listed(words: readonly string[], last: "and" | "or" = "and"): string {
+  if (words.length < 2) return words.join("");
+  return `${words.slice(0, -1).join(", ")} ${last} ${words.at(-1)}`;
+}
+
+const MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"];
+const two = (value: number): string => String(value).padStart(2, "0");
+const clock = (at: Date): string => `${two(at.getHours())}:${two(at.getMinutes())}`;
+const dayNumber = (at: Date): number => Math.round(Date.UTC(at.getFullYear(), at.getMonth(), at.getDate()) / 86_400_000);
+
+/** "Today 14:32", "Yesterday", "28 Nov", "28 Nov 2024"; in the time zone of this browser. */
+export function whenText(iso: string, now: Date = new Date()): string {
+  const at = new Date(iso);
+  const days = dayNumber(now) - dayNumber(at);
+  if (days === 0) return `Today ${clock(at)}`;
+  if (days === 1) return "Yesterday";
+  const day = `${at.getDate()} ${MONTHS[at.getMonth()]}`;
+  return at.getFullYear() === now.getFullYear() ? day : `${day} ${at.getFullYear()}`;
+}
+
+/** "28 Nov 2025, 14:32": the whole instant, for titles and records. */
+export function instantText(iso: string): string {
+  const at = new Date(iso);
+  return `${at.getDate()} ${MONTHS[at.getMonth()]} ${at.getFullYear()}, ${clock(at)}`;
+}
