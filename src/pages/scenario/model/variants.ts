@@ -1,0 +1,175 @@
+/**
+ * Parts of a scenario that come in several forms (a controller's kind, a loss process, a push): what each form starts
+ * with when it is chosen for the first time. What was set in a form before is kept by the page for the session.
+ */
+import { designLoop } from "#shared/control/design.ts";
+import { roundTiming } from "#shared/network/round.ts";
+import type { Law, Scenario } from "#shared/scenario/schema.ts";
+import { getAt, type Path, patternOf } from "./json-path.ts";
+import { outputNamed, plantOf } from "./machine.ts";
+
+type Node = Record<string, unknown>;
+const node = (value: unknown): Node => (value !== null && typeof value === "object" ? (value as Node) : {});
+const number = (value: unknown, otherwise: number): number => (typeof value === "number" ? value : otherwise);
+
+/** Figures that people go on working with, not the last bits of a computation. */
+const rounded = (value: number): number => Number(value.toPrecision(5));
+
+/** The gains that the present law amounts to, inputs x states; null when there are none. */
+function presentGain(good: Scenario | null): number[][] | null {
+  if (!good || good.loops[0].controller.law.type === "pid") return null;
+  const { design } = designLoop(good, roundTiming(good).ns);
+  const feedback = design?.feedback;
+  if (!design || !feedback) return null;
+  const { n, m } = design.model;
+  return Array.from({ length: m }, (_, j) => Array.from({ length: n }, (_, i) => rounded(feedback.k[j * n + i])));
+}
+
+function presentIntegral(good: Scenario | null): { signal: string; gain: number[] }[] {
+  const law = good?.loops[0].controller.law;
+  if (!good || !law || law.type === "pid") return [];
+  const { design } = designLoop(good, roundTiming(good).ns);
+  const feedback = design?.feedback;
+  if (!design || !feedback) return [];
+  return law.integral.map(({ signal }, i) => ({
+    signal,
+    gain: Array.from({ length: design.model.m }, (_, j) => rounded(feedback.ki[j * feedback.ni + i])),
+  }));
+}
+
+function firstLaw(type: string, json: unknown, good: Scenario | null): Law {
+  const plant = plantOf(json);
+  const n = plant?.n ?? 1;
+  const m = plant?.m ?? 1;
+  if (type === "lqr") return { type, stateWeights: Array(n).fill(1), inputWeights: Array(m).fill(1), integral: [] };
+  const gain = presentGain(good);
+  if (type === "gain") return { type, gain: gain ?? Array.from({ length: m }, () => Array(n).fill(0)), integral: presentIntegral(good) };
+  // The PID begins as the part of the present state feedback that acts on the first angle, or else on the first signal.
+  const measured = (getAt(json, ["loops", 0, "sensor", "signals"]) as { signal: string }[] | undefined)?.map(({ signal }) => signal) ?? [];
+  const signal = measured.find((name) => outputNamed(json, name)?.unit === "rad") ?? measured[0] ?? "x1";
+  const index = plant?.states.findIndex(({ name }) => name === signal) ?? -1;
+  const half = Math.floor(n / 2);
+  return {
+    type: "pid",
+    signal,
+    proportional: gain && index >= 0 ? gain[0][index] : 1,
+    integral: 0,
+    derivative: gain && index >= 0 && index + half < n && n % 2 === 0 ? gain[0][index + half] : 0,
+    filterS: 0.01,
+  };
+}
+
+function firstEstimator(type: string, json: unknown): Node {
+  if (type === "direct") return { type };
+  const signals = (getAt(json, ["loops", 0, "sensor", "signals"]) as { noiseStd?: number }[] | undefined) ?? [];
+  return {
+    type,
+    update: "stationary",
+    processNoise: Array(plantOf(json)?.n ?? 1).fill(0.05),
+    measurementNoise: signals.map(({ noiseStd }) => (typeof noiseStd === "number" && noiseStd > 0 ? noiseStd : 0.001)),
+  };
+}
+
+/** Loss ratio of the present process, to go on with about as many losses in another form. */
+function presentLoss(json: unknown, message: "measurement" | "command"): number {
+  const process = node(getAt(json, ["losses", "process"]));
+  const part = process.type === "gilbert-elliott-shared" ? process.channel : process[message];
+  if (typeof part === "number") return part;
+  if (Array.isArray(part) && part.length > 0) return part.filter((bit) => bit === 0).length / part.length;
+  const { goodToBad, badToGood, lossInGood, lossInBad } = node(part);
+  const sum = number(goodToBad, 0) + number(badToGood, 0);
+  return sum > 0 ? (number(goodToBad, 0) * number(lossInBad, 1) + number(badToGood, 0) * number(lossInGood, 0)) / sum : 0.05;
+}
+
+/** Bursts of four rounds on average with the given loss ratio. */
+function bursts(ratio: number): Node {
+  const badToGood = 0.25;
+  const share = Math.min(Math.max(ratio, 0), 0.8);
+  return { goodToBad: Number(((badToGood * share) / (1 - share)).toPrecision(3)), badToGood, lossInGood: 0, lossInBad: 1 };
+}
+
+function firstProcess(type: string, json: unknown): Node {
+  const loss = (message: "measurement" | "command") => Number(presentLoss(json, message).toPrecision(3));
+  switch (type) {
+    case "bernoulli":
+      return { type, measurement: loss("measurement"), command: loss("command") };
+    case "gilbert-elliott":
+      return { type, measurement: bursts(loss("measurement")), command: bursts(loss("command")) };
+    case "gilbert-elliott-shared":
+      return { type, channel: bursts(loss("measurement")) };
+    case "given":
+      return { type, measurement: [1, 1, 0, 1, 1, 1, 1, 0, 1, 1], command: [1, 1, 1, 1, 0, 1, 1, 1, 1, 1], then: "repeat" };
+    default:
+      return { type: "none" };
+  }
+}
+
+export const firstChannel = (json: unknown): string => plantOf(json)?.channels[0]?.name ?? "cart";
+
+/** Keeps time and size of the push where the other form has them too. */
+function firstPush(type: string, json: unknown, path: Path): Node {
+  const push = node(getAt(json, path));
+  const channel = push.channel ?? firstChannel(json);
+  const fromS = number(push.fromS ?? push.atS, 1);
+  const size = number(push.size ?? push.amplitude ?? push.std, 1);
+  const untilS = typeof push.untilS === "number" ? push.untilS : null;
+  switch (type) {
+    case "impulse":
+      return { type, channel, atS: fromS, size };
+    case "ramp":
+      return { type, channel, fromS, untilS: untilS ?? fromS + 1, size };
+    case "sine":
+      return { type, channel, fromS, untilS, amplitude: size, frequencyHz: 1, phaseRad: 0 };
+    case "noise":
+      return { type, channel, fromS, untilS, std: Math.abs(size), intervalS: 0.05 };
+    case "given":
+      return { type, channel, fromS, intervalS: 0.05, values: [size, 0] };
+    default:
+      return { type: "step", channel, fromS, untilS, size };
+  }
+}
+
+function firstLimit(type: string, json: unknown, path: Path): Node {
+  const limit = node(getAt(json, path));
+  const signal = limit.signal ?? plantOf(json)?.states[0]?.name ?? "x1";
+  const bound = Math.abs(number(limit.hi ?? limit.band ?? (limit.type === "saturation" ? undefined : limit.below), 0.1)) || 0.1;
+  switch (type) {
+    case "settle":
+      return { type, signal, band: bound, withinS: 2, afterS: number(limit.fromS, 0) };
+    case "rms":
+      return { type, signal, of: limit.of ?? "signal", below: bound, fromS: 0, untilS: null };
+    case "saturation":
+      return { type, below: 0.02 };
+    default:
+      return { type: "within", signal, of: limit.of ?? "signal", lo: -bound, hi: bound, fromS: 0, untilS: null };
+  }
+}
+
+function firstProfile(type: string, json: unknown, path: Path): Node {
+  const profile = node(getAt(json, path));
+  if (type === "sine") return { type, offset: 0, amplitude: 0.1, frequencyHz: 0.2, phaseRad: 0 };
+  return { type, points: Array.isArray(profile.points) ? profile.points : [{ atS: 1, value: 0.1 }] };
+}
+
+const FIRST: Record<string, (type: string, json: unknown, path: Path, good: Scenario | null) => unknown> = {
+  "loops[].controller.law": (type, json, _, good) => firstLaw(type, json, good),
+  "loops[].controller.estimator": (type, json) => firstEstimator(type, json),
+  "loops[].actuator.onLoss": (policy) => (policy === "plan" ? { policy, length: 6, end: "zero" } : { policy }),
+  "loops[].sensor.noise": (type, json) =>
+    type === "given"
+      ? { type, values: [Array((getAt(json, ["loops", 0, "sensor", "signals"]) as unknown[] | undefined)?.length ?? 1).fill(0)], then: "repeat" }
+      : { type },
+  "losses.process": (type, json) => firstProcess(type, json),
+  "pushes[]": (type, json, path) => firstPush(type, json, path),
+  "limits[]": (type, json, path) => firstLimit(type, json, path),
+  "loops[].references[].profile": (type, json, path) => firstProfile(type, json, path),
+  "loops[].feedforward[].profile": (type, json, path) => firstProfile(type, json, path),
+};
+
+/** The key that says which form the part at the path has. */
+export const tagKey = (path: Path): "type" | "policy" => (path.at(-1) === "onLoss" ? "policy" : "type");
+
+/** The part in another form, with values to begin with. `good`: the last scenario that could be run. */
+export function firstOf(json: unknown, path: Path, tag: string, good: Scenario | null): unknown {
+  return FIRST[patternOf(path)]?.(tag, json, path, good) ?? { [tagKey(path)]: tag };
+}

@@ -1,0 +1,98 @@
+import type { RoundTiming, Saving } from "#shared/network/round.ts";
+import { RoundRibbon } from "#src/components/drawings/round-ribbon.tsx";
+import { Button } from "#src/components/ui/button.tsx";
+import { counted, msText } from "#src/lib/format.ts";
+import { PHY, RELAY, wordOf } from "../model/choices.ts";
+import { getAt } from "../model/json-path.ts";
+import { applySaving } from "../model/savings.ts";
+import { ChoiceAt, NumberAt, PickAt, SwitchAt } from "./fields.tsx";
+import { useForm } from "./form.tsx";
+import { SetupSection } from "./setup-section.tsx";
+
+function sum(json: unknown, timing: RoundTiming | null): string {
+  const period = msText(Number(getAt(json, ["round", "periodS"])), 5);
+  if (!timing) return period;
+  return [period, counted(timing.slots.length, "slot"), timing.fits ? "fits" : "does not fit"].join(" · ");
+}
+
+export function RoundSection({ timing }: { timing: RoundTiming | null }) {
+  const { json } = useForm().draft;
+  return (
+    <SetupSection id="round" title="Round" sum={sum(json, timing)}>
+      <NumberAt path={["round", "periodS"]} />
+      {timing && !timing.fits && <Savings timing={timing} hops={Number(getAt(json, ["round", "hops"]))} />}
+      {timing?.fits && (
+        <p className="note second pb-1">
+          Reserve {msText(timing.reserveS)}; the shortest period is {msText(timing.shortestPeriodS, 5)}.
+        </p>
+      )}
+      <PickAt path={["radio", "phy"]} options={PHY} />
+      <NumberAt path={["round", "hops"]} />
+      <NumberAt path={["round", "transmissions"]} />
+      <ChoiceAt path={["round", "relay"]} options={RELAY} />
+      <NumberAt path={["round", "slackSteps"]} />
+      <NumberAt path={["radio", "headerBytes"]} />
+      <NumberAt path={["radio", "turnaroundS"]} empty="standard" />
+      <NumberAt path={["round", "wakeUpS"]} />
+      <NumberAt path={["round", "gapS"]} />
+      <NumberAt path={["round", "clockPpm"]} />
+      <SwitchAt path={["round", "beacon"]} off="none" on="opens the round" first={() => ({ payloadBytes: 4 })} />
+      {getAt(json, ["round", "beacon"]) !== null && <NumberAt path={["round", "beacon", "payloadBytes"]} />}
+    </SetupSection>
+  );
+}
+
+/** What would make room, largest first; each can be taken with one press. */
+function Savings({ timing, hops }: { timing: RoundTiming; hops: number }) {
+  const { draft, edit, readOnly } = useForm();
+  const missing = -timing.reserveS;
+  return (
+    <div className="su-save">
+      <RoundRibbon timing={timing} hops={hops} />
+      <p className="sub3">What would make room ({msText(missing)} are missing)</p>
+      <ul>
+        {timing.savings.map((saving) => {
+          const applied = applySaving(draft.json, saving, timing);
+          return (
+            <li key={saving.change}>
+              <span>
+                {words(saving, draft.json)}
+                <span className="second">
+                  {" "}
+                  saves {msText(saving.savesS)}
+                  {saving.savesS >= missing && saving.change !== "period" && ", enough"}
+                </span>
+              </span>
+              {!readOnly && (
+                <Button
+                  small
+                  impossible={applied ? null : "The header is empty already: encode a signal on fewer bits."}
+                  onClick={() => applied && edit({ kind: "put", json: applied })}
+                  aria-label={`Take: ${words(saving, draft.json)}`}
+                >
+                  Take
+                </Button>
+              )}
+            </li>
+          );
+        })}
+      </ul>
+    </div>
+  );
+}
+
+function words({ change, text }: Saving, json: unknown): string {
+  const at = (path: string[]) => Number(getAt(json, path));
+  switch (change) {
+    case "transmissions":
+      return `Transmissions ${at(["round", "transmissions"])} \u2192 ${at(["round", "transmissions"]) - 1}`;
+    case "hops":
+      return `Hops ${at(["round", "hops"])} \u2192 ${at(["round", "hops"]) - 1}`;
+    case "bytes":
+      return `Header ${at(["radio", "headerBytes"])} \u2192 ${Math.max(0, at(["radio", "headerBytes"]) - 1)} bytes`;
+    case "phy":
+      return wordOf(PHY, PHY.find(({ word }) => word === text)?.value ?? text);
+    case "period":
+      return `A longer period`;
+  }
+}

@@ -1,0 +1,74 @@
+import { createContext, type ReactNode, useContext } from "react";
+import { ProblemNote } from "#src/components/ui/field.tsx";
+import { Section } from "#src/components/ui/section.tsx";
+import { isWithin } from "../model/json-path.ts";
+import type { FieldIssue } from "../model/judge.ts";
+import { asProblem } from "./fields.tsx";
+import { useForm } from "./form.tsx";
+
+/** Which section a setting belongs to: the first that owns a beginning of its path. */
+export const OWNERS = {
+  machine: ["loops[0].plant"],
+  loop: ["loops[0].controller", "loops[0].sensor", "loops[0].actuator", "loops[0].timing"],
+  reference: ["loops[0].references", "loops[0].feedforward"],
+  losses: ["losses"],
+  round: ["round", "radio"],
+  pushes: ["pushes", "changes"],
+  limits: ["limits"],
+  start: ["loops[0].start"],
+  run: ["run"],
+  about: ["name", "description", "format", "version", "loops"],
+} as const;
+export type SectionId = keyof typeof OWNERS;
+export const SECTION_IDS = Object.keys(OWNERS) as SectionId[];
+
+export const sectionOf = (path: string): SectionId => SECTION_IDS.find((id) => OWNERS[id].some((outer) => isWithin(path, outer))) ?? "about";
+
+export interface Folds {
+  open: ReadonlySet<SectionId>;
+  setOpen(id: SectionId, open: boolean): void;
+}
+const FoldsContext = createContext<Folds | null>(null);
+export const FoldsProvider = FoldsContext;
+
+function useFolds(): Folds {
+  const folds = useContext(FoldsContext);
+  if (!folds) throw new Error("SetupSection: no FoldsProvider above this component.");
+  return folds;
+}
+
+const toPutRight = (count: number): string => `${count} to put right`;
+
+/** A section of the set-up. Closed, it says its sum, or how much is wrong inside; open, it tells what no field of it can. */
+export function SetupSection({ id, title, sum, children }: { id: SectionId; title: string; sum: string; children: ReactNode }) {
+  const { issues, placed } = useForm();
+  const { open, setOpen } = useFolds();
+  const own = issues.filter((issue) => sectionOf(issue.path) === id);
+  const homeless = own.filter((issue) => !placed.has(issue.path) && ![...placed].some((path) => issue.path.startsWith(`${path}[`)));
+  return (
+    <Section
+      id={`setup-${id}`}
+      title={title}
+      sum={own.length > 0 && !open.has(id) ? toPutRight(own.length) : sum}
+      bad={own.length > 0 && !open.has(id)}
+      open={open.has(id)}
+      onOpenChange={(next) => setOpen(id, next)}
+    >
+      {homeless.map((issue) => (
+        <Homeless key={`${issue.path} ${issue.code}`} issue={issue} />
+      ))}
+      {children}
+    </Section>
+  );
+}
+
+const Homeless = ({ issue }: { issue: FieldIssue }) => {
+  const problem = asProblem(issue);
+  return problem && <ProblemNote problem={problem} />;
+};
+
+/** How many issues lie inside a folded part, for its mark. */
+export function useIssuesIn(...outer: string[]): number {
+  return useForm().issues.filter((issue) => outer.some((path) => isWithin(issue.path, path))).length;
+}
+export const sumOrIssues = (count: number, sum: string): string => (count > 0 ? toPutRight(count) : sum);
