@@ -119,7 +119,7 @@ export function decodeSeries(bytes: Uint8Array): SeriesRecord {
   const header = headerSchema.parse(JSON.parse(text));
   let at = 8 + headerBytes;
   const read = header.blocks.map(({ type, length }) => {
-    const data = type === "u8" ? bytes.slice(at, at + length) : new Float64Array(length);
+    const data = type === "u8" ? new Uint8Array(bytes.subarray(at, at + length)) : new Float64Array(length);
     if (data instanceof Float64Array) for (let i = 0; i < length; i++) data[i] = view.getFloat64(at + 8 * i, true);
     at += padded(data.byteLength);
     return data;

@@ -89,20 +89,12 @@ export function describeIssues(schema: z.ZodType, error: z.ZodError, input: unkn
       ];
     }
     if (issue.code === "invalid_union") {
-      const def = governing && (governing as unknown as { def: Def }).def;
-      const tag = def?.discriminator;
-      const tags = tag
-        ? def?.options?.flatMap((option) => [
-            ...(((option as unknown as { def: Def }).def.shape?.[tag] as unknown as { values?: Set<unknown> })?.values ?? []),
-          ])
-        : undefined;
+      const choices = "options" in issue && Array.isArray(issue.options) ? issue.options.map(show).join(", ") : null;
       return [
         {
           code: "not-a-choice",
           path,
-          message: tags?.length
-            ? `${path} is ${show(value)}; permitted: ${tags.map(show).join(", ")}.`
-            : `${path || "The file"} is ${show(value)}, which is none of the permitted forms.`,
+          message: `${path || "The file"} is ${show(value)}; ${choices ? `permitted: ${choices}` : "none of the permitted forms fits"}.`,
         },
       ];
     }

@@ -1,0 +1,71 @@
+/**
+ * The actuator node's half of the loop logic (model 4, steps 5 and 6): what comes out at an acting instant, and the
+ * reaction to silence. Hold is a plan of one command that ends in hold, zero one that ends in zero.
+ */
+export interface SilenceSetup {
+  afterLost: number;
+  /** Delivered commands in a row after which commands act again; 0: never. */
+  resumeAfter: number;
+}
+
+export class ActuatorNode {
+  /** Input in force: what the drive is asked for, m. During a reaction to silence it is zero. */
+  readonly inForce: Float64Array;
+  /** A reaction to silence is on. */
+  silent = false;
+  readonly #m: number;
+  /** planLength x m; entry 0 is in force. Shifted, never indexed, so that the stage is linear. */
+  readonly #buffer: Float64Array;
+  readonly #holdAtEnd: boolean;
+  readonly #silence: SilenceSetup | null;
+  #lostInARow = 0;
+  #goodInARow = 0;
+
+  constructor(m: number, planLength: number, holdAtEnd: boolean, silence: SilenceSetup | null) {
+    this.#m = m;
+    this.inForce = new Float64Array(m);
+    this.#buffer = new Float64Array(planLength * m);
+    this.#holdAtEnd = holdAtEnd;
+    this.#silence = silence;
+  }
+
+  get memory(): readonly Float64Array[] {
+    return [this.#buffer];
+  }
+
+  /**
+   * An acting instant: plan (planLength x m) replaces the buffer when delivered. `counts` is false while the network has
+   * not joined. Returns what changed: the reaction to silence began, ended, or nothing.
+   */
+  act(plan: Float64Array, delivered: boolean, counts: boolean): "begins" | "ends" | null {
+    const m = this.#m;
+    const buffer = this.#buffer;
+    if (delivered) buffer.set(plan);
+    else if (buffer.length > m) {
+      buffer.copyWithin(0, m);
+      if (!this.#holdAtEnd) buffer.fill(0, buffer.length - m);
+    } else if (!this.#holdAtEnd) buffer.fill(0);
+    const change = this.#silence ? this.#listen(this.#silence, delivered, counts) : null;
+    for (let j = 0; j < m; j++) this.inForce[j] = this.silent ? 0 : buffer[j];
+    return change;
+  }
+
+  #listen(silence: SilenceSetup, delivered: boolean, counts: boolean): "begins" | "ends" | null {
+    if (delivered) {
+      this.#lostInARow = 0;
+      this.#goodInARow++;
+      if (this.silent && silence.resumeAfter > 0 && this.#goodInARow >= silence.resumeAfter) {
+        this.silent = false;
+        return "ends";
+      }
+      return null;
+    }
+    this.#goodInARow = 0;
+    if (counts) this.#lostInARow++;
+    if (!this.silent && this.#lostInARow >= silence.afterLost) {
+      this.silent = true;
+      return "begins";
+    }
+    return null;
+  }
+}

@@ -1,0 +1,16 @@
+/**
+ * The only door to elementary functions. The built-in ones differ in the last bit between JavaScript engines; these are
+ * pure arithmetic and give the same bits everywhere.
+ */
+export { default as cos } from "@stdlib/math-base-special-cos";
+export { default as exp } from "@stdlib/math-base-special-exp";
+export { default as ln } from "@stdlib/math-base-special-ln";
+export { default as sin } from "@stdlib/math-base-special-sin";
+export { default as tanh } from "@stdlib/math-base-special-tanh";
+
+import sincosBoth from "@stdlib/math-base-special-sincos";
+
+/** Writes sin(x) to out[0] and cos(x) to out[1]. */
+export const sincos = (x: number, out: Float64Array): void => {
+  sincosBoth.assign(x, out, 1, 0);
+};

@@ -1,0 +1,324 @@
+/** Rules that span several fields of a scenario. The shape and the single ranges are in schema.ts. */
+import { designLoop } from "#shared/control/design.ts";
+import { quantumOf } from "#shared/control/encoding.ts";
+import { type RoundTiming, roundTiming } from "#shared/network/round.ts";
+import type { Plant } from "#shared/plants/plant.ts";
+import { createPlant } from "#shared/plants/registry.ts";
+import { plantSchema } from "#shared/plants/schema.ts";
+import type { Issue } from "./issues.ts";
+import { schemaAt } from "./parse.ts";
+import { permittedRange, quantityMeta } from "./quantity.ts";
+import type { Encoding, Loop, Scenario } from "./schema.ts";
+
+/** Most rounds of one run; keeps a run within the memory of a browser tab. */
+export const MAX_ROUNDS = 200_000;
+
+export interface Checked {
+  issues: Issue[];
+  timing: RoundTiming;
+}
+
+export const roundsOf = (scenario: Scenario): number =>
+  Math.ceil(Math.round(scenario.run.durationS * 1e9) / Math.round(scenario.round.periodS * 1e9));
+
+class Report {
+  readonly issues: Issue[] = [];
+  add(code: string, path: string, message: string): void {
+    this.issues.push({ code, path, message });
+  }
+  length(path: string, what: string, found: number, wanted: number, because: string): boolean {
+    if (found !== wanted) this.add("wrong-length", path, `${what}: ${found} given, ${wanted} needed, ${because}.`);
+    return found === wanted;
+  }
+  known(path: string, name: string, names: readonly string[], what: string): void {
+    if (!names.includes(name)) this.add("unknown-name", path, `"${name}" is not ${what}; permitted: ${names.length ? names.join(", ") : "none"}.`);
+  }
+  ordered(path: string, from: number, until: number | null): void {
+    if (until !== null && until <= from) this.add("out-of-order", path, `It ends at ${until} s but begins at ${from} s; the end has to be later.`);
+  }
+}
+
+/** Every rule across fields; an empty list means that the scenario runs. */
+export function checkScenario(scenario: Scenario): Checked {
+  const report = new Report();
+  const loop = scenario.loops[0];
+  const timing = roundTiming(scenario);
+  if (!checkStateSpace(report, loop)) return { issues: [...report.issues, ...timing.issues], timing };
+
+  const plant = createPlant(loop.plant);
+  checkLoop(report, scenario, loop, plant);
+  checkSequences(report, scenario, timing);
+  checkEvents(report, scenario, plant);
+  checkLimits(report, scenario, plant);
+  const issues = [...report.issues, ...timing.issues];
+  // A design needs consistent sizes and instants; without them its complaints would only repeat what was said.
+  if (issues.length === 0) issues.push(...designLoop(scenario, timing.ns).issues);
+  return { issues, timing };
+}
+
+function checkStateSpace(report: Report, loop: Loop): boolean {
+  const { plant } = loop;
+  if (plant.type !== "state-space") return true;
+  const path = "loops[0].plant";
+  const before = report.issues.length;
+  const n = plant.a.length;
+  const m = plant.b[0].length;
+  plant.a.forEach((row, i) => {
+    report.length(`${path}.a[${i}]`, `Row ${i + 1} of A`, row.length, n, `because A has ${n} rows`);
+  });
+  report.length(`${path}.b`, "Rows of B", plant.b.length, n, `because A has ${n} rows`);
+  plant.b.forEach((row, i) => {
+    report.length(`${path}.b[${i}]`, `Row ${i + 1} of B`, row.length, m, `because the first row of B has ${m} entries`);
+  });
+  plant.c?.forEach((row, i) => {
+    report.length(`${path}.c[${i}]`, `Row ${i + 1} of C`, row.length, n, `because A has ${n} rows`);
+  });
+  if (plant.d) {
+    report.length(`${path}.d`, "Rows of D", plant.d.length, plant.c?.length ?? 0, "because C has as many rows");
+    plant.d.forEach((row, i) => {
+      report.length(`${path}.d[${i}]`, `Row ${i + 1} of D`, row.length, m, `because B has ${m} columns`);
+    });
+  }
+  if (plant.states) report.length(`${path}.states`, "Names of states", plant.states.length, n, `because A has ${n} rows`);
+  if (plant.inputs) report.length(`${path}.inputs`, "Names of inputs", plant.inputs.length, m, `because B has ${m} columns`);
+  if (plant.outputs) report.length(`${path}.outputs`, "Names of outputs", plant.outputs.length, plant.c?.length ?? 0, "because C has as many rows");
+  if (report.issues.length > before) return false;
+  const built = createPlant(plant);
+  const names = [...built.outputs, ...built.inputs].map(({ name }) => name);
+  names.forEach((name, i) => {
+    if (names.indexOf(name) !== i)
+      report.add("duplicate-name", path, `The name "${name}" is used twice; states, outputs and inputs need different names.`);
+  });
+  return report.issues.length === before;
+}
+
+function checkEncoding(report: Report, path: string, encoding: Encoding | null): void {
+  if (!encoding) return;
+  if (encoding.hi <= encoding.lo) {
+    report.add(
+      "out-of-order",
+      `${path}.hi`,
+      `The range of the encoding ends at ${encoding.hi} but begins at ${encoding.lo}; the end has to be larger.`,
+    );
+    return;
+  }
+  const quantum = quantumOf(encoding);
+  const steps = -encoding.lo / quantum;
+  const lastCode = (encoding.hi - encoding.lo) / quantum - 1;
+  if (Math.abs(steps - Math.round(steps)) > 1e-9 || steps < -1e-9 || steps > lastCode + 1e-9) {
+    report.add(
+      "zero-not-on-grid",
+      `${path}.lo`,
+      `Zero (the operating point) is not a value of this encoding: its steps are ${quantum} wide and start at ${encoding.lo}. Choose a range of which 0 is a whole number of steps from the lower end, such as ${-encoding.hi} to ${encoding.hi}.`,
+    );
+  }
+}
+
+function checkLoop(report: Report, scenario: Scenario, loop: Loop, plant: Plant): void {
+  const { n, m } = plant;
+  const states = plant.states.map(({ name }) => name);
+  const inputs = plant.inputs.map(({ name }) => name);
+  const outputs = plant.outputs.map(({ name }) => name);
+  const { sensor, controller, actuator, start } = loop;
+  const at = "loops[0]";
+  const nStates = `because the plant has ${n} states (${states.join(", ")})`;
+  const nInputs = `because the plant has ${m} ${m === 1 ? "input" : "inputs"} (${inputs.join(", ")})`;
+
+  if (start.state) report.length(`${at}.start.state`, "Start values", start.state.length, n, nStates);
+  if (start.estimate) report.length(`${at}.start.estimate`, "Start values of the estimate", start.estimate.length, n, nStates);
+
+  sensor.signals.forEach(({ signal, encoding }, i) => {
+    report.known(`${at}.sensor.signals[${i}].signal`, signal, outputs, "a state or output of this plant");
+    if (sensor.signals.findIndex((other) => other.signal === signal) !== i)
+      report.add("duplicate-name", `${at}.sensor.signals[${i}].signal`, `"${signal}" is measured twice.`);
+    checkEncoding(report, `${at}.sensor.signals[${i}].encoding`, encoding);
+  });
+  const p = sensor.signals.length;
+
+  report.length(`${at}.actuator.inputs`, "Inputs of the actuator", actuator.inputs.length, m, nInputs);
+  actuator.inputs.forEach((input, i) => {
+    if (input.hi <= input.lo)
+      report.add(
+        "out-of-order",
+        `${at}.actuator.inputs[${i}].hi`,
+        `Lowest and largest input are both ${input.hi}; the largest has to be above the lowest.`,
+      );
+    checkEncoding(report, `${at}.actuator.inputs[${i}].encoding`, input.encoding);
+  });
+  if (controller.limits) report.length(`${at}.controller.limits`, "Limits of the controller", controller.limits.length, m, nInputs);
+
+  const { law, estimator } = controller;
+  if (law.type === "pid") {
+    const measured = sensor.signals.map(({ signal }) => signal);
+    report.known(`${at}.controller.law.signal`, law.signal, measured, "a measured signal");
+    if (m !== 1) report.add("not-possible", `${at}.controller.law.type`, `A PID drives one input; this plant has ${m}.`);
+    if (actuator.onLoss.policy === "plan")
+      report.add("not-possible", `${at}.actuator.onLoss.policy`, "A PID has no model and cannot plan commands ahead; choose hold or zero.");
+  } else {
+    if (law.type === "lqr") {
+      report.length(`${at}.controller.law.stateWeights`, "State weights", law.stateWeights.length, n, nStates);
+      report.length(`${at}.controller.law.inputWeights`, "Input weights", law.inputWeights.length, m, nInputs);
+    } else {
+      report.length(`${at}.controller.law.gain`, "Rows of the gain", law.gain.length, m, nInputs);
+      law.gain.forEach((row, i) => {
+        report.length(`${at}.controller.law.gain[${i}]`, `Row ${i + 1} of the gain`, row.length, n, nStates);
+      });
+      law.integral.forEach(({ gain }, i) => {
+        report.length(`${at}.controller.law.integral[${i}].gain`, "Integral gains", gain.length, m, nInputs);
+      });
+    }
+    law.integral.forEach(({ signal }, i) => {
+      report.known(`${at}.controller.law.integral[${i}].signal`, signal, states, "a state of this plant");
+    });
+    if (estimator.type === "direct") {
+      const missing = states.filter((name) => !sensor.signals.some(({ signal }) => signal === name));
+      if (missing.length || p !== n) {
+        report.add(
+          "not-possible",
+          `${at}.controller.estimator.type`,
+          missing.length
+            ? `Without a Kalman filter every state has to be measured; ${missing.join(", ")} ${missing.length === 1 ? "is" : "are"} not.`
+            : "Without a Kalman filter only the states may be measured, each once.",
+        );
+      }
+    } else {
+      report.length(`${at}.controller.estimator.processNoise`, "Process noise figures", estimator.processNoise.length, n, nStates);
+      report.length(
+        `${at}.controller.estimator.measurementNoise`,
+        "Assumed sensor noise figures",
+        estimator.measurementNoise.length,
+        p,
+        `because ${p} signals are measured`,
+      );
+    }
+  }
+  if (controller.acknowledgement === "reported" && controller.placement !== "apart") {
+    report.add(
+      "not-possible",
+      `${at}.controller.acknowledgement`,
+      controller.placement === "sensor"
+        ? "The input in force is reported with the measurement message; a controller with the sensor needs no such message. Choose none or at once."
+        : "A controller with the actuator always knows the input in force. Choose none.",
+    );
+  }
+  if (actuator.silence?.reaction === "brake" && !plant.brake)
+    report.add("not-possible", `${at}.actuator.silence.reaction`, "This plant has no brake; choose ramp or power off.");
+
+  const referable = law.type === "pid" ? [...states, law.signal] : states;
+  loop.references.forEach(({ signal, profile }, i) => {
+    report.known(`${at}.references[${i}].signal`, signal, referable, "a state of this plant");
+    if (loop.references.findIndex((other) => other.signal === signal) !== i)
+      report.add("duplicate-name", `${at}.references[${i}].signal`, `"${signal}" has two references.`);
+    checkProfile(report, `${at}.references[${i}].profile`, profile);
+  });
+  loop.feedforward.forEach(({ signal, profile }, i) => {
+    report.known(`${at}.feedforward[${i}].signal`, signal, inputs, "an input of this plant");
+    checkProfile(report, `${at}.feedforward[${i}].profile`, profile);
+  });
+  const rounds = roundsOf(scenario);
+  if (rounds > MAX_ROUNDS) {
+    report.add(
+      "out-of-range",
+      "run.durationS",
+      `${scenario.run.durationS} s are ${rounds} rounds of ${scenario.round.periodS * 1000} ms; at most ${MAX_ROUNDS} rounds, ${(MAX_ROUNDS * scenario.round.periodS).toFixed(1)} s.`,
+    );
+  }
+}
+
+function checkProfile(report: Report, path: string, profile: Loop["references"][number]["profile"]): void {
+  if (profile.type === "sine") return;
+  profile.points.forEach((point, i) => {
+    const before = profile.points[i - 1];
+    if (before && point.atS <= before.atS)
+      report.add(
+        "out-of-order",
+        `${path}.points[${i}].atS`,
+        `Point ${i + 1} is at ${point.atS} s, not later than the point before it (${before.atS} s).`,
+      );
+  });
+}
+
+function checkSequences(report: Report, scenario: Scenario, timing: RoundTiming): void {
+  const loop = scenario.loops[0];
+  const rounds = roundsOf(scenario);
+  const { process, outages } = scenario.losses;
+  if (process.type === "given") {
+    for (const message of ["measurement", "command"] as const) {
+      const needed = timing.slots.some((slot) => slot.message === message);
+      const length = process[message].length;
+      if (needed && length === 0)
+        report.add(
+          "sequence-too-short",
+          `losses.process.${message}`,
+          `No deliveries are given for the ${message}; ${rounds} are needed, one a round.`,
+        );
+      else if (needed && process.then === "error" && length < rounds) {
+        report.add(
+          "sequence-too-short",
+          `losses.process.${message}`,
+          `${length} deliveries are given for ${rounds} rounds. Give one for every round, or say what follows: "then": "delivered" or "repeat".`,
+        );
+      }
+    }
+  }
+  outages.forEach((outage, i) => {
+    report.ordered(`losses.outages[${i}].untilS`, outage.fromS, outage.untilS);
+  });
+  const { noise, signals } = loop.sensor;
+  if (noise.type === "given") {
+    if (noise.then === "error" && noise.values.length < rounds) {
+      report.add(
+        "sequence-too-short",
+        "loops[0].sensor.noise.values",
+        `${noise.values.length} rows of sensor noise are given for ${rounds} rounds. Give one for every round, or say what follows: "then": "zero" or "repeat".`,
+      );
+    }
+    const wrong = noise.values.findIndex((row) => row.length !== signals.length);
+    if (wrong >= 0) {
+      report.length(
+        `loops[0].sensor.noise.values[${wrong}]`,
+        `Row ${wrong + 1} of the sensor noise`,
+        noise.values[wrong].length,
+        signals.length,
+        "one number for each measured signal",
+      );
+    }
+  }
+}
+
+function checkEvents(report: Report, scenario: Scenario, plant: Plant): void {
+  const channels = plant.channels.map(({ name }) => name);
+  scenario.pushes.forEach((push, i) => {
+    report.known(`pushes[${i}].channel`, push.channel, channels, "a place where this plant can be pushed");
+    if ("untilS" in push) report.ordered(`pushes[${i}].untilS`, push.fromS, push.untilS);
+  });
+  const spec = scenario.loops[0].plant;
+  scenario.changes.forEach((change, i) => {
+    report.known(`changes[${i}].parameter`, change.parameter, plant.changeable, "a parameter of this plant that can change in mid-run");
+    if (!plant.changeable.includes(change.parameter)) return;
+    const schema = schemaAt(plantSchema, [change.parameter], spec);
+    const meta = schema && quantityMeta(schema);
+    if (meta && (change.value < meta.min || change.value > meta.max)) {
+      report.add(
+        "out-of-range",
+        `changes[${i}].value`,
+        `${meta.label} would become ${change.value} ${meta.unit}; permitted ${permittedRange(meta)}.`,
+      );
+    }
+  });
+}
+
+function checkLimits(report: Report, scenario: Scenario, plant: Plant): void {
+  const signals = [...plant.outputs, ...plant.inputs].map(({ name }) => name);
+  scenario.limits.forEach((limit, i) => {
+    const path = `limits[${i}]`;
+    if (limit.type === "saturation") return;
+    report.known(`${path}.signal`, limit.signal, signals, "a state, output or input of this plant");
+    if (limit.type === "within") {
+      if (limit.lo === null && limit.hi === null) report.add("missing-field", `${path}.hi`, "Give a lower bound, an upper bound, or both.");
+      if (limit.lo !== null && limit.hi !== null && limit.hi <= limit.lo)
+        report.add("out-of-order", `${path}.hi`, `The upper bound ${limit.hi} is not above the lower bound ${limit.lo}.`);
+    }
+    if (limit.type !== "settle") report.ordered(`${path}.untilS`, limit.fromS, limit.untilS);
+  });
+}

@@ -1,0 +1,170 @@
+/** Acceptance limits: decisive figure, first crossing, settling. */
+import { toNs } from "#shared/network/round.ts";
+import type { Limit, Scenario } from "#shared/scenario/schema.ts";
+import type { Trace } from "./assemble.ts";
+import type { LimitState, LimitVerdict, RunResult, Verdict } from "./result.ts";
+import type { Raw } from "./run.ts";
+
+const NEAR = 0.9;
+/** Settling of a signal with bounds: within ± this share of the bounds' width around its target. */
+const SETTLED_SHARE = 0.05;
+
+const stateOf = (used: number): LimitState => (used > 1 ? "crosses" : used > NEAR ? "near" : "holds");
+
+export function overallVerdict(limits: readonly LimitVerdict[], ended: RunResult["ended"]): Verdict {
+  if (ended !== "complete") return "crosses";
+  if (limits.length === 0) return "not-decided";
+  if (limits.some(({ state }) => state === "crosses")) return "crosses";
+  return limits.some(({ state }) => state === "near") ? "near" : "holds";
+}
+
+/** Times at which something new begins, s: pushes and steps of the reference. Settling is counted between them. */
+function disturbances(scenario: Scenario): number[] {
+  const times = scenario.pushes.map((push) => (push.type === "impulse" ? push.atS : push.fromS));
+  for (const { profile } of scenario.loops[0].references) if (profile.type !== "sine") times.push(...profile.points.map((point) => point.atS));
+  times.push(...scenario.changes.map((change) => change.atS));
+  return times.sort((a, b) => a - b);
+}
+
+/** Calls visit(t, deviation) for every grid point and event of a signal in [from, until], in order of time. */
+function visit(
+  raw: Raw,
+  trace: Trace,
+  error: boolean,
+  fromS: number,
+  untilS: number,
+  each: (t: number, value: number, onGrid: boolean) => void,
+): void {
+  const { recorder, extra } = raw;
+  const reference = error ? trace.reference : null;
+  const emit = (t: number, value: number, onGrid: boolean) => {
+    if (t >= fromS && t <= untilS) each(t, reference ? value - reference(toNs(t)) : value, onGrid);
+  };
+  let row = 0;
+  for (let i = 0; i < recorder.count; i++) {
+    const t = recorder.t[i];
+    for (; row < extra.count && extra.at(row, 0) <= t; row++) emit(extra.at(row, 0), trace.extra[row], false);
+    emit(t, trace.grid[i], true);
+  }
+  for (; row < extra.count; row++) emit(extra.at(row, 0), trace.extra[row], false);
+}
+
+export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Trace[]): LimitVerdict {
+  const endedS = raw.endedNs / 1e9;
+  const failed = raw.ended === "diverged";
+  const base = { index, atS: null, crossedAtS: null, settlingS: null };
+  // A diverged run crosses every limit and enters quantiles as the largest value.
+  const diverged = (unit: string): LimitVerdict => ({
+    ...base,
+    state: "crosses",
+    value: Number.MAX_VALUE,
+    unit,
+    used: Number.MAX_VALUE,
+    crossedAtS: endedS,
+  });
+  if (limit.type === "saturation") {
+    const value = endedS > 0 ? raw.saturatedNs / raw.endedNs : 0;
+    if (failed) return diverged("");
+    const used = value / limit.below;
+    return { ...base, state: stateOf(used), value, unit: "", used };
+  }
+  const trace = traces.find(({ column }) => column.name === limit.signal);
+  if (!trace) throw new RangeError(`limit on unknown signal ${limit.signal}`);
+  const { unit } = trace.column;
+  switch (limit.type) {
+    case "within": {
+      const verdict = within(limit, index, raw, trace);
+      return failed ? { ...diverged(unit), crossedAtS: verdict.crossedAtS ?? endedS } : verdict;
+    }
+    case "rms": {
+      if (failed) return diverged(unit);
+      let squares = 0;
+      let count = 0;
+      visit(raw, trace, limit.of === "error", limit.fromS, limit.untilS ?? endedS, (_t, value, onGrid) => {
+        if (!onGrid) return;
+        squares += value * value;
+        count++;
+      });
+      const value = count > 0 ? Math.sqrt(squares / count) : 0;
+      const used = value / limit.below;
+      return { ...base, state: stateOf(used), value, unit, used };
+    }
+    case "settle": {
+      if (failed) return diverged("s");
+      const next = disturbances(raw.scenario).find((t) => t > limit.afterS) ?? raw.scenario.run.durationS;
+      let last = limit.afterS;
+      visit(raw, trace, true, limit.afterS, Math.min(next, endedS), (t, value) => {
+        if (Math.abs(value) > limit.band && t < next) last = t;
+      });
+      // A run that ended before it could settle has not settled.
+      const unsettled = endedS < Math.min(next, limit.afterS + limit.withinS);
+      const value = unsettled ? Math.max(last - limit.afterS, next - limit.afterS) : last - limit.afterS;
+      const used = limit.withinS > 0 ? value / limit.withinS : value > 0 ? Number.MAX_VALUE : 0;
+      const state = stateOf(used);
+      return {
+        ...base,
+        state,
+        value,
+        unit: "s",
+        used,
+        atS: last,
+        crossedAtS: state === "crosses" ? Math.min(endedS, limit.afterS + limit.withinS) : null,
+        settlingS: value,
+      };
+    }
+  }
+}
+
+function within(limit: Extract<Limit, { type: "within" }>, index: number, raw: Raw, trace: Trace): LimitVerdict {
+  const endedS = raw.endedNs / 1e9;
+  const lo = limit.lo ?? Number.NEGATIVE_INFINITY;
+  const hi = limit.hi ?? Number.POSITIVE_INFINITY;
+  const centre = Number.isFinite(lo) && Number.isFinite(hi) ? (lo + hi) / 2 : 0;
+  // How much of the room from the centre (or from zero) to the bound is used.
+  const shareOf = (value: number): number => {
+    if (value > hi || value < lo) {
+      const room = value > hi ? hi - centre : centre - lo;
+      const over = value > hi ? value - centre : centre - value;
+      return room > 0 ? over / room : 1 + Math.abs(value > hi ? value - hi : lo - value);
+    }
+    const up = Number.isFinite(hi) && hi > centre ? (value - centre) / (hi - centre) : 0;
+    const down = Number.isFinite(lo) && lo < centre ? (centre - value) / (centre - lo) : 0;
+    return Math.max(0, up, down);
+  };
+  let used = 0;
+  let value = 0;
+  let atS: number | null = null;
+  let crossedAtS: number | null = null;
+  visit(raw, trace, limit.of === "error", limit.fromS, limit.untilS ?? endedS, (t, found) => {
+    const share = shareOf(found);
+    if (atS === null || share > used) {
+      used = share;
+      value = found;
+      atS = t;
+    }
+    if (crossedAtS === null && (found > hi || found < lo)) crossedAtS = t;
+  });
+  return {
+    index,
+    state: crossedAtS === null ? (used > NEAR ? "near" : "holds") : "crosses",
+    value,
+    unit: trace.column.unit,
+    used,
+    atS,
+    crossedAtS,
+    settlingS: settling(limit, raw, trace),
+  };
+}
+
+/** Last time outside ± 5 % of the bounds' width around the reference (or zero), from the last disturbance on, s. */
+function settling(limit: Extract<Limit, { type: "within" }>, raw: Raw, trace: Trace): number | null {
+  if (limit.lo === null || limit.hi === null) return null;
+  const endedS = raw.endedNs / 1e9;
+  const from = disturbances(raw.scenario).findLast((t) => t < endedS) ?? 0;
+  const band = SETTLED_SHARE * (limit.hi - limit.lo);
+  let last = from;
+  visit(raw, trace, true, from, endedS, (t, value) => {
+    if (Math.abs(value) > band) last = t;
+  });
+  return last - from;
+}
