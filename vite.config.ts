@@ -23,7 +23,7 @@ export default defineConfig({
         extends: true,
         test: {
           name: "server",
-          include: ["tests/server/**/*.test.ts"],
+          include: ["tests/{server,scripts}/**/*.test.ts"],
           globalSetup: "tests/helpers/cluster.ts",
           setupFiles: CONSOLE,
           hookTimeout: 60_000,
