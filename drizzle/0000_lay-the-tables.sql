@@ -6,7 +6,8 @@ CREATE TABLE "activity" (
 	"subject_id" uuid,
 	"subject_name" text,
 	"revision" integer,
-	"at" timestamp (3) with time zone DEFAULT now() NOT NULL
+	"at" timestamp (3) with time zone DEFAULT now() NOT NULL,
+	"position" bigserial NOT NULL
 );
 --> statement-breakpoint
 CREATE TABLE "memberships" (
@@ -60,6 +61,7 @@ CREATE TABLE "runs" (
 	"compressed_bytes" integer NOT NULL,
 	"author_id" uuid NOT NULL,
 	"created_at" timestamp (3) with time zone DEFAULT now() NOT NULL,
+	"position" bigserial NOT NULL,
 	CONSTRAINT "runs_once" UNIQUE("scenario_id","revision","seed","engine")
 );
 --> statement-breakpoint
@@ -121,10 +123,10 @@ ALTER TABLE "runs" ADD CONSTRAINT "runs_author_id_users_id_fk" FOREIGN KEY ("aut
 ALTER TABLE "runs" ADD CONSTRAINT "runs_scenario_id_revision_revisions_scenario_id_number_fk" FOREIGN KEY ("scenario_id","revision") REFERENCES "public"."revisions"("scenario_id","number") ON DELETE cascade ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "scenarios" ADD CONSTRAINT "scenarios_team_id_teams_id_fk" FOREIGN KEY ("team_id") REFERENCES "public"."teams"("id") ON DELETE cascade ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "scenarios" ADD CONSTRAINT "scenarios_owner_id_users_id_fk" FOREIGN KEY ("owner_id") REFERENCES "public"."users"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
-CREATE INDEX "activity_team_at" ON "activity" USING btree ("team_id","at","id");--> statement-breakpoint
+CREATE INDEX "activity_team_at" ON "activity" USING btree ("team_id","at","position");--> statement-breakpoint
 CREATE INDEX "activity_subject" ON "activity" USING btree ("subject_id");--> statement-breakpoint
 CREATE INDEX "memberships_user" ON "memberships" USING btree ("user_id");--> statement-breakpoint
-CREATE INDEX "runs_newest" ON "runs" USING btree ("scenario_id","created_at","id");--> statement-breakpoint
+CREATE INDEX "runs_newest" ON "runs" USING btree ("scenario_id","created_at","position");--> statement-breakpoint
 CREATE INDEX "scenarios_team_changed" ON "scenarios" USING btree ("team_id","changed_at","id");--> statement-breakpoint
 CREATE INDEX "sessions_expire" ON "sessions" USING btree ("expire");--> statement-breakpoint
 CREATE UNIQUE INDEX "users_email_unique" ON "users" USING btree (lower("email"));

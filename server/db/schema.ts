@@ -5,6 +5,7 @@
 import { sql } from "drizzle-orm";
 import {
   bigint,
+  bigserial,
   check,
   customType,
   doublePrecision,
@@ -31,6 +32,8 @@ import type { Figures, LimitVerdict, RunEvent, RunResult } from "#shared/simulat
 const bytea = customType<{ data: Buffer }>({ dataType: () => "bytea" });
 const id = () => uuid().primaryKey().defaultRandom();
 const instant = () => timestamp({ withTimezone: true, precision: 3 });
+/** Which of two came later when their times are the same. */
+const position = () => bigserial({ mode: "number" });
 const now = () => instant().notNull().defaultNow();
 
 export const users = pgTable(
@@ -151,10 +154,11 @@ export const runs = pgTable(
       .notNull()
       .references(() => users.id),
     createdAt: now(),
+    position: position(),
   },
   (table) => [
     unique("runs_once").on(table.scenarioId, table.revision, table.seed, table.engine),
-    index("runs_newest").on(table.scenarioId, table.createdAt, table.id),
+    index("runs_newest").on(table.scenarioId, table.createdAt, table.position),
     foreignKey({ columns: [table.scenarioId, table.revision], foreignColumns: [revisions.scenarioId, revisions.number] }).onDelete("cascade"),
   ],
 );
@@ -184,8 +188,9 @@ export const activity = pgTable(
     subjectName: text(),
     revision: integer(),
     at: now(),
+    position: position(),
   },
-  (table) => [index("activity_team_at").on(table.teamId, table.at, table.id), index("activity_subject").on(table.subjectId)],
+  (table) => [index("activity_team_at").on(table.teamId, table.at, table.position), index("activity_subject").on(table.subjectId)],
 );
 
 /** The table that connect-pg-simple expects. */

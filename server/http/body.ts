@@ -24,6 +24,10 @@ const decode: (permittedBytes: number, shownBytes: number) => RequestHandler = (
     request.body = undefined;
     return next();
   }
+  if (request.body.length === 0) {
+    request.body = undefined;
+    return next();
+  }
   if (request.body.length > permittedBytes) throw tooLarge(request.body.length, shownBytes);
   const parsed = parseJson(request.body.toString("utf8"));
   if (!parsed.ok) throw new HttpError("not-json", parsed.message, { position: parsed.position });

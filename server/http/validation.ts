@@ -14,6 +14,7 @@ function refuse(code: "request-invalid" | "scenario-invalid", what: string, issu
 
 /** Hands on the parsed value, with defaults filled in. */
 export function validated<Schema extends z.ZodType>(schema: Schema, input: unknown, what = "The request is not valid"): z.output<Schema> {
+  if (input === undefined) throw new HttpError("request-invalid", `${what}: it has no body; a JSON object is expected.`);
   const parsed = schema.safeParse(input);
   return parsed.success ? parsed.data : refuse("request-invalid", what, describeIssues(schema, parsed.error, input));
 }

@@ -31,7 +31,7 @@ export async function listActivity(db: Queries, teamId: string, query: z.infer<t
     .from(activity)
     .innerJoin(users, eq(users.id, activity.userId))
     .where(matches)
-    .orderBy(desc(activity.at), desc(activity.id))
+    .orderBy(desc(activity.at), desc(activity.position))
     .limit(query.pageSize)
     .offset((query.page - 1) * query.pageSize);
   const items = rows.map(({ entry, who }) => ({

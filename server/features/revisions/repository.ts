@@ -32,7 +32,7 @@ async function latestVerdicts(db: Queries, scenarioId: string, numbers: number[]
     })
     .from(runs)
     .where(and(eq(runs.scenarioId, scenarioId), inArray(runs.revision, numbers)))
-    .orderBy(runs.revision, desc(runs.createdAt), desc(runs.id));
+    .orderBy(runs.revision, desc(runs.createdAt), desc(runs.position));
   return new Map(rows.map((row) => [row.revision, verdictOf(row)]));
 }
 

@@ -24,7 +24,7 @@ const summaryColumns = {
 };
 type SummaryRow = Omit<
   typeof runs.$inferSelect,
-  "figures" | "limits" | "events" | "points" | "keptPoints" | "keptEvery" | "compressedBytes" | "authorId"
+  "figures" | "limits" | "events" | "points" | "keptPoints" | "keptEvery" | "compressedBytes" | "authorId" | "position"
 > & {
   author: { id: string; name: string };
 };
@@ -43,7 +43,7 @@ async function newestSummary(db: Queries, matches: SQL | undefined): Promise<Run
     .from(runs)
     .innerJoin(users, eq(users.id, runs.authorId))
     .where(matches)
-    .orderBy(desc(runs.createdAt), desc(runs.id))
+    .orderBy(desc(runs.createdAt), desc(runs.position))
     .limit(1);
   return row ? asSummary(row) : null;
 }
@@ -77,7 +77,7 @@ export async function listRuns(db: Queries, scenarioId: string, query: RunListQu
     .from(runs)
     .innerJoin(users, eq(users.id, runs.authorId))
     .where(matches)
-    .orderBy(desc(runs.createdAt), desc(runs.id))
+    .orderBy(desc(runs.createdAt), desc(runs.position))
     .limit(query.pageSize)
     .offset((query.page - 1) * query.pageSize);
   return { items: rows.map(asSummary), total: await db.$count(runs, matches), page: query.page, pageSize: query.pageSize };
