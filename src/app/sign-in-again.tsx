@@ -47,7 +47,6 @@ function SignInAgainDialog() {
               className="box"
               type="password"
               autoComplete="current-password"
-              // biome-ignore lint/a11y/noAutofocus: the one thing that this dialog asks for
               autoFocus
               value={password}
               onChange={(event) => setPassword(event.target.value)}

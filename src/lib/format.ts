@@ -70,16 +70,21 @@ export function listed(words: readonly string[], last: "and" | "or" = "and"): st
   return `${words.slice(0, -1).join(", ")} ${last} ${words.at(-1)}`;
 }
 
+export const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
+/** "an engineer", "a reviewer" */
+export const withArticle = (word: string): string => `${/^[aeiou]/i.test(word) ? "an" : "a"} ${word}`;
+
 const MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"];
 const two = (value: number): string => String(value).padStart(2, "0");
-const clock = (at: Date): string => `${two(at.getHours())}:${two(at.getMinutes())}`;
+/** "14:32" */
+export const clockText = (at: Date): string => `${two(at.getHours())}:${two(at.getMinutes())}`;
 const dayNumber = (at: Date): number => Math.round(Date.UTC(at.getFullYear(), at.getMonth(), at.getDate()) / 86_400_000);
 
 /** "Today 14:32", "Yesterday", "28 Nov", "28 Nov 2024"; in the time zone of this browser. */
 export function whenText(iso: string, now: Date = new Date()): string {
   const at = new Date(iso);
   const days = dayNumber(now) - dayNumber(at);
-  if (days === 0) return `Today ${clock(at)}`;
+  if (days === 0) return `Today ${clockText(at)}`;
   if (days === 1) return "Yesterday";
   const day = `${at.getDate()} ${MONTHS[at.getMonth()]}`;
   return at.getFullYear() === now.getFullYear() ? day : `${day} ${at.getFullYear()}`;
@@ -88,5 +93,5 @@ export function whenText(iso: string, now: Date = new Date()): string {
 /** "28 Nov 2025, 14:32": the whole instant, for titles and records. */
 export function instantText(iso: string): string {
   const at = new Date(iso);
-  return `${at.getDate()} ${MONTHS[at.getMonth()]} ${at.getFullYear()}, ${clock(at)}`;
+  return `${at.getDate()} ${MONTHS[at.getMonth()]} ${at.getFullYear()}, ${clockText(at)}`;
 }
