@@ -1,9 +1,17 @@
-import type { ReactNode, Ref } from "react";
+import { type ReactNode, type Ref, useState } from "react";
+import "./drawings.css";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
-import type { PlotCursor } from "#src/components/plots/plot-cursor.ts";
-import type { PlotStackHandle } from "../plots/plot-stack.tsx";
+import { createPlotCursor, type PlotCursor, PlotCursorContext } from "#src/components/plots/plot-cursor.ts";
+import { PlotStack, type PlotStackHandle } from "#src/components/plots/plot-stack.tsx";
+import { counted, msText } from "#src/lib/format.ts";
+import { CursorTable } from "./cursor-table.tsx";
+import { LimitStrip } from "./limit-strip.tsx";
+import { Machine, trailText } from "./machine.tsx";
+import { PlotTools } from "./plot-tools.tsx";
+import { RoundRibbon } from "./round-ribbon.tsx";
+import { Transport } from "./transport.tsx";
 
 export interface RunBenchProps {
   /** The scenario that gave the result (not the one being edited, when that has an error). */
@@ -14,12 +22,64 @@ export interface RunBenchProps {
   stale?: boolean;
   /** To move the cursor from outside; else the bench has its own. */
   cursor?: PlotCursor;
-  /** Buttons at the right of the transport line of the plots. */
+  /** Further buttons on the line below the plots. */
   actions?: ReactNode;
   stackRef?: Ref<PlotStackHandle>;
 }
 
+/** Where a still picture tells most: the decisive instant of the limit that was used most, else the first push. */
+export function tellingInstant(result: RunResult): number {
+  const decisive = result.limits.filter(({ atS }) => atS !== null).sort((a, b) => b.used - a.used)[0]?.atS;
+  return decisive ?? result.events.find(({ kind }) => kind === "push")?.atS ?? 0;
+}
+
+/** A cursor for this run, at the instant that tells most. Where the screen stays, it stays too. */
+export function useRunCursor(result: RunResult): PlotCursor {
+  const [cursor] = useState(() => createPlotCursor(result.durationS, tellingInstant(result)));
+  return cursor;
+}
+
+/** "25 ms · 3 hops · 2 transmissions · 6 steps a slot" */
+function roundText({ round }: Scenario, timing: RoundTiming): string {
+  const steps = timing.slots[0]?.steps;
+  return [
+    msText(timing.periodS),
+    counted(round.hops, "hop"),
+    counted(round.transmissions, "transmission"),
+    ...(steps === undefined ? [] : [`${counted(steps, "step")} a slot`]),
+  ].join(" · ");
+}
+
 /** Limits, machine, values at the cursor, plots, tapes, time axis and round ribbon: all that stands below the verdict line. */
-export function RunBench(_: RunBenchProps) {
-  return null;
+export function RunBench({ scenario, timing, result, stale = false, cursor: given, actions, stackRef }: RunBenchProps) {
+  const own = useRunCursor(result);
+  const [signals, setSignals] = useState<readonly string[] | null>(null);
+  return (
+    <PlotCursorContext value={given ?? own}>
+      <div className={stale ? "run-bench stale" : "run-bench"}>
+        <LimitStrip scenario={scenario} result={result} />
+        <div className="bench-scene">
+          <div className="bench-machine">
+            <Machine scenario={scenario} result={result} />
+            <Transport result={result} note={trailText(scenario)} />
+            <CursorTable scenario={scenario} result={result} />
+          </div>
+          <div className="bench-plots">
+            <PlotStack scenario={scenario} result={result} signals={signals ?? undefined} stale={stale} ref={stackRef} />
+            <PlotTools scenario={scenario} result={result} signals={signals} onSignals={setSignals}>
+              {actions}
+            </PlotTools>
+          </div>
+        </div>
+        <section className="bench-round" aria-label="Round">
+          <div className="hrow">
+            <h2>Round</h2>
+            <span className="rt">{roundText(scenario, timing)}</span>
+          </div>
+          <RoundRibbon timing={timing} hops={scenario.round.hops} />
+          <p className="note-line">Stairs: the hop that the flood has reached after each step, at the latest, on a line of nodes without loss.</p>
+        </section>
+      </div>
+    </PlotCursorContext>
+  );
 }

@@ -1,12 +1,12 @@
 /** A stack of plots as a picture file: light colours, a title, twice the size. */
 
 import type { RunResult } from "#shared/simulation/result.ts";
+import { measureWith } from "./measure.ts";
 import { FONT, paintTimeAxis, paintUnder } from "./paint-stack.ts";
 import { lightPalette, pictureFonts } from "./palette.ts";
 import type { View } from "./plot-cursor.ts";
 import type { PlotSignal } from "./plot-signals.ts";
 import { SignalLines } from "./signal-lines.ts";
-import { measureWith } from "./stack-canvas.ts";
 import { layOutStack } from "./stack-layout.ts";
 
 const SCALE = 2;
@@ -26,7 +26,7 @@ export interface PngInput {
 export async function stackPng({ result, signals, view, width, title, note }: PngInput): Promise<Blob> {
   const palette = lightPalette();
   await pictureFonts(palette.face);
-  const layout = layOutStack(result, signals, width, measureWith(palette));
+  const layout = layOutStack(result, signals, width, measureWith(palette.face));
   const canvas = document.createElement("canvas");
   canvas.width = (layout.width + 2 * MARGIN) * SCALE;
   canvas.height = (layout.height + TITLE_HEIGHT + MARGIN) * SCALE;

@@ -22,10 +22,10 @@ export interface Frame {
 }
 
 export const FONT = {
-  axis: (palette: Palette) => `400 12px ${palette.face}`,
-  title: (palette: Palette) => `400 13px ${palette.face}`,
-  strong: (palette: Palette) => `600 13px ${palette.face}`,
-  symbol: (palette: Palette) => `italic 400 13px ${palette.face}`,
+  axis: (palette: Pick<Palette, "face">) => `400 12px ${palette.face}`,
+  title: (palette: Pick<Palette, "face">) => `400 13px ${palette.face}`,
+  strong: (palette: Pick<Palette, "face">) => `600 13px ${palette.face}`,
+  symbol: (palette: Pick<Palette, "face">) => `italic 400 13px ${palette.face}`,
 };
 
 /** Canvas fonts draw a word joiner as nothing or as a box, depending on the face; it has no work to do there. */
@@ -194,7 +194,7 @@ function paintTitle(ctx: Ctx, frame: Frame, lane: PlotLane): void {
 }
 
 /** Width of a plot's title, so that the value at the cursor keeps clear of it. */
-export function titleWidth(ctx: Ctx, palette: Palette, { label, symbol, unit }: PlotLane["signal"]): number {
+export function titleWidth(ctx: Ctx, palette: Pick<Palette, "face">, { label, symbol, unit }: PlotLane["signal"]): number {
   ctx.font = FONT.strong(palette);
   let width = ctx.measureText(label).width;
   ctx.font = FONT.title(palette);

@@ -4,10 +4,11 @@ import "./plot-stack.css";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
 import { stackPng } from "./export-png.ts";
-import { onThemeChange, type Palette, paletteOf, pictureFonts } from "./palette.ts";
+import { measureWith, pageFace, useWidth } from "./measure.ts";
+import { onThemeChange, paletteOf, pictureFonts } from "./palette.ts";
 import { type PlotCursor, useOnCursor, usePlotCursor, type View } from "./plot-cursor.ts";
 import { plotSignals, usualSignals } from "./plot-signals.ts";
-import { measuredTitle, measureWith, StackCanvas } from "./stack-canvas.ts";
+import { measuredTitle, StackCanvas } from "./stack-canvas.ts";
 import { layOutStack, type StackLayout } from "./stack-layout.ts";
 import { StackOverlay, type StackOverlayHandle, valueText } from "./stack-overlay.tsx";
 import { formatTime, timeDecimals } from "./units.ts";
@@ -36,7 +37,7 @@ function useRepaint(): number {
   useEffect(() => {
     let mounted = true;
     const again = () => mounted && setEpoch((count) => count + 1);
-    pictureFonts(getComputedStyle(document.documentElement).getPropertyValue("--face")).then(again);
+    pictureFonts(pageFace()).then(again);
     const stop = onThemeChange(again);
     addEventListener("resize", again);
     return () => {
@@ -48,19 +49,6 @@ function useRepaint(): number {
   return epoch;
 }
 
-function useWidth(host: React.RefObject<HTMLElement | null>): number {
-  const [width, setWidth] = useState(0);
-  useLayoutEffect(() => {
-    const element = host.current;
-    if (!element) return;
-    setWidth(Math.floor(element.clientWidth));
-    const observer = new ResizeObserver(() => setWidth(Math.floor(element.clientWidth)));
-    observer.observe(element);
-    return () => observer.disconnect();
-  }, [host]);
-  return width;
-}
-
 /** A run on fewer pixels than this shows only what its limits watch first. */
 const NARROW_SIGNALS = 2;
 
@@ -68,6 +56,7 @@ const NARROW_SIGNALS = 2;
 export function PlotStack({ scenario, result, second, signals: names, stale = false, ref }: PlotStackProps) {
   const cursor = usePlotCursor();
   const host = useRef<HTMLDivElement>(null);
+  const ground = useRef<HTMLDivElement>(null);
   const hand = useRef<HTMLDivElement>(null);
   const overlay = useRef<StackOverlayHandle>(null);
   const canvas = useRef<StackCanvas | null>(null);
@@ -83,14 +72,14 @@ export function PlotStack({ scenario, result, second, signals: names, stale = fa
   }, [scenario, result, names, second, width]);
   // biome-ignore lint/correctness/useExhaustiveDependencies: `epoch` stands for the faces, which have widths of their own
   const { layout, titles } = useMemo(() => {
-    const palette = { face: getComputedStyle(document.documentElement).getPropertyValue("--face").trim() || "sans-serif" } as Palette;
-    const placed: StackLayout = layOutStack(result, shown, width, measureWith(palette));
-    return { layout: placed, titles: placed.plots.map((lane) => measuredTitle(palette, lane)) };
+    const face = pageFace();
+    const placed: StackLayout = layOutStack(result, shown, width, measureWith(face));
+    return { layout: placed, titles: placed.plots.map((lane) => measuredTitle({ face }, lane)) };
   }, [result, shown, width, epoch]);
 
   useLayoutEffect(() => {
-    if (!host.current) return;
-    const made = new StackCanvas(host.current);
+    if (!ground.current) return;
+    const made = new StackCanvas(ground.current);
     canvas.current = made;
     return () => made.destroy();
   }, []);
@@ -126,6 +115,7 @@ export function PlotStack({ scenario, result, second, signals: names, stale = fa
 
   return (
     <div ref={host} className="stack" style={{ height: layout.width > 0 ? layout.height : 480 }}>
+      <div ref={ground} />
       {layout.width > 0 && <StackOverlay ref={overlay} layout={layout} t={t} titles={titles} timeDecimals={decimals} />}
       <div
         ref={hand}

@@ -1,10 +1,11 @@
 /** The canvases of one stack: one below for everything painted, and the lines of each plot above it. */
 
-import { FONT, paintUnder, titleWidth } from "./paint-stack.ts";
+import { rulerContext } from "./measure.ts";
+import { paintUnder, titleWidth } from "./paint-stack.ts";
 import type { Palette } from "./palette.ts";
 import type { View } from "./plot-cursor.ts";
 import { lineShape, SignalLines } from "./signal-lines.ts";
-import type { Measure, PlotLane, StackLayout } from "./stack-layout.ts";
+import type { PlotLane, StackLayout } from "./stack-layout.ts";
 
 export interface StackInput {
   layout: StackLayout;
@@ -12,21 +13,9 @@ export interface StackInput {
   palette: Palette;
 }
 
-let ruler: CanvasRenderingContext2D | null = null;
-/** Widths of words; a rough guess where there is no canvas (tests). */
-export function measureWith(palette: Palette): Measure {
-  ruler ??= document.createElement("canvas").getContext("2d");
-  const ctx = ruler;
-  return (text, font) => {
-    if (!ctx) return text.length * 6;
-    ctx.font = FONT[font](palette);
-    return ctx.measureText(text.replaceAll("\u2060", "")).width;
-  };
-}
-
-export const measuredTitle = (palette: Palette, lane: PlotLane): number => {
-  ruler ??= document.createElement("canvas").getContext("2d");
-  return ruler ? titleWidth(ruler, palette, lane.signal) : lane.signal.label.length * 8;
+export const measuredTitle = (palette: Pick<Palette, "face">, lane: PlotLane): number => {
+  const ctx = rulerContext();
+  return ctx ? titleWidth(ctx, palette, lane.signal) : lane.signal.label.length * 8;
 };
 
 export class StackCanvas {

@@ -1,5 +1,6 @@
 /** Where everything stands in a stack of plots, in CSS pixels. Depends on width and run, not on the zoom. */
 import type { RunResult } from "#shared/simulation/result.ts";
+import type { Measure } from "./measure.ts";
 import type { View } from "./plot-cursor.ts";
 import type { PlotSignal } from "./plot-signals.ts";
 import { markedEvents, placeEvents } from "./stack-events.ts";
@@ -37,8 +38,6 @@ export interface StackLayout {
   ended: RunResult["ended"];
   periodS: number;
 }
-
-export type Measure = (text: string, font: "axis" | "strong") => number;
 
 export const EVENT_ROW = 15;
 export const TITLE = 24;

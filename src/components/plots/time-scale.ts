@@ -15,10 +15,15 @@ export interface NeatScale {
 
 /**
  * Labels at multiples of 1, 2 or 5 times a power of ten, at least `leastLabel` apart; one piece is a half, a quarter or a fifth of a step.
- * `factor` turns the axis' unit into the shown one.
+ * `factor` turns the axis' unit into the shown one; a slightly longer step is taken when it divides `wholeOf`.
  */
-export function neatScale(from: number, until: number, leastLabel: number, unit: string, factor = 1): NeatScale {
-  const step = niceStep(leastLabel * factor) / factor;
+export function neatScale(from: number, until: number, leastLabel: number, unit: string, factor = 1, wholeOf?: number): NeatScale {
+  let step = niceStep(leastLabel * factor) / factor;
+  const divides = (length: number) => wholeOf !== undefined && Math.abs(wholeOf / length - Math.round(wholeOf / length)) < 1e-6;
+  if (wholeOf !== undefined && !divides(step)) {
+    const next = niceStep(step * factor * 1.5) / factor;
+    if (divides(next)) step = next;
+  }
   const lead = Math.round((step * factor) / 10 ** Math.floor(Math.log10(step * factor) + 1e-9));
   const piece = step / (lead === 5 ? 5 : lead === 2 ? 4 : 2);
   const decimals = Math.max(0, Math.ceil(-Math.log10(step * factor) - 1e-9));

@@ -5,8 +5,8 @@ import { fixed, significant, withUnit } from "#src/lib/format.ts";
 export const formatNumber = (value: number, decimals: number): string =>
   Math.abs(value) >= 1e7 ? significant(value, 3) : fixed(value, Math.max(0, Math.min(12, decimals)));
 
-/** For ticks: "0.3", "−12". */
-export const formatTick = (value: number): string => significant(value, 4);
+/** For ticks: "0.3", "−12", "8.59"; a round number stays what it is. */
+export const formatTick = (value: number): string => significant(value, Math.abs(value) >= 1000 || Number.isInteger(value) ? 6 : 3);
 
 /** Decimals with which a value is told beside a plot that reaches up to `extent`: four figures, give or take one. */
 export function decimalsFor(extent: number): number {
