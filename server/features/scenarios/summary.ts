@@ -1,6 +1,7 @@
 /** What is kept of a scenario beside itself: the table's columns, and what stands for a verdict while there is no run. */
 import type { VerdictLine } from "#shared/api/common.ts";
 import { PLANT_LABELS, plantKind, type RoundSummary } from "#shared/api/scenarios.ts";
+import { designLoop } from "#shared/control/design.ts";
 import { type RoundTiming, roundTiming } from "#shared/network/round.ts";
 import { checkScenario } from "#shared/scenario/check.ts";
 import type { Issue } from "#shared/scenario/issues.ts";
@@ -14,6 +15,11 @@ function roundSummary(timing: RoundTiming): RoundSummary {
 
 const DOES_NOT_FIT = new Set(["round-does-not-fit", "payload-too-long"]);
 
+function whatPrevents(scenario: Scenario): Issue[] {
+  const { issues, timing } = checkScenario(scenario);
+  return issues.length > 0 ? issues : designLoop(scenario, timing.ns).issues;
+}
+
 /** A draft that breaks a rule across fields is kept all the same; its verdict says what is wrong. */
 function verdictWithoutRun(issues: Issue[]): VerdictLine {
   const unfit = issues.find((issue) => DOES_NOT_FIT.has(issue.code));
@@ -22,7 +28,7 @@ function verdictWithoutRun(issues: Issue[]): VerdictLine {
 }
 
 export function summarise(scenario: Scenario) {
-  const { issues } = checkScenario(scenario);
+  const issues = whatPrevents(scenario);
   const kind = plantKind(scenario.loops[0].plant);
   return {
     columns: {
