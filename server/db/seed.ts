@@ -8,7 +8,7 @@ import { recordOf, storeRun } from "../features/runs/service.ts";
 import { insertNewScenario, insertNextRevision } from "../features/scenarios/service.ts";
 import { hashPassword } from "../features/session/service.ts";
 import type { Queries } from "./client.ts";
-import { DEMO_PASSWORD, DEMO_PEOPLE, DEMO_TEAMS, type DemoScenario, demoScenarios } from "./demo.ts";
+import { DEMO_PASSWORD, DEMO_PEOPLE, DEMO_SCENARIOS, DEMO_TEAMS, type DemoScenario, startOf } from "./demo.ts";
 import { underLock } from "./migrate.ts";
 import * as schema from "./schema.ts";
 
@@ -30,10 +30,12 @@ async function insertPeople(db: Queries, teams: Map<string, Team>): Promise<Map<
 
 async function insertDemoScenario(db: Queries, demo: DemoScenario, team: Team, people: Map<string, User>, now: number): Promise<void> {
   let row: { id: string; latestRevision: number } | null = null;
-  for (const { by, hoursAgo, note, before } of demo.revisions) {
+  let scenario = startOf(demo);
+  for (const { by, hoursAgo, note, change } of demo.revisions) {
     const member = { team, user: people.get(by) as User };
     const at = new Date(now - hoursAgo * 3_600_000);
-    const scenario = before ? before(demo.scenario) : demo.scenario;
+    scenario = structuredClone(scenario);
+    change?.(scenario);
     const first = row === null;
     if (row === null) row = await insertNewScenario(db, member, scenario, note, at);
     else row = { id: row.id, latestRevision: await insertNextRevision(db, member, row, scenario, note, at) };
@@ -63,7 +65,7 @@ export function seedDemo(url: string): Promise<boolean> {
         teams.set(key, team);
       }
       const people = await insertPeople(db, teams);
-      for (const demo of demoScenarios()) await insertDemoScenario(db, demo, teams.get(demo.team) as Team, people, now);
+      for (const demo of DEMO_SCENARIOS) await insertDemoScenario(db, demo, teams.get(demo.team) as Team, people, now);
       await db.insert(schema.settings).values({ key: "demo", value: new Date(now).toISOString() });
       return true;
     }),
