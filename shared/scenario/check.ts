@@ -1,5 +1,5 @@
 /** Rules that span several fields of a scenario. The shape and the single ranges are in schema.ts. */
-import { designLoop } from "#shared/control/design.ts";
+import { designLoop, type LoopDesign } from "#shared/control/design.ts";
 import { quantumOf } from "#shared/control/encoding.ts";
 import { type RoundTiming, roundTiming } from "#shared/network/round.ts";
 import type { Plant } from "#shared/plants/plant.ts";
@@ -16,6 +16,8 @@ export const MAX_ROUNDS = 200_000;
 export interface Checked {
   issues: Issue[];
   timing: RoundTiming;
+  /** The loop's design; null when there are issues. */
+  design: LoopDesign | null;
 }
 
 export const roundsOf = (scenario: Scenario): number =>
@@ -43,7 +45,7 @@ export function checkScenario(scenario: Scenario): Checked {
   const report = new Report();
   const loop = scenario.loops[0];
   const timing = roundTiming(scenario);
-  if (!checkStateSpace(report, loop)) return { issues: [...report.issues, ...timing.issues], timing };
+  if (!checkStateSpace(report, loop)) return { issues: [...report.issues, ...timing.issues], timing, design: null };
 
   const plant = createPlant(loop.plant);
   checkLoop(report, scenario, loop, plant);
@@ -52,8 +54,8 @@ export function checkScenario(scenario: Scenario): Checked {
   checkLimits(report, scenario, plant);
   const issues = [...report.issues, ...timing.issues];
   // A design needs consistent sizes and instants; without them its complaints would only repeat what was said.
-  if (issues.length === 0) issues.push(...designLoop(scenario, timing.ns).issues);
-  return { issues, timing };
+  if (issues.length > 0) return { issues, timing, design: null };
+  return { timing, ...designLoop(scenario, timing.ns) };
 }
 
 function checkStateSpace(report: Report, loop: Loop): boolean {

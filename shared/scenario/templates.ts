@@ -126,7 +126,6 @@ const crane: ScenarioInput = {
   round: { periodS: 0.06, hops: 4, transmissions: 3 },
   losses: { process: { type: "bernoulli", measurement: 0.02, command: 0.02 } },
   pushes: [{ type: "step", channel: "cart", fromS: 12, untilS: 13, size: 80 }],
-  changes: [{ atS: 0, parameter: "rodMassKg", value: 80 }],
   limits: [
     { type: "within", signal: "angle", lo: -0.15, hi: 0.15 },
     { type: "within", signal: "position", lo: -0.5, hi: 3.2 },

@@ -6,6 +6,7 @@ import { messageFigures, signalFigures } from "./figures.ts";
 import { judge, overallVerdict } from "./limits.ts";
 import type { Column, RunEvent, RunResult } from "./result.ts";
 import type { Raw } from "./run.ts";
+import { limitLabel } from "./verdict-text.ts";
 import { ENGINE_VERSION } from "./version.ts";
 
 /** One signal over the run: on the grid, and at the events between grid points (rows of Raw.extra). */
@@ -66,7 +67,8 @@ export function assemble(raw: Raw): RunResult {
   const events = [...raw.events, ...scriptedEvents(raw)];
   const limits = scenario.limits.map((limit, index) => judge(limit, index, raw, all));
   for (const verdict of limits) {
-    if (verdict.crossedAtS !== null) events.push({ atS: verdict.crossedAtS, kind: "limit-crossed", text: `limit ${verdict.index + 1} crossed` });
+    if (verdict.crossedAtS !== null)
+      events.push({ atS: verdict.crossedAtS, kind: "limit-crossed", text: `${limitLabel(scenario.limits[verdict.index], scenario)}: crossed` });
   }
   events.sort((a, b) => a.atS - b.atS);
   const hasSlot = (message: "measurement" | "command") => timing.slots.some((slot) => slot.message === message);

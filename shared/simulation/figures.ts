@@ -14,12 +14,13 @@ export function signalFigures(trace: Trace, t: Float64Array): SignalFigures {
     if (value > max) max = value;
     if (value < min) min = value;
     squares += value * value;
-    if (reference) {
-      const error = value - reference(toNs(t[i]));
+  }
+  if (reference) {
+    for (let i = 0; i < grid.length; i++) {
+      const error = grid[i] - reference(toNs(t[i]));
       errors += error * error;
     }
-  }
-  if (!reference) errors = squares;
+  } else errors = squares;
   for (let i = 0; i < extra.length; i++) {
     if (extra[i] > max) max = extra[i];
     if (extra[i] < min) min = extra[i];

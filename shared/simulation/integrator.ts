@@ -98,7 +98,7 @@ export class Integrator {
    * conditions with the weight of stage 5 set to zero (checked by a test in rational arithmetic).
    */
   interpolate(theta: number, out: Float64Array): void {
-    if (!this.#extended) this.#extend();
+    this.#extend();
     const h = this.stepLength * theta;
     const before = this.#before;
     const k1 = this.#stepper._k1;
@@ -108,19 +108,39 @@ export class Integrator {
     for (let i = 0; i < this.#n; i++) out[i] = before[i] + h * (k1[i] + theta * (c2[i] + theta * (c3[i] + theta * c4[i])));
   }
 
-  /** State at the start of the last step. */
-  get yBefore(): Float64Array {
-    return this.#before;
+  /** Component i at the times t[from] to t[until - 1], all within the last step, written to the same places of out. */
+  sample(i: number, t: Float64Array, from: number, until: number, out: Float64Array): void {
+    this.#extend();
+    const start = this.stepFrom;
+    const h = this.stepLength;
+    const y0 = this.#before[i];
+    const c1 = this.#stepper._k1[i] * h;
+    const c2 = this.#c2[i] * h;
+    const c3 = this.#c3[i] * h;
+    const c4 = this.#c4[i] * h;
+    for (let k = from; k < until; k++) {
+      const theta = (t[k] - start) / h;
+      out[k] = y0 + theta * (c1 + theta * (c2 + theta * (c3 + theta * c4)));
+    }
   }
 
   #extend(): void {
+    if (this.#extended) return;
     const { _k1: k1, _k3: k3, _k4: k4, _k6: k6 } = this.#stepper;
     const k7 = this.#k7;
+    const c2 = this.#c2;
+    const c3 = this.#c3;
+    const c4 = this.#c4;
     this.#derivative(k7, this.y, this.stepFrom + this.stepLength);
     for (let i = 0; i < this.#n; i++) {
-      this.#c2[i] = (-115 / 42) * k1[i] + (250 / 69) * k3[i] - (384 / 161) * k6[i] + 1.5 * k7[i];
-      this.#c3[i] = (542 / 189) * k1[i] - (3500 / 621) * k3[i] + (250 / 297) * k4[i] + (10496 / 1771) * k6[i] - 4 * k7[i];
-      this.#c4[i] = (-65 / 63) * k1[i] + (500 / 207) * k3[i] - (125 / 198) * k4[i] - (5760 / 1771) * k6[i] + 2.5 * k7[i];
+      const d1 = k1[i];
+      const d3 = k3[i];
+      const d4 = k4[i];
+      const d6 = k6[i];
+      const d7 = k7[i];
+      c2[i] = (-115 / 42) * d1 + (250 / 69) * d3 - (384 / 161) * d6 + 1.5 * d7;
+      c3[i] = (542 / 189) * d1 - (3500 / 621) * d3 + (250 / 297) * d4 + (10496 / 1771) * d6 - 4 * d7;
+      c4[i] = (-65 / 63) * d1 + (500 / 207) * d3 - (125 / 198) * d4 - (5760 / 1771) * d6 + 2.5 * d7;
     }
     this.#extended = true;
   }

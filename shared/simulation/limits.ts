@@ -26,27 +26,41 @@ function disturbances(scenario: Scenario): number[] {
   return times.sort((a, b) => a - b);
 }
 
-/** Calls visit(t, deviation) for every grid point and event of a signal in [from, until], in order of time. */
-function visit(
-  raw: Raw,
-  trace: Trace,
-  error: boolean,
-  fromS: number,
-  untilS: number,
-  each: (t: number, value: number, onGrid: boolean) => void,
-): void {
+/** A signal, or its error against the reference, on grid and events; in no order between the two. */
+interface Watched {
+  t: Float64Array;
+  values: Float64Array;
+  eventT: Float64Array;
+  eventValues: Float64Array;
+}
+
+function watch(raw: Raw, trace: Trace, error: boolean): Watched {
   const { recorder, extra } = raw;
+  const t = recorder.t.subarray(0, recorder.count);
+  const eventT = new Float64Array(extra.count);
+  for (let row = 0; row < extra.count; row++) eventT[row] = extra.at(row, 0);
   const reference = error ? trace.reference : null;
-  const emit = (t: number, value: number, onGrid: boolean) => {
-    if (t >= fromS && t <= untilS) each(t, reference ? value - reference(toNs(t)) : value, onGrid);
+  if (!reference) return { t, values: trace.grid, eventT, eventValues: trace.extra };
+  const against = (times: Float64Array, values: Float64Array) => {
+    const errors = new Float64Array(values.length);
+    for (let i = 0; i < values.length; i++) errors[i] = values[i] - reference(toNs(times[i]));
+    return errors;
   };
-  let row = 0;
-  for (let i = 0; i < recorder.count; i++) {
-    const t = recorder.t[i];
-    for (; row < extra.count && extra.at(row, 0) <= t; row++) emit(extra.at(row, 0), trace.extra[row], false);
-    emit(t, trace.grid[i], true);
+  return { t, values: against(t, trace.grid), eventT, eventValues: against(eventT, trace.extra) };
+}
+
+/** The last time in [from, until) at which |value| is above the band; from when there is none. */
+function lastOutside({ t, values, eventT, eventValues }: Watched, band: number, from: number, until: number): number {
+  let last = from;
+  for (let i = values.length - 1; i >= 0 && t[i] >= from; i--) {
+    if (t[i] >= until || Math.abs(values[i]) <= band) continue;
+    last = t[i];
+    break;
   }
-  for (; row < extra.count; row++) emit(extra.at(row, 0), trace.extra[row], false);
+  for (let i = eventValues.length - 1; i >= 0 && eventT[i] > last; i--) {
+    if (eventT[i] < until && Math.abs(eventValues[i]) > band) return eventT[i];
+  }
+  return last;
 }
 
 export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Trace[]): LimitVerdict {
@@ -80,11 +94,13 @@ export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Tr
       if (failed) return diverged(unit);
       let squares = 0;
       let count = 0;
-      visit(raw, trace, limit.of === "error", limit.fromS, limit.untilS ?? endedS, (_t, value, onGrid) => {
-        if (!onGrid) return;
-        squares += value * value;
+      const { t, values } = watch(raw, trace, limit.of === "error");
+      const untilS = limit.untilS ?? endedS;
+      for (let i = 0; i < values.length; i++) {
+        if (t[i] < limit.fromS || t[i] > untilS) continue;
+        squares += values[i] * values[i];
         count++;
-      });
+      }
       const value = count > 0 ? Math.sqrt(squares / count) : 0;
       const used = value / limit.below;
       return { ...base, state: stateOf(used), value, unit, used };
@@ -92,10 +108,8 @@ export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Tr
     case "settle": {
       if (failed) return diverged("s");
       const next = disturbances(raw.scenario).find((t) => t > limit.afterS) ?? raw.scenario.run.durationS;
-      let last = limit.afterS;
-      visit(raw, trace, true, limit.afterS, Math.min(next, endedS), (t, value) => {
-        if (Math.abs(value) > limit.band && t < next) last = t;
-      });
+      const whole = next === raw.scenario.run.durationS ? Number.POSITIVE_INFINITY : next;
+      const last = lastOutside(watch(raw, trace, true), limit.band, limit.afterS, whole);
       // A run that ended before it could settle has not settled.
       const unsettled = endedS < Math.min(next, limit.afterS + limit.withinS);
       const value = unsettled ? Math.max(last - limit.afterS, next - limit.afterS) : last - limit.afterS;
@@ -135,25 +149,25 @@ function within(limit: Extract<Limit, { type: "within" }>, index: number, raw: R
   let value = 0;
   let atS: number | null = null;
   let crossedAtS: number | null = null;
-  visit(raw, trace, limit.of === "error", limit.fromS, limit.untilS ?? endedS, (t, found) => {
-    const share = shareOf(found);
-    if (atS === null || share > used) {
-      used = share;
-      value = found;
-      atS = t;
+  const untilS = limit.untilS ?? endedS;
+  const watched = watch(raw, trace, limit.of === "error");
+  const scan = (t: Float64Array, values: Float64Array) => {
+    for (let i = 0; i < values.length; i++) {
+      if (t[i] < limit.fromS || t[i] > untilS) continue;
+      const found = values[i];
+      const share = shareOf(found);
+      if (atS === null || share > used || (share === used && t[i] < atS)) {
+        used = share;
+        value = found;
+        atS = t[i];
+      }
+      if ((found > hi || found < lo) && (crossedAtS === null || t[i] < crossedAtS)) crossedAtS = t[i];
     }
-    if (crossedAtS === null && (found > hi || found < lo)) crossedAtS = t;
-  });
-  return {
-    index,
-    state: crossedAtS === null ? (used > NEAR ? "near" : "holds") : "crosses",
-    value,
-    unit: trace.column.unit,
-    used,
-    atS,
-    crossedAtS,
-    settlingS: settling(limit, raw, trace),
   };
+  scan(watched.t, watched.values);
+  scan(watched.eventT, watched.eventValues);
+  const state = crossedAtS === null ? (used > NEAR ? "near" : "holds") : "crosses";
+  return { index, state, value, unit: trace.column.unit, used, atS, crossedAtS, settlingS: settling(limit, raw, trace) };
 }
 
 /** Last time outside ± 5 % of the bounds' width around the reference (or zero), from the last disturbance on, s. */
@@ -161,10 +175,5 @@ function settling(limit: Extract<Limit, { type: "within" }>, raw: Raw, trace: Tr
   if (limit.lo === null || limit.hi === null) return null;
   const endedS = raw.endedNs / 1e9;
   const from = disturbances(raw.scenario).findLast((t) => t < endedS) ?? 0;
-  const band = SETTLED_SHARE * (limit.hi - limit.lo);
-  let last = from;
-  visit(raw, trace, true, from, endedS, (t, value) => {
-    if (Math.abs(value) > band) last = t;
-  });
-  return last - from;
+  return lastOutside(watch(raw, trace, true), SETTLED_SHARE * (limit.hi - limit.lo), from, Number.POSITIVE_INFINITY) - from;
 }

@@ -43,17 +43,16 @@ export class Recorder {
   count = 0;
   readonly #n: number;
   readonly #m: number;
-  readonly #point: Float64Array;
 
-  constructor(n: number, m: number, periodNs: number, endNs: number, width: number) {
+  constructor(n: number, m: number, periodNs: number, endNs: number) {
     const points = Math.floor((endNs * POINTS_PER_ROUND) / periodNs) + 1;
     this.t = new Float64Array(points);
-    for (let i = 0; i < points; i++) this.t[i] = Math.round((i * periodNs) / POINTS_PER_ROUND) / 1e9;
+    const step = periodNs / POINTS_PER_ROUND;
+    for (let i = 0; i < points; i++) this.t[i] = Math.round(i * step) / 1e9;
     this.x = Array.from({ length: n }, () => new Float64Array(points));
     this.u = Array.from({ length: m }, () => new Float64Array(points));
     this.#n = n;
     this.#m = m;
-    this.#point = new Float64Array(width);
   }
 
   /**
@@ -61,23 +60,27 @@ export class Recorder {
    * `guard` leaves ± guardAt. u(t) = u0 + slope (t - segmentS), or the lagged input behind the states. Returns false then.
    */
   step(integrator: Integrator, u: Float64Array, slope: Float64Array, segmentS: number, lagged: boolean, guard: number, guardAt: number): boolean {
-    const from = integrator.stepFrom;
-    const until = from + integrator.stepLength;
+    const until = integrator.stepFrom + integrator.stepLength;
     const { t, x } = this;
-    const n = this.#n;
-    let point = this.#point;
-    for (; this.count < t.length && t[this.count] < until; this.count++) {
-      const i = this.count;
-      const theta = (t[i] - from) / integrator.stepLength;
-      if (theta <= 0) point = integrator.yBefore;
-      else {
-        point = this.#point;
-        integrator.interpolate(theta, point);
-      }
-      for (let j = 0; j < n; j++) x[j][i] = point[j];
-      for (let j = 0; j < this.#m; j++) this.u[j][i] = lagged ? point[n + j] : u[j] + slope[j] * (t[i] - segmentS);
-      if (guard >= 0 && Math.abs(point[guard]) >= guardAt) return false;
+    const first = this.count;
+    let end = first;
+    while (end < t.length && t[end] < until) end++;
+    if (end === first) return true;
+    for (let j = 0; j < this.#n; j++) integrator.sample(j, t, first, end, x[j]);
+    for (let j = 0; j < this.#m; j++) {
+      const felt = this.u[j];
+      if (lagged) integrator.sample(this.#n + j, t, first, end, felt);
+      else for (let i = first; i < end; i++) felt[i] = u[j] + slope[j] * (t[i] - segmentS);
     }
+    if (guard >= 0) {
+      const guarded = x[guard];
+      for (let i = first; i < end; i++) {
+        if (Math.abs(guarded[i]) < guardAt) continue;
+        this.count = i;
+        return false;
+      }
+    }
+    this.count = end;
     return true;
   }
 

@@ -120,7 +120,7 @@ export class Run {
       plant,
       seed,
       rounds,
-      recorder: new Recorder(n, m, timing.ns.period, endNs, width),
+      recorder: new Recorder(n, m, timing.ns.period, endNs),
       extra: new Rows(1 + n + m),
       deliveries: drawDeliveries(scenario, timing, rounds, seed),
       measurement: new Float64Array(rounds * p),

@@ -1,5 +1,4 @@
 /** The door to the engine: a scenario as any JSON and a seed in, a result or issues out. */
-import { designLoop } from "#shared/control/design.ts";
 import { checkScenario } from "#shared/scenario/check.ts";
 import type { Issue } from "#shared/scenario/issues.ts";
 import { parseScenario } from "#shared/scenario/parse.ts";
@@ -13,10 +12,8 @@ export function prepareRun(input: unknown, seed?: number | null): Prepared {
   const parsed = parseScenario(input);
   if (!parsed.ok) return parsed;
   const scenario = parsed.value;
-  const { issues, timing } = checkScenario(scenario);
-  if (issues.length > 0) return { ok: false, issues };
-  const { design, issues: open } = designLoop(scenario, timing.ns);
-  if (!design) return { ok: false, issues: open };
+  const { issues, timing, design } = checkScenario(scenario);
+  if (!design) return { ok: false, issues };
   return { ok: true, run: new Run(scenario, timing, design, seed ?? scenario.run.seed) };
 }
 

@@ -1,0 +1,61 @@
+/** The page's side of the engine worker. A call never hangs: what a stopped worker leaves open is settled as cancelled. */
+import { proxy, type Remote, releaseProxy, wrap } from "comlink";
+import type { EngineProgress, EngineWorker, WorkerOutcome } from "./contract.ts";
+
+export interface EngineClient {
+  /** Simulates; a newer call cancels an older one. Rejects only when the worker itself cannot start or broke. */
+  run(scenario: unknown, seed: number | null, onProgress?: (progress: EngineProgress) => void): Promise<WorkerOutcome>;
+  cancel(): void;
+  digest(scenario: unknown, seed: number | null): Promise<string | null>;
+  /** Stops the worker for good. */
+  dispose(): void;
+}
+
+export class EngineBroken extends Error {
+  override name = "EngineBroken";
+}
+
+export function createEngine(): EngineClient {
+  const worker = new Worker(new URL("./engine.worker.ts", import.meta.url), { type: "module", name: "holdfast-engine" });
+  const remote: Remote<EngineWorker> = wrap<EngineWorker>(worker);
+  const open = new Set<(error: EngineBroken | null) => void>();
+  let disposed = false;
+  worker.addEventListener("error", (event) => {
+    for (const settle of open) settle(new EngineBroken(event.message || "the engine's worker could not start"));
+  });
+
+  function guarded<T>(call: Promise<T>, onDispose: T): Promise<T> {
+    if (disposed) return Promise.resolve(onDispose);
+    return new Promise<T>((resolve, reject) => {
+      const settle = (error: EngineBroken | null) => {
+        open.delete(settle);
+        if (error) reject(error);
+        else resolve(onDispose);
+      };
+      open.add(settle);
+      call.then(
+        (value) => {
+          open.delete(settle);
+          resolve(value);
+        },
+        (cause: unknown) => {
+          open.delete(settle);
+          reject(new EngineBroken(cause instanceof Error ? cause.message : String(cause)));
+        },
+      );
+    });
+  }
+
+  return {
+    run: (scenario, seed, onProgress) =>
+      guarded<WorkerOutcome>(remote.run(scenario, seed, onProgress && proxy(onProgress)) as Promise<WorkerOutcome>, { ok: false, cancelled: true }),
+    cancel: () => void remote.cancel(),
+    digest: (scenario, seed) => guarded(remote.digest(scenario, seed), null),
+    dispose() {
+      disposed = true;
+      for (const settle of [...open]) settle(null);
+      remote[releaseProxy]();
+      worker.terminate();
+    },
+  };
+}
