@@ -21,6 +21,8 @@ export type DraftNotice =
 export interface DraftControl {
   base: Base;
   draft: Draft;
+  /** Field in which a step of typing is going on. */
+  typingAt: string | null;
   canUndo: boolean;
   canRedo: boolean;
   /** Is there anything that differs from the base, or is not a value yet? */
@@ -156,6 +158,7 @@ export function useDraft({ base: first, store, found, now, onOtherBase }: DraftO
   return {
     base,
     draft,
+    typingAt: history.typingAt,
     canUndo: history.past.length > 0,
     canRedo: history.future.length > 0,
     touched,

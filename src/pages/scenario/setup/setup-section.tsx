@@ -3,26 +3,9 @@ import { ProblemNote } from "#src/components/ui/field.tsx";
 import { Section } from "#src/components/ui/section.tsx";
 import { isWithin } from "../model/json-path.ts";
 import type { FieldIssue } from "../model/judge.ts";
+import { type SectionId, sectionOf } from "../model/sections.ts";
 import { asProblem } from "./fields.tsx";
 import { useForm } from "./form.tsx";
-
-/** Which section a setting belongs to: the first that owns a beginning of its path. */
-export const OWNERS = {
-  machine: ["loops[0].plant"],
-  loop: ["loops[0].controller", "loops[0].sensor", "loops[0].actuator", "loops[0].timing"],
-  reference: ["loops[0].references", "loops[0].feedforward"],
-  losses: ["losses"],
-  round: ["round", "radio"],
-  pushes: ["pushes", "changes"],
-  limits: ["limits"],
-  start: ["loops[0].start"],
-  run: ["run"],
-  about: ["name", "description", "format", "version", "loops"],
-} as const;
-export type SectionId = keyof typeof OWNERS;
-export const SECTION_IDS = Object.keys(OWNERS) as SectionId[];
-
-export const sectionOf = (path: string): SectionId => SECTION_IDS.find((id) => OWNERS[id].some((outer) => isWithin(path, outer))) ?? "about";
 
 export interface Folds {
   open: ReadonlySet<SectionId>;

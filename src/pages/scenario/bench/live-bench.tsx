@@ -1,0 +1,173 @@
+import type { ReactNode } from "react";
+import { verdictSentence } from "#shared/simulation/verdict-text.ts";
+import { RunBench } from "#src/components/drawings/run-bench.tsx";
+import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
+import { Mark, VerdictLine } from "#src/components/ui/mark.tsx";
+import { Empty, Loading } from "#src/components/ui/states.tsx";
+import { counted, significant, withUnit } from "#src/lib/format.ts";
+import { clockText } from "../clock.ts";
+import type { FieldIssue } from "../model/judge.ts";
+import type { Bench, BenchRun } from "./use-bench.ts";
+
+interface LiveBenchProps {
+  bench: Bench;
+  issues: readonly FieldIssue[];
+  /** Was the last good value of the only bad field: "with plan at 6 steps". */
+  lastGood: string | null;
+  seed: number | null;
+  onSeed: (seed: number | null) => void;
+  onFirstIssue: () => void;
+  /** Beside the seed: keeping the run. */
+  actions: ReactNode;
+}
+
+const LARGEST_SEED = 4_294_967_295;
+
+/** Verdict, limits, machine, plots, tapes and round of what is being edited. */
+export function LiveBench({ bench, issues, lastGood, seed, onSeed, onFirstIssue, actions }: LiveBenchProps) {
+  const { run, progress, broken, cancelled } = bench;
+  const stale = issues.length > 0;
+  return (
+    <section className="bench sheet doc" aria-label="Live bench" aria-busy={progress !== null}>
+      <div className="pad">
+        <Head {...{ bench, issues, lastGood, stale, onFirstIssue }} />
+        <div className="bench-acts">
+          <ButtonPair label="Seed">
+            <SeedStep icon="left" label="The seed before" run={run} step={-1} onSeed={onSeed} />
+            <SeedStep icon="right" label="Another seed" run={run} step={1} onSeed={onSeed} />
+          </ButtonPair>
+          {seed !== null && run && run.scenario.run.seed !== run.result.seed && (
+            <Button small kind="bare" onClick={() => onSeed(null)}>
+              Back to seed {run.scenario.run.seed}
+            </Button>
+          )}
+          {progress && (
+            <span className="bench-progress" role="status">
+              <progress max={progress.rounds} value={progress.round} aria-label="Progress of the run" />
+              <span>
+                round {progress.round} of {progress.rounds}
+              </span>
+              <Button small onClick={bench.cancel}>
+                Stop
+              </Button>
+            </span>
+          )}
+          {(broken || cancelled) && (
+            <Button small onClick={bench.again}>
+              Run it
+            </Button>
+          )}
+          <span className="ml-auto">{actions}</span>
+        </div>
+        {run ? (
+          <RunBench scenario={run.scenario} timing={run.timing} result={run.result} stale={stale} />
+        ) : stale ? (
+          <Empty title="No result yet" text="The bench runs as soon as every marked field is put right." />
+        ) : broken || cancelled ? (
+          <Empty title={broken ? "The engine stopped" : "The run was stopped"} text={broken ? "Nothing that you entered is lost." : undefined}>
+            <Button onClick={bench.again}>Run it again</Button>
+          </Empty>
+        ) : (
+          <Loading what="The first run is computed" />
+        )}
+      </div>
+    </section>
+  );
+}
+
+function SeedStep({
+  icon,
+  label,
+  run,
+  step,
+  onSeed,
+}: {
+  icon: "left" | "right";
+  label: string;
+  run: BenchRun | null;
+  step: 1 | -1;
+  onSeed: (seed: number) => void;
+}) {
+  const next = (run?.result.seed ?? 0) + step;
+  const possible = run !== null && next >= 0 && next <= LARGEST_SEED;
+  return (
+    <IconButton
+      small
+      icon={icon}
+      iconSize={14}
+      label={possible ? `${label}: ${next}` : label}
+      impossible={possible ? null : "There is none."}
+      onClick={() => onSeed(next)}
+    />
+  );
+}
+
+function Head({
+  bench,
+  issues,
+  lastGood,
+  stale,
+  onFirstIssue,
+}: Pick<LiveBenchProps, "bench" | "issues" | "lastGood" | "onFirstIssue"> & { stale: boolean }) {
+  const { run, cancelled, broken } = bench;
+  const basis = run && (
+    <>
+      seed {run.result.seed} · {withUnit(significant(run.result.durationS, 4), "s")} long
+    </>
+  );
+  if (stale) {
+    const fields = `${countOf(issues.length)} in the set-up ${issues.length === 1 ? "has" : "have"} to be put right first.`;
+    return (
+      <div className="verdict">
+        <Mark state="not-decided" size={20} quiet />
+        <p className="say" role="status">
+          {run ? (
+            <>
+              <b>Last good result{lastGood ? "," : "."}</b> {lastGood && `${lastGood}. `}
+            </>
+          ) : (
+            <b>Not decided. </b>
+          )}
+          <button type="button" className="link bench-first" onClick={onFirstIssue}>
+            {fields}
+          </button>
+        </p>
+        {run && (
+          <div className="meta">
+            {basis}
+            <br />
+            {clockText(run.at)}
+          </div>
+        )}
+      </div>
+    );
+  }
+  if (!run) return null;
+  if (cancelled || broken) {
+    return (
+      <VerdictLine
+        state="not-decided"
+        word={broken ? "The engine stopped." : "Stopped."}
+        sentence="What is shown below is the run before."
+        meta={basis}
+      />
+    );
+  }
+  const { word, sentence } = verdictSentence(run.scenario, run.result);
+  return (
+    <VerdictLine
+      state={run.result.verdict}
+      word={word}
+      sentence={sentence}
+      meta={
+        <>
+          {basis}
+          <br />
+          <span title="From asking the engine to its answer">run in {withUnit(significant(run.elapsedMs, 2), "ms")}</span>
+        </>
+      }
+    />
+  );
+}
+
+const countOf = (count: number): string => (count === 1 ? "One field" : counted(count, "field"));

@@ -1,0 +1,29 @@
+import { Link } from "react-router-dom";
+import { paths } from "#src/app/paths.ts";
+
+export type PhoneView = "bench" | "setup";
+
+interface PhoneBarProps {
+  name: string;
+  teamId: string;
+  scenarioId: string;
+  view: PhoneView;
+  issues: number;
+  onView: (view: PhoneView) => void;
+}
+
+/** The pages of the scenario at the bottom of a phone's screen. */
+export function PhoneBar({ name, teamId, scenarioId, view, issues, onView }: PhoneBarProps) {
+  return (
+    <nav className="ph-bar" aria-label={`${name}: pages`}>
+      <button type="button" aria-current={view === "bench" ? "page" : undefined} onClick={() => onView("bench")}>
+        Bench
+      </button>
+      <button type="button" aria-current={view === "setup" ? "page" : undefined} onClick={() => onView("setup")}>
+        Set-up{issues > 0 && <span className="coral strong"> {issues}</span>}
+      </button>
+      <Link to={paths.scenarioRuns(teamId, scenarioId)}>Runs</Link>
+      <Link to={paths.scenarioRevisions(teamId, scenarioId)}>Revisions</Link>
+    </nav>
+  );
+}

@@ -1,0 +1,81 @@
+import { useQueryClient } from "@tanstack/react-query";
+import { useCallback, useMemo, useState } from "react";
+import { useParams, useSearchParams } from "react-router-dom";
+import type { ScenarioResponse } from "#shared/api/scenarios.ts";
+import { useRevision } from "#src/api/revisions/get-revision.ts";
+import { scenarioOptions, useScenario } from "#src/api/scenarios/get-scenario.ts";
+import { DocumentTitle } from "#src/app/document-title.tsx";
+import { paths } from "#src/app/paths.ts";
+import { useSession, useTeam } from "#src/app/session.tsx";
+import { LinkButton } from "#src/components/ui/button.tsx";
+import { QueryError } from "#src/components/ui/query-error.tsx";
+import { Loading } from "#src/components/ui/states.tsx";
+import { browserStore, draftKey, type StoredDraft } from "./model/draft-store.ts";
+import { OldRevision } from "./old-revision.tsx";
+import { Workshop } from "./workshop.tsx";
+import "./scenario.css";
+
+export function ScenarioPage() {
+  const { scenarioId = "" } = useParams();
+  const [search] = useSearchParams();
+  const team = useTeam();
+  const query = useScenario(team.id, scenarioId);
+  if (!query.data) {
+    return query.isError ? (
+      <>
+        <DocumentTitle>Scenario</DocumentTitle>
+        <QueryError error={query.error} what="The scenario" onRetry={() => void query.refetch()}>
+          <LinkButton to={paths.scenarios(team.id)}>To the scenarios</LinkButton>
+        </QueryError>
+      </>
+    ) : (
+      <Loading what="The scenario opens" />
+    );
+  }
+  const asked = Number(search.get("revision"));
+  const old = Number.isInteger(asked) && asked > 0 && asked !== query.data.latest.number ? asked : null;
+  if (old !== null) return <OldRevision key={`${scenarioId} ${old}`} data={query.data} revision={old} />;
+  return <WithDraft key={scenarioId} data={query.data} />;
+}
+
+/** Looks for a draft of an earlier visit, and for the revision that it began from. */
+function WithDraft({ data }: { data: ScenarioResponse }) {
+  const { user } = useSession();
+  const team = useTeam();
+  const client = useQueryClient();
+  const store = useMemo(() => browserStore(draftKey(data.id, user.id)), [data.id, user.id]);
+  const [visit, setVisit] = useState(() => ({ count: 0, found: store.read() }));
+  const startOver = useCallback(async () => {
+    await client.fetchQuery({ ...scenarioOptions(team.id, data.id), staleTime: 0 }).catch(() => null);
+    setVisit(({ count }) => ({ count: count + 1, found: store.read() }));
+  }, [client, team.id, data.id, store]);
+  const { found } = visit;
+  const older = found?.state === "open" && found.draft && found.base < data.latest.number ? found : null;
+  const latest = { revision: data.latest.number, scenario: data.latest.scenario };
+  if (older) return <OnOlderBase key={visit.count} {...{ data, store, onOtherBase: startOver }} found={older} />;
+  return <Workshop key={visit.count} data={data} base={latest} store={store} found={found} onOtherBase={startOver} />;
+}
+
+interface OnOlderBaseProps {
+  data: ScenarioResponse;
+  store: ReturnType<typeof browserStore>;
+  found: StoredDraft;
+  onOtherBase: () => void;
+}
+
+function OnOlderBase({ data, store, found, onOtherBase }: OnOlderBaseProps) {
+  const team = useTeam();
+  const query = useRevision(team.id, data.id, found.base);
+  if (query.data) {
+    const base = { revision: query.data.number, scenario: query.data.scenario };
+    return <Workshop data={data} base={base} store={store} found={found} onOtherBase={onOtherBase} />;
+  }
+  if (query.isError) {
+    return (
+      <QueryError error={query.error} what={`Revision ${found.base}, from which your draft began,`} onRetry={() => void query.refetch()}>
+        <LinkButton to={paths.scenarios(team.id)}>To the scenarios</LinkButton>
+      </QueryError>
+    );
+  }
+  return <Loading what="Your draft opens" />;
+}
