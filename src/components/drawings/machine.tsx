@@ -134,7 +134,7 @@ function Fan({ picture }: { picture: MachinePicture }) {
             <path d={`M${point(at(inner))}L${point(at(outer))}`} className="lim" />
             <text
               data-part="limit"
-              data-x={labelX}
+              data-x={labelX + (right ? 1 : -1) * (hanging ? 18 : 8)}
               x={labelX + (right ? 1 : -1) * (hanging ? 18 : 8)}
               y={labelY + (hanging ? 2 : 10)}
               className="axc"
@@ -171,7 +171,7 @@ function usePose(svg: RefObject<SVGSVGElement | null>, picture: MachinePicture, 
     move("fan", cartX);
     for (const label of find("limit")) {
       const x = cartX + Number(label.getAttribute("data-x"));
-      label.style.display = x < 34 || x > picture.width - 40 ? "none" : "";
+      label.style.display = x < 42 || x > picture.width - 42 ? "none" : "";
     }
     const line = (x: number, theta: number, fromM: number, toM: number) => {
       const [x1, y1] = fromPivot(x, pivotY, theta, fromM * pixelsPerM);

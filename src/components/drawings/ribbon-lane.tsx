@@ -52,11 +52,13 @@ export function RibbonLane({ timing, scale, y, width, measure }: RibbonLaneProps
       else if (kind === "way" && until - from > measure("on its way", "axis") + 4) say("on its way", [{ x, y: y - 6, anchor: "middle" }]);
     }
   }
-  const latency = withUnit(fixed(timing.latencyS * 1000, 2), "ms");
+  const ms = (seconds: number) => withUnit(fixed(seconds * 1000, 2), "ms");
+  const latency = ms(timing.latencyS);
+  const tooEarly = timing.earliestActS > timing.actAtS + 1e-9;
   const long = ", the same in every round";
   const lead = `latency τ = ${latency}`;
   const whole = measure(lead, "strong") + measure(long, "strong") < width - 8;
-  const half = (measure(lead, "strong") + (whole ? measure(long, "strong") : 0)) / 2;
+  const half = tooEarly ? 0 : (measure(lead, "strong") + (whole ? measure(long, "strong") : 0)) / 2;
   const middle = Math.min(width - half - 2, Math.max(half + 2, (samples + acts) / 2));
   return (
     <g>
@@ -69,17 +71,25 @@ export function RibbonLane({ timing, scale, y, width, measure }: RibbonLaneProps
         ),
       )}
       <circle cx={samples} cy={y} r="4.2" className="samp" />
-      <path d={`M${acts - 6} ${y - 9}h12l-6 10z`} className="act" />
+      <path d={`M${acts - 6} ${y - 9}h12l-6 10z`} className={tooEarly ? "act over" : "act"} />
       {words.map(({ text, x, y: at, anchor }) => (
         <text key={`${text}${x}`} x={x} y={at} className="ax" textAnchor={anchor}>
           {text}
         </text>
       ))}
-      <path d={`M${samples} ${y + 22}v6H${acts}v-6`} className="brk" />
-      <text x={middle} y={y + 44} className="txb" textAnchor="middle">
-        latency <tspan className="it">τ</tspan> = {latency}
-        {whole && long}
-      </text>
+      {tooEarly ? (
+        <text x={width} y={y + 36} className="txc" textAnchor="end">
+          would have to act at {ms(timing.actAtS)}, the command is there at {ms(timing.earliestActS)}
+        </text>
+      ) : (
+        <>
+          <path d={`M${samples} ${y + 22}v6H${acts}v-6`} className="brk" />
+          <text x={middle} y={y + 44} className="txb" textAnchor="middle">
+            latency <tspan className="it">τ</tspan> = {latency}
+            {whole && long}
+          </text>
+        </>
+      )}
     </g>
   );
 }

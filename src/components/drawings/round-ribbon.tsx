@@ -104,15 +104,18 @@ function Ribbon({ timing, hops, width }: RoundRibbonProps & { width: number }) {
           height={STAIRS + 10}
           className="guard"
         />
+        {heads?.map(
+          ({ name, x, anchor, row }) =>
+            row < rows - 1 && <path key={name} d={`M${anchor === "start" ? x - 1.5 : x + 1.5} ${37 + row * 34}V${top + 4}`} className="lead" />,
+        )}
         {heads?.map(({ name, detail, x, anchor, row, coral }) => (
           <g key={name}>
-            <text x={x} y={18 + row * 34} className={coral ? "txc" : "txb"} textAnchor={anchor}>
+            <text x={x} y={18 + row * 34} className={`${coral ? "txc" : "txb"} halo2`} textAnchor={anchor}>
               {name}
             </text>
-            <text x={x} y={33 + row * 34} className={coral ? "axc" : "ax"} textAnchor={anchor}>
+            <text x={x} y={33 + row * 34} className={`${coral ? "axc" : "ax"} halo2`} textAnchor={anchor}>
               {detail}
             </text>
-            {row < rows - 1 && <path d={`M${anchor === "start" ? x - 1.5 : x + 1.5} ${37 + row * 34}V${top + 4}`} className="lead" />}
           </g>
         ))}
         {stairs.map((stair, index) => (

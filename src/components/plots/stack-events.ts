@@ -34,8 +34,8 @@ const MARKS: Partial<Record<EventKind, { mark: EventMark; words: string }>> = {
   diverged: { mark: "ended", words: "diverged" },
 };
 
-/** Outages are joined with their ends; crossings are marked on the curves instead. */
-export function markedEvents(events: readonly RunEvent[], endS: number): Marked[] {
+/** Outages are joined with their ends; crossings are marked on the curves instead. `steps`: references change by steps. */
+export function markedEvents(events: readonly RunEvent[], endS: number, steps = true): Marked[] {
   const marked: Marked[] = [];
   const open: Marked[] = [];
   for (const event of [...events].sort((a, b) => a.atS - b.atS)) {
@@ -46,7 +46,8 @@ export function markedEvents(events: readonly RunEvent[], endS: number): Marked[
     }
     const known = MARKS[event.kind];
     if (!known) continue;
-    const item = { ...known, atS: event.atS, untilS: event.atS };
+    const words = event.kind === "outage" ? event.text : event.kind === "reference" && !steps ? "reference" : known.words;
+    const item = { ...known, words, atS: event.atS, untilS: event.atS };
     marked.push(item);
     if (event.kind === "outage") open.push(item);
   }

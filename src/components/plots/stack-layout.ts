@@ -78,7 +78,11 @@ export function layOutStack(result: RunResult, signals: readonly PlotSignal[], w
   const left = Math.max(narrow ? 32 : 40, Math.ceil(tickWidth) + 13);
   const right = Math.max(left + 60, width - Math.max(narrow ? 46 : 58, Math.ceil(wordWidth) + 10));
 
-  const marked = markedEvents(result.events, result.endedAtS);
+  const marked = markedEvents(
+    result.events,
+    result.endedAtS,
+    signals.some(({ reference }) => reference?.stair),
+  );
   const whole = (timeS: number) => left + (timeS / result.durationS) * (right - left);
   const { rows } = placeEvents(marked, { xOf: whole, left, right, rows: narrow ? 3 : 2, measure: (text) => measure(text, "axis") });
   const eventRows = Math.max(1, rows);
