@@ -9,11 +9,12 @@ export interface SilenceSetup {
 }
 
 export class ActuatorNode {
-  /** Input in force: what the drive is asked for, m. During a reaction to silence it is zero. */
-  readonly inForce: Float64Array;
   /** A reaction to silence is on. */
   silent = false;
   readonly #m: number;
+  readonly #zero: Float64Array;
+  /** Row 0 of the buffer. */
+  readonly #first: Float64Array;
   /** planLength x m; entry 0 is in force. Shifted, never indexed, so that the stage is linear. */
   readonly #buffer: Float64Array;
   readonly #holdAtEnd: boolean;
@@ -23,10 +24,16 @@ export class ActuatorNode {
 
   constructor(m: number, planLength: number, holdAtEnd: boolean, silence: SilenceSetup | null) {
     this.#m = m;
-    this.inForce = new Float64Array(m);
+    this.#zero = new Float64Array(m);
     this.#buffer = new Float64Array(planLength * m);
+    this.#first = this.#buffer.subarray(0, m);
     this.#holdAtEnd = holdAtEnd;
     this.#silence = silence;
+  }
+
+  /** Input in force: what the drive is asked for, m. During a reaction to silence it is zero. */
+  get inForce(): Float64Array {
+    return this.silent ? this.#zero : this.#first;
   }
 
   get memory(): readonly Float64Array[] {
@@ -45,9 +52,7 @@ export class ActuatorNode {
       buffer.copyWithin(0, m);
       if (!this.#holdAtEnd) buffer.fill(0, buffer.length - m);
     } else if (!this.#holdAtEnd) buffer.fill(0);
-    const change = this.#silence ? this.#listen(this.#silence, delivered, counts) : null;
-    for (let j = 0; j < m; j++) this.inForce[j] = this.silent ? 0 : buffer[j];
-    return change;
+    return this.#silence ? this.#listen(this.#silence, delivered, counts) : null;
   }
 
   #listen(silence: SilenceSetup, delivered: boolean, counts: boolean): "begins" | "ends" | null {

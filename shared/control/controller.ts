@@ -15,10 +15,11 @@ export interface CommandLimits {
   step: Float64Array;
 }
 
-/** Signals known ahead, filled in for an instant in whole nanoseconds: x_ref (n) and u_ff (m) at an acting instant, r (ni) at a sampling instant. */
+/** Signals known ahead, filled in for an instant in whole nanoseconds: x_ref (n) and u_ff (m) at an acting instant, r (ni) of the integrated signals at a sampling instant. */
 export interface KnownAhead {
   state(tNs: number, out: Float64Array): void;
   feedforward(tNs: number, out: Float64Array): void;
+  integrated(tNs: number, out: Float64Array): void;
 }
 
 export interface ControllerSetup {
@@ -105,7 +106,7 @@ export class StateFeedback implements Controller {
     this.#virtualX = new Float64Array(n);
     this.#virtualQ = new Float64Array(this.#ni);
     this.#virtualU = new Float64Array(this.#rows * m);
-    this.#reference = new Float64Array(Math.max(n, m));
+    this.#reference = new Float64Array(Math.max(n, m, this.#ni));
     this.#innovation = new Float64Array(design.p);
   }
 
@@ -243,10 +244,10 @@ export class StateFeedback implements Controller {
     const n = this.#n;
     const m = this.#m;
     const ni = this.#ni;
-    if (known) known.state(sampledAtNs, this.#reference);
+    if (known) known.integrated(sampledAtNs, this.#reference);
     for (let i = 0; i < ni; i++) {
-      let error = 0;
-      for (let s = 0; s < n; s++) error += feedback.ci[i * n + s] * (known ? x[s] - this.#reference[s] : x[s]);
+      let error = known ? -this.#reference[i] : 0;
+      for (let s = 0; s < n; s++) error += feedback.ci[i * n + s] * x[s];
       const step = design.instants.periodS * error;
       let further = false;
       for (let j = 0; j < m; j++) if (-feedback.ki[j * ni + i] * step * this.limited[j] > 0) further = true;

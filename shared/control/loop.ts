@@ -116,17 +116,24 @@ function knownAhead(scenario: Scenario): KnownAhead | null {
   const loop = scenario.loops[0];
   if (loop.references.length === 0 && loop.feedforward.length === 0) return null;
   const plant = createPlant(loop.plant);
-  const states = loop.references.map(({ signal, profile }) => ({
+  const { law } = loop.controller;
+  const integrals = law.type === "pid" ? [] : law.integral;
+  type Entry = { index: number; at: (tNs: number) => number };
+  const states: Entry[] = loop.references.map(({ signal, profile }) => ({
     index: plant.states.findIndex(({ name }) => name === signal),
     at: profileAt(profile),
   }));
-  const inputs = loop.feedforward.map(({ signal, profile }) => ({
+  const inputs: Entry[] = loop.feedforward.map(({ signal, profile }) => ({
     index: plant.inputs.findIndex(({ name }) => name === signal),
     at: profileAt(profile),
   }));
-  const fill = (entries: typeof states) => (tNs: number, out: Float64Array) => {
+  const integrated: Entry[] = integrals.flatMap(({ signal }, index) => {
+    const reference = loop.references.find((candidate) => candidate.signal === signal);
+    return reference ? [{ index, at: profileAt(reference.profile) }] : [];
+  });
+  const fill = (entries: readonly Entry[]) => (tNs: number, out: Float64Array) => {
     out.fill(0);
     for (const entry of entries) if (entry.index >= 0) out[entry.index] = entry.at(tNs);
   };
-  return { state: fill(states), feedforward: fill(inputs) };
+  return { state: fill(states), feedforward: fill(inputs), integrated: fill(integrated) };
 }

@@ -45,22 +45,20 @@ export function add(a: Float64Array, b: Float64Array, factor = 1): Float64Array 
   return a.map((value, i) => value + factor * b[i]);
 }
 
+/** NaN when an entry is NaN. */
 export function maxAbs(a: Float64Array): number {
   let most = 0;
-  for (let i = 0; i < a.length; i++) {
-    const value = Math.abs(a[i]);
-    if (!(value <= most)) most = value;
-  }
+  for (let i = 0; i < a.length; i++) most = Math.max(most, Math.abs(a[i]));
   return most;
 }
 
-/** Largest row sum of moduli. */
+/** Largest row sum of moduli; NaN when an entry is NaN. */
 export function infinityNorm(a: Float64Array, columns: number): number {
   let most = 0;
   for (let i = 0; i < a.length; i += columns) {
     let sum = 0;
     for (let j = 0; j < columns; j++) sum += Math.abs(a[i + j]);
-    if (!(sum <= most)) most = sum;
+    most = Math.max(most, sum);
   }
   return most;
 }

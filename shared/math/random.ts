@@ -1,4 +1,4 @@
-import { alea } from "seedrandom";
+import alea from "seedrandom/lib/alea.js";
 import { ln, sincos } from "./elementary.ts";
 
 export type Uniform = () => number;

@@ -6,8 +6,14 @@ import type { StateSpaceSpec } from "./schema.ts";
 const named = (given: { name: string; unit: string }[] | null, letter: string, length: number): Signal[] =>
   Array.from({ length }, (_, i) => {
     const name = given?.[i]?.name ?? `${letter}${i + 1}`;
-    return { name, unit: given?.[i]?.unit ?? "", symbol: name, label: name };
+    return { name, unit: given?.[i]?.unit ?? "", symbol: name, label: inWords(name) };
   });
+
+/** "armAngle" and "arm_angle" as "Arm angle"; "x1" stays. */
+const inWords = (name: string): string => {
+  const words = name.replace(/([a-z0-9])([A-Z])/g, "$1 $2").replaceAll("_", " ");
+  return words === name ? name : words.charAt(0).toUpperCase() + words.slice(1).toLowerCase();
+};
 
 /** Pushes act on each input (added to what the actuator does) and on each state's derivative. */
 export class StateSpace implements Plant {

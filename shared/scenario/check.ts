@@ -150,6 +150,7 @@ function checkLoop(report: Report, scenario: Scenario, loop: Loop, plant: Plant)
   if (controller.limits) report.length(`${at}.controller.limits`, "Limits of the controller", controller.limits.length, m, nInputs);
 
   const { law, estimator } = controller;
+  const integrable = plant.outputs.filter(({ d }) => d.every((value) => value === 0)).map(({ name }) => name);
   if (law.type === "pid") {
     const measured = sensor.signals.map(({ signal }) => signal);
     report.known(`${at}.controller.law.signal`, law.signal, measured, "a measured signal");
@@ -170,7 +171,7 @@ function checkLoop(report: Report, scenario: Scenario, loop: Loop, plant: Plant)
       });
     }
     law.integral.forEach(({ signal }, i) => {
-      report.known(`${at}.controller.law.integral[${i}].signal`, signal, states, "a state of this plant");
+      report.known(`${at}.controller.law.integral[${i}].signal`, signal, integrable, "a state, or an output that the input does not reach directly");
     });
     if (estimator.type === "direct") {
       const missing = states.filter((name) => !sensor.signals.some(({ signal }) => signal === name));
@@ -206,9 +207,9 @@ function checkLoop(report: Report, scenario: Scenario, loop: Loop, plant: Plant)
   if (actuator.silence?.reaction === "brake" && !plant.brake)
     report.add("not-possible", `${at}.actuator.silence.reaction`, "This plant has no brake; choose ramp or power off.");
 
-  const referable = law.type === "pid" ? [...states, law.signal] : states;
+  const referable = [...states, ...(law.type === "pid" ? [law.signal] : law.integral.map(({ signal }) => signal))];
   loop.references.forEach(({ signal, profile }, i) => {
-    report.known(`${at}.references[${i}].signal`, signal, referable, "a state of this plant");
+    report.known(`${at}.references[${i}].signal`, signal, referable, "a state of this plant or a signal that the law controls");
     if (loop.references.findIndex((other) => other.signal === signal) !== i)
       report.add("duplicate-name", `${at}.references[${i}].signal`, `"${signal}" has two references.`);
     checkProfile(report, `${at}.references[${i}].profile`, profile);

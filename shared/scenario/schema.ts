@@ -355,7 +355,7 @@ export const scenarioSchema = z.strictObject({
   run: z.strictObject({
     durationS: quantity("length of the run", "s", 0.01, 3600),
     seed: count("seed", "", 0, 4_294_967_295).default(1),
-    absoluteTolerance: quantity("absolute tolerance", "", 1e-14, 1e-3).default(1e-8),
+    absoluteTolerance: quantity("absolute tolerance", "", 1e-14, 1e-3).default(1e-10),
     relativeTolerance: quantity("relative tolerance", "", 1e-13, 1e-3).default(1e-8),
   }),
   loops: z.array(loopSchema).length(1),

@@ -100,7 +100,7 @@ const crane: ScenarioInput = {
       controller: {
         placement: "apart",
         computeS: 0.002,
-        law: { type: "lqr", stateWeights: [400, 4000, 40, 400], inputWeights: [0.002], integral: [{ signal: "position", weight: 40 }] },
+        law: { type: "lqr", stateWeights: [1000, 4000, 400, 400], inputWeights: [0.002], integral: [{ signal: "position", weight: 100 }] },
         estimator: { type: "kalman", update: "stationary", processNoise: [0.001, 0.001, 0.05, 0.05], measurementNoise: [0.002, 0.002] },
       },
       actuator: {
@@ -116,6 +116,16 @@ const crane: ScenarioInput = {
             points: [
               { atS: 1, value: 0 },
               { atS: 6, value: 2.5 },
+            ],
+          },
+        },
+        {
+          signal: "velocity",
+          profile: {
+            type: "steps",
+            points: [
+              { atS: 1, value: 0.5 },
+              { atS: 6, value: 0 },
             ],
           },
         },
