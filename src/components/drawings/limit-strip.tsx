@@ -68,10 +68,10 @@ export function LimitStrip({ scenario, result }: LimitStripProps) {
           const { name, rule } = limitParts(limit, scenario);
           return (
             <li key={verdict.index}>
-              <p className="nm">
+              <p className="limit-name">
                 {name} <span className="second">{rule}</span>
               </p>
-              <p className="vl">
+              <p className="limit-value">
                 <Mark state={verdict.state} size={14} /> <b>{verdictValue(limit, verdict)}</b>{" "}
                 <span className="second">{whenText(limit, verdict)}</span>
               </p>

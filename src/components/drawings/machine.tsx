@@ -68,7 +68,7 @@ function Pendulum({ scenario, result, plant, width }: PendulumProps) {
       <g data-part="trail">
         {Array.from({ length: TRAIL }, (_, age) => (
           // biome-ignore lint/suspicious/noArrayIndexKey: a fixed row of lines that are only moved
-          <g key={age} className="trail">
+          <g key={age} className="swing">
             <line opacity={0.49 - age * 0.033} />
             <circle r="1.6" opacity={0.64 - age * 0.033} />
           </g>

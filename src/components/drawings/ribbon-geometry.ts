@@ -1,6 +1,9 @@
 /** The round ribbon: one round to scale between two posts. Everything comes from the round's timing. Pixels and seconds. */
 import type { RoundTiming, Slot } from "#shared/network/round.ts";
 
+/** What the picture needs of a timing; lists carry no more than this. */
+export type RoundPicture = Omit<RoundTiming, "ns" | "savings" | "issues">;
+
 export interface Stair {
   slot: Slot;
   /** Outline, from the base up one stair per hop, along, and down again; closed. */
@@ -25,7 +28,7 @@ export interface RibbonScale {
 }
 
 /** The longest instant that has to be shown. */
-export function ribbonScale(timing: RoundTiming, left: number, right: number): RibbonScale {
+export function ribbonScale(timing: RoundPicture, left: number, right: number): RibbonScale {
   const slotsEnd = timing.slots[timing.slots.length - 1]?.endS ?? 0;
   const endS = Math.max(timing.periodS, slotsEnd + timing.guardS, timing.actAtS, timing.computeUntilS);
   const xOf = (seconds: number) => left + (seconds / endS) * (right - left);
@@ -69,7 +72,7 @@ export interface LanePart {
 }
 
 /** From sampling to acting, without a gap. A command that travels in the next round does so one period later. */
-export function laneParts(timing: RoundTiming): LanePart[] {
+export function laneParts(timing: RoundPicture): LanePart[] {
   const of = (message: Slot["message"]) => timing.slots.find((slot) => slot.message === message);
   const measurement = of("measurement");
   const command = of("command");
@@ -124,7 +127,7 @@ export class WordPlacer {
 }
 
 /** What the picture shows, in words. */
-export function ribbonText(timing: RoundTiming): string {
+export function ribbonText(timing: RoundPicture): string {
   const ms = (seconds: number) => `${Number((seconds * 1000).toPrecision(4))} ms`;
   const slots = timing.slots.map(({ label, startS, endS }) => `${label} from ${ms(startS)} to ${ms(endS)}`);
   const fit = timing.fits ? `${ms(timing.reserveS)} reserve` : `too long by ${ms(-timing.reserveS)}`;

@@ -1,10 +1,9 @@
-import type { RoundTiming } from "#shared/network/round.ts";
 import type { Measure } from "#src/components/plots/measure.ts";
 import { fixed, withUnit } from "#src/lib/format.ts";
-import { laneParts, type Placed, type RibbonScale, WordPlacer } from "./ribbon-geometry.ts";
+import { laneParts, type Placed, type RibbonScale, type RoundPicture, WordPlacer } from "./ribbon-geometry.ts";
 
 interface RibbonLaneProps {
-  timing: RoundTiming;
+  timing: RoundPicture;
   scale: RibbonScale;
   y: number;
   width: number;

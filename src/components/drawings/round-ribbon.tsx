@@ -1,14 +1,13 @@
 import { useId, useRef } from "react";
 import "./drawings.css";
-import type { RoundTiming } from "#shared/network/round.ts";
 import { measureWith, pageFace, useWidth } from "#src/components/plots/measure.ts";
 import { neatScale } from "#src/components/plots/time-scale.ts";
 import { fixed, withUnit } from "#src/lib/format.ts";
-import { ribbonScale, ribbonText, type Stair, stairOf } from "./ribbon-geometry.ts";
+import { type RoundPicture, ribbonScale, ribbonText, type Stair, stairOf } from "./ribbon-geometry.ts";
 import { RibbonLane } from "./ribbon-lane.tsx";
 
 export interface RoundRibbonProps {
-  timing: RoundTiming;
+  timing: RoundPicture;
   /** Hop bound: the height of the stairs. Without it the slots are plain blocks with step divisions. */
   hops?: number;
 }
@@ -203,7 +202,7 @@ function NextRound({
   xOf,
   width,
 }: {
-  timing: RoundTiming;
+  timing: RoundPicture;
   hops?: number;
   post: number;
   base: number;

@@ -1,10 +1,9 @@
 import "./drawings.css";
 import { useId } from "react";
-import type { RoundTiming } from "#shared/network/round.ts";
-import { laneParts, ribbonScale, ribbonText, stairOf } from "./ribbon-geometry.ts";
+import { laneParts, type RoundPicture, ribbonScale, ribbonText, stairOf } from "./ribbon-geometry.ts";
 
 export interface SmallRibbonProps {
-  timing: RoundTiming;
+  timing: RoundPicture;
   /** Hop bound: the height of the stairs. Without it the slots are plain blocks. */
   hops?: number;
   width?: number;
