@@ -12,7 +12,7 @@ export function ConnectionBanner() {
   const toast = useToast();
   useEffect(() => connection.onRecovery(() => toast({ text: "Connected again." })), [toast]);
   return (
-    <div role="alert">
+    <div role="alert" className="sticky top-0 z-15">
       {state !== "up" && (
         <div className="banner noprint">
           <div>

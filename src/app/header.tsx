@@ -1,4 +1,4 @@
-import { Link, NavLink, useNavigate } from "react-router-dom";
+import { Link, useLocation, useNavigate } from "react-router-dom";
 import { IconButton } from "#src/components/ui/button.tsx";
 import { Icon, Logo } from "#src/components/ui/icon.tsx";
 import { Menu, MenuChoices, MenuItem, MenuLabel, MenuRule } from "#src/components/ui/menu.tsx";
@@ -18,16 +18,25 @@ const initials = (name: string): string =>
     .filter((_, i, all) => i === 0 || i === all.length - 1)
     .join("");
 
-const pagesOf = (team: Team | null) =>
-  [
-    ...(team
-      ? [
-          { to: paths.scenarios(team.id), word: "Scenarios" },
-          { to: paths.members(team.id), word: "Team" },
-        ]
-      : []),
-    { to: paths.methods(), word: "Methods" },
-  ] as const;
+interface MainPage {
+  to: string;
+  word: string;
+  also?: string;
+}
+
+const pagesOf = (team: Team | null): MainPage[] => [
+  ...(team
+    ? [
+        // Runs are pages of a scenario, with addresses of their own.
+        { to: paths.scenarios(team.id), word: "Scenarios", also: paths.run(team.id, "") },
+        { to: paths.members(team.id), word: "Team" },
+      ]
+    : []),
+  { to: paths.methods(), word: "Methods" },
+];
+
+const isCurrent = ({ to, also }: MainPage, pathname: string) =>
+  pathname === to || pathname.startsWith(`${to}/`) || (also !== undefined && pathname.startsWith(also));
 
 function TeamChoices({ session, team }: { session: Session; team: Team | null }) {
   const navigate = useNavigate();
@@ -58,6 +67,7 @@ function AccountEntries({ session, team }: { session: Session; team: Team | null
           </>
         )}
       </MenuLabel>
+      <MenuRule />
       <MenuItem asChild>
         <Link to={paths.account()}>Account</Link>
       </MenuItem>
@@ -73,6 +83,7 @@ function AccountEntries({ session, team }: { session: Session; team: Team | null
 export function Header({ team }: { team: Team | null }) {
   const session = useSession();
   const pages = pagesOf(team);
+  const { pathname } = useLocation();
   return (
     <div className="topwrap noprint">
       <header className="top">
@@ -81,10 +92,10 @@ export function Header({ team }: { team: Team | null }) {
           Holdfast
         </Link>
         <nav className="nav max-md:hidden" aria-label="Holdfast">
-          {pages.map(({ to, word }) => (
-            <NavLink key={to} to={to}>
-              {word}
-            </NavLink>
+          {pages.map((page) => (
+            <Link key={page.to} to={page.to} aria-current={isCurrent(page, pathname) ? "page" : undefined}>
+              {page.word}
+            </Link>
           ))}
         </nav>
         <div className="who">
@@ -117,9 +128,11 @@ export function Header({ team }: { team: Team | null }) {
           </Menu>
           <div className="md:hidden">
             <Menu trigger={<IconButton kind="bare" icon="menu" iconSize={18} label="Menu" />}>
-              {pages.map(({ to, word }) => (
-                <MenuItem key={to} asChild>
-                  <NavLink to={to}>{word}</NavLink>
+              {pages.map((page) => (
+                <MenuItem key={page.to} asChild>
+                  <Link to={page.to} aria-current={isCurrent(page, pathname) ? "page" : undefined}>
+                    {page.word}
+                  </Link>
                 </MenuItem>
               ))}
               <MenuRule />

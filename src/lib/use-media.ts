@@ -12,6 +12,3 @@ export function useMedia(query: string): boolean {
   );
   return useSyncExternalStore(subscribe, () => matchMedia(query).matches);
 }
-
-/** Phones: below this a table becomes a list. Same width as in tokens.css. */
-export const useNarrow = (): boolean => useMedia("(max-width: 719px)");

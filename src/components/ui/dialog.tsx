@@ -24,7 +24,7 @@ export function Dialog({ open, onOpenChange, title, text, children, actions, can
   return (
     <Radix.Root open={open} onOpenChange={onOpenChange}>
       <Radix.Portal>
-        <Radix.Overlay className={`veil ${above ? "above" : ""}`} ref={veil}>
+        <Radix.Overlay className={`veil ${above ? "topmost" : ""}`} ref={veil}>
           <Radix.Content
             className={`dialog ${broad ? "broad" : ""}`}
             aria-describedby={undefined}

@@ -8,6 +8,9 @@ import type { Reading } from "./read-scenario.ts";
 
 const MOST_SHOWN = 100;
 
+/** Some messages begin with the path, which already stands before them. */
+const withoutPath = ({ path, message }: Issue): string => (path && message.startsWith(`${path} `) ? message.slice(path.length + 1) : message);
+
 /** Field, value and permitted range of everything that is wrong. */
 export function IssueList({ issues }: { issues: readonly Issue[] }) {
   return (
@@ -15,7 +18,7 @@ export function IssueList({ issues }: { issues: readonly Issue[] }) {
     <ol className="issues mt-2" tabIndex={0} aria-label="What has to be put right">
       {issues.slice(0, MOST_SHOWN).map((issue) => (
         <li key={`${issue.path} ${issue.code} ${issue.message}`}>
-          {issue.path && <span className="at">{issue.path}</span>} {issue.message}
+          {issue.path && <span className="at">{issue.path}</span>} {withoutPath(issue)}
           {issue.help && issue.help.length > 0 && <span className="pl">What would help: {issue.help.join("; ")}.</span>}
         </li>
       ))}
@@ -36,17 +39,11 @@ export function ImportReading({ reading }: { reading: Reading }) {
     );
   }
   if (reading.kind === "not-json") {
-    const { line, column } = reading.position;
     return (
       <ProblemNote
         problem={{
-          title: `Line ${line}, column ${column}: not JSON.`,
-          text: (
-            <>
-              {reading.message}
-              {reading.line.trim() && <code className="mt-1 block border-t border-line pt-1 font-sans">{reading.line}</code>}
-            </>
-          ),
+          title: reading.message,
+          text: reading.line.trim() && <code className="mt-1 block border-t border-line pt-1 font-sans wrap-anywhere">{reading.line}</code>,
         }}
       />
     );

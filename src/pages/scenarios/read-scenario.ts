@@ -8,7 +8,7 @@ import type { Scenario } from "#shared/scenario/schema.ts";
 
 export type Reading =
   | { kind: "too-large"; bytes: number }
-  | { kind: "not-json"; message: string; position: JsonPosition; line: string }
+  | { kind: "not-json"; message: string; line: string }
   | { kind: "invalid"; issues: Issue[] }
   /** Shape and ranges are right; `toPutRight` are rules across fields, without which it can be kept but not run. */
   | { kind: "ready"; scenario: Scenario; toPutRight: Issue[] };
@@ -26,7 +26,7 @@ export function readScenario(text: string): Reading {
   const bytes = new TextEncoder().encode(text).length;
   if (bytes > MAX_SCENARIO_BYTES) return { kind: "too-large", bytes };
   const json = parseJson(text.replace(/^\uFEFF/, ""));
-  if (!json.ok) return { kind: "not-json", message: json.message, position: json.position, line: excerpt(text, json.position) };
+  if (!json.ok) return { kind: "not-json", message: json.message, line: excerpt(text, json.position) };
   const parsed = parseScenario(json.value);
   if (!parsed.ok) return { kind: "invalid", issues: parsed.issues };
   return { kind: "ready", scenario: parsed.value, toPutRight: checkScenario(parsed.value).issues };

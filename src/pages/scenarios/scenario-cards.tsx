@@ -58,7 +58,7 @@ export function ScenarioCards({ teamId, items, query, change, acts, waiting }: R
                   </Link>
                   <span className="pl">{aboutPlant(item)}</span>
                 </div>
-                <span className="above">
+                <span className="over-row">
                   <RowMenu item={item} to={to} acts={acts} />
                 </span>
               </div>

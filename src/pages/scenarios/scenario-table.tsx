@@ -92,7 +92,7 @@ export function ScenarioTable({ teamId, items, query, change, acts, waiting }: R
                 <td className="r nw" title={instantText(item.changedAt)}>
                   {whenText(item.changedAt, now)}
                 </td>
-                <td className="r above">
+                <td className="r over-row">
                   <RowMenu item={item} to={to} acts={acts} />
                 </td>
               </tr>

@@ -15,7 +15,7 @@ import { Loading } from "#src/components/ui/states.tsx";
 import { Pager } from "#src/components/ui/table.tsx";
 import { Tell } from "#src/components/ui/tell.tsx";
 import { capital, counted, listed, THIN, withArticle } from "#src/lib/format.ts";
-import { useNarrow } from "#src/lib/use-media.ts";
+import { useMedia } from "#src/lib/use-media.ts";
 import { DeleteDialog } from "./delete-dialog.tsx";
 import { Filters } from "./filters.tsx";
 import { ImportDialog } from "./import-dialog.tsx";
@@ -46,7 +46,8 @@ export function ScenariosPage() {
   const answer = useScenarioList(team.id, query);
   const acts = useScenarioActs();
   const making = useMakeScenario(team.id);
-  const narrow = useNarrow();
+  // Too narrow for seven columns: the rows become entries, in one or two columns.
+  const narrow = useMedia("(max-width: 999px)");
   const [importing, setImporting] = useState(false);
 
   const list = answer.data;
@@ -67,12 +68,12 @@ export function ScenariosPage() {
         <h1>Scenarios {list && <span className="rev">{countText(list, query.archived)}</span>}</h1>
         {acts.mayCreate && (
           <div className="acts">
-            <Button icon="import" onClick={() => setImporting(true)}>
+            <Button icon="import" className="max-md:[&>.ic]:hidden" onClick={() => setImporting(true)}>
               Import
             </Button>
             <Menu
               trigger={
-                <Button kind="go" icon="plus" busy={making.isPending}>
+                <Button kind="go" icon="plus" className="max-md:[&>.ic]:hidden" busy={making.isPending}>
                   New scenario
                 </Button>
               }

@@ -12,7 +12,7 @@ export function DemoSignIns({ signIn }: { signIn: ReturnType<typeof useSignIn> }
   return (
     <section aria-labelledby="demo">
       <h2 className="h2" id="demo">
-        Demo team
+        {teams.length > 1 ? "Demo teams" : "Demo team"}
       </h2>
       <p className="second prose">
         {listed(teams)} {teams.length > 1 ? "are" : "is"} invented, with machines to try. Everybody’s password is{" "}
@@ -30,6 +30,7 @@ export function DemoSignIns({ signIn }: { signIn: ReturnType<typeof useSignIn> }
             <span className="basis-56 text-small text-ink-2">{email}</span>
             <Button
               small
+              className="ml-auto"
               busy={signIn.isPending && signIn.variables.email === email}
               aria-label={`Sign in as ${name}`}
               onClick={() => signIn.mutate({ email, password })}
