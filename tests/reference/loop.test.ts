@@ -24,6 +24,11 @@ interface Fixture {
   measurement: Columns;
   estimate: Columns;
   command: Columns;
+  /** Per state over the whole run: smallest and largest value on the grid, root of the mean square (an integral). */
+  extremes: [number, number][];
+  rms: number[];
+  cost: number | null;
+  longestLoss: { measurement: number | null; command: number | null };
 }
 
 const PERMITTED = 1e-6;
@@ -107,5 +112,30 @@ describe("a run agrees with the independent simulator", () => {
     expect(worst.ratio, `${name}: worst is ${worst.signal}, ${worst.ratio.toExponential(2)} of its largest magnitude`).toBeLessThan(PERMITTED);
     // a code differs only where a value lies on the edge between two: never in the first half of these runs
     if (differing !== null) expect(differing, `${name}: first differing code`).toBeGreaterThan(rounds / 2);
+  });
+
+  it.each(names.filter((name) => fixture(name).ended === "complete"))("in its figures: %s", (name) => {
+    const data = fixture(name);
+    const outcome = simulate(data.scenario);
+    if (!outcome.ok) throw new Error(outcome.issues[0].message);
+    const { figures, series } = outcome.result;
+    data.rms.forEach((rms, i) => {
+      const figure = figures.signals.find((signal) => signal.name === series.columns[i].name);
+      if (!figure) throw new Error(`no figures of ${series.columns[i].name}`);
+      const [min, max] = data.extremes[i];
+      const scale = Math.max(-min, max);
+      expect(Math.abs(figure.rms - rms) / rms, `RMS of ${figure.name}`).toBeLessThan(5e-3);
+      // besides the grid's points the engine looks at the instants of events, so its extremes may lie a little further out
+      expect((figure.max - max) / scale, `largest ${figure.name}`).toBeGreaterThan(-1e-6);
+      expect((figure.max - max) / scale, `largest ${figure.name}`).toBeLessThan(1e-2);
+      expect((min - figure.min) / scale, `smallest ${figure.name}`).toBeGreaterThan(-1e-6);
+      expect((min - figure.min) / scale, `smallest ${figure.name}`).toBeLessThan(1e-2);
+    });
+    if (data.cost === null) expect(figures.cost).toBeNull();
+    else expect(Math.abs((figures.cost as number) - data.cost) / data.cost).toBeLessThan(1e-5);
+    for (const message of ["measurement", "command"] as const) {
+      const found = figures.messages.find((entry) => entry.message === message)?.longestLoss ?? null;
+      expect(found, `longest loss of the ${message}`).toBe(data.longestLoss[message]);
+    }
   });
 });
