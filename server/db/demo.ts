@@ -1,7 +1,6 @@
 /** The demo team: an invented company, its people and scenarios. Laid out once, on the first start. */
 import type { Role } from "#shared/api/permissions.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
-import { TEMPLATES } from "#shared/scenario/templates.ts";
 
 export const DEMO_PASSWORD = "hold-fast-2026";
 
@@ -29,128 +28,114 @@ interface DemoRevision {
   by: string;
   hoursAgo: number;
   note: string;
-  /** What this revision changes in the one before it. */
-  change?: (scenario: Scenario) => void;
+  /** What was different then from the example; left out: nothing. */
+  then?: (scenario: Scenario) => void;
 }
 export interface DemoScenario {
   team: TeamKey;
-  from: "pendulum-on-cart" | "overhead-crane";
+  /** File in examples/. */
+  example: string;
   /** Oldest first; the first one's author owns the scenario. */
   revisions: DemoRevision[];
 }
 
-export function startOf({ from }: DemoScenario): Scenario {
-  const template = TEMPLATES.find(({ key }) => key === from);
-  if (!template) throw new Error(`There is no template "${from}".`);
-  return structuredClone(template.scenario);
-}
-
 const DAY = 24;
-const outage = (seconds: number) => (scenario: Scenario) => {
-  scenario.losses.outages = [{ fromS: 6.5, untilS: 6.5 + seconds, messages: ["measurement", "command"], lossProbability: 1 }];
-};
 
+/** In the order of their last change. */
 export const DEMO_SCENARIOS: readonly DemoScenario[] = [
   {
-    // A burst of loss brings the rod down in the first revision; nothing has been done about it yet.
+    team: "saltmarsh",
+    example: "balancer-rig-1.json",
+    revisions: [
+      {
+        by: TOVE,
+        hoursAgo: 8 * DAY,
+        note: "For the first afternoon of the course",
+        then: (scenario) => {
+          scenario.name = "Training rig";
+          scenario.description = "The balancer of the course: change the loss and see how long it holds.";
+        },
+      },
+    ],
+  },
+  {
     team: "northquay",
-    from: "pendulum-on-cart",
+    example: "balancer-rig-2-bursts.json",
     revisions: [
       {
         by: TOVE,
         hoursAgo: 6 * DAY + 5,
-        note: "Rig 2 stands beside the shrink tunnel, losses come in bursts",
-        change: (scenario) => {
-          scenario.name = "Balancer rig 2, beside the shrink tunnel";
-          scenario.description = "The same machine as rig 1. The tunnel's drive disturbs the channel: rounds are lost in bursts of seven on average.";
-          scenario.run.seed = 2;
-          scenario.losses.outages = [];
-          scenario.losses.process = {
-            type: "gilbert-elliott-shared",
-            channel: { goodToBad: 0.02, badToGood: 0.15, lossInGood: 0, lossInBad: 1 },
-          };
+        note: "Losses as counted in hall 2, taken as independent",
+        then: (scenario) => {
+          scenario.losses.process = { type: "bernoulli", measurement: 0.05, command: 0.05 };
         },
       },
+      { by: TOVE, hoursAgo: 6 * DAY + 3, note: "They come in bursts: the lorry at the dock door" },
     ],
   },
   {
-    // Everything holds but the time to settle.
     team: "northquay",
-    from: "overhead-crane",
+    example: "pallet-crane-bay-3.json",
     revisions: [
       {
         by: ADA,
-        hoursAgo: 4 * DAY + 2,
+        hoursAgo: 5 * DAY + 2,
         note: "Masses and lengths from the crane's drawing",
-        change: (scenario) => {
-          scenario.name = "Carton crane, bay 3";
-          scenario.description = "Moves a pallet of cartons by 2.5 m without swing; the trolley's drive listens to the network.";
-          scenario.limits = scenario.limits.map((limit) => (limit.type === "settle" ? { ...limit, withinS: 7 } : limit));
+        then: (scenario) => {
+          scenario.changes = [];
         },
       },
-      {
-        by: ROWAN,
-        hoursAgo: 1 * DAY + 7,
-        note: "The packing line waits no longer than 5 s",
-        change: (scenario) => {
-          scenario.limits = scenario.limits.map((limit) => (limit.type === "settle" ? { ...limit, withinS: 5 } : limit));
-        },
-      },
+      { by: ADA, hoursAgo: 4 * DAY + 6, note: "Takes on a load in mid-travel" },
     ],
   },
   {
-    // A draft: more hops than the round has room for.
     team: "northquay",
-    from: "pendulum-on-cart",
+    example: "balancer-rig-1-held.json",
+    revisions: [{ by: ADA, hoursAgo: 3 * DAY + 1, note: "What if the drive only held the last command?" }],
+  },
+  {
+    team: "northquay",
+    example: "film-dancer-arm-1.json",
+    revisions: [{ by: ROWAN, hoursAgo: 2 * DAY + 4, note: "PID as it runs on the wired machine" }],
+  },
+  {
+    team: "northquay",
+    example: "balancer-rig-1.json",
     revisions: [
       {
         by: ROWAN,
-        hoursAgo: 2 * DAY,
+        hoursAgo: 1 * DAY + 3,
         note: "Draft for the long hall, does not fit yet",
-        change: (scenario) => {
+        then: (scenario) => {
           scenario.name = "Balancer, long hall";
+          scenario.description = "The same machine with eight hops between sensor and drive. The round is longer than its period.";
           scenario.round.hops = 8;
         },
       },
     ],
   },
   {
-    // Found wanting, changed, and it holds.
     team: "northquay",
-    from: "pendulum-on-cart",
+    example: "balancer-rig-1.json",
     revisions: [
       {
         by: ROWAN,
-        hoursAgo: 5 * DAY + 1,
-        note: "As built; the drive keeps the last command when one is lost",
-        change: (scenario) => {
-          scenario.name = "Balancer rig 1";
+        hoursAgo: 7 * DAY + 2,
+        note: "As built; the drive holds the last command when one is lost",
+        then: (scenario) => {
+          scenario.loops[0].actuator.onLoss = { policy: "hold" };
+          scenario.losses.outages = [];
+        },
+      },
+      {
+        by: ADA,
+        hoursAgo: 3 * DAY + 3,
+        note: "An outage of 100 ms, as measured at shift change",
+        then: (scenario) => {
           scenario.loops[0].actuator.onLoss = { policy: "hold" };
         },
       },
-      { by: ADA, hoursAgo: 3 * DAY + 3, note: "An outage of 300 ms has to be survived, as measured at shift change", change: outage(0.3) },
-      {
-        by: ROWAN,
-        hoursAgo: 2,
-        note: "Every command carries a plan for the five rounds after it",
-        change: (scenario) => {
-          scenario.loops[0].actuator.onLoss = { policy: "plan", length: 6, end: "zero" };
-        },
-      },
-    ],
-  },
-  {
-    team: "saltmarsh",
-    from: "pendulum-on-cart",
-    revisions: [
-      {
-        by: TOVE,
-        hoursAgo: 8 * DAY,
-        note: "For the first afternoon of the course",
-        change: (scenario) => {
-          scenario.name = "Training rig";
-        },
-      },
+      { by: ROWAN, hoursAgo: 2, note: "Every command carries a plan for the rounds after it" },
     ],
   },
 ];

@@ -16,7 +16,8 @@ const DOWN_CODES = new Set([
   "57P03",
   "53300",
 ]);
-const DOWN_MESSAGES = /Connection terminated|timeout exceeded when trying to connect|Query read timeout|connection error and is not queryable/;
+const DOWN_MESSAGES =
+  /Connection terminated|timeout exceeded when trying to connect|timeout expired|Query read timeout|connection error and is not queryable/;
 
 function* chain(error: unknown): Generator<{ code?: unknown; message: string; syscall?: unknown }> {
   let at = error;

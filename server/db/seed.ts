@@ -1,6 +1,9 @@
+import { readFileSync } from "node:fs";
 import { eq } from "drizzle-orm";
 import { drizzle } from "drizzle-orm/node-postgres";
 import type { Role } from "#shared/api/permissions.ts";
+import { parseScenario } from "#shared/scenario/parse.ts";
+import type { Scenario } from "#shared/scenario/schema.ts";
 import { simulate } from "#shared/simulation/simulate.ts";
 import { ENGINE_VERSION } from "#shared/simulation/version.ts";
 import { record } from "../features/activity/repository.ts";
@@ -8,9 +11,15 @@ import { recordOf, storeRun } from "../features/runs/service.ts";
 import { insertNewScenario, insertNextRevision } from "../features/scenarios/service.ts";
 import { hashPassword } from "../features/session/service.ts";
 import type { Queries } from "./client.ts";
-import { DEMO_PASSWORD, DEMO_PEOPLE, DEMO_SCENARIOS, DEMO_TEAMS, type DemoScenario, startOf } from "./demo.ts";
+import { DEMO_PASSWORD, DEMO_PEOPLE, DEMO_SCENARIOS, DEMO_TEAMS, type DemoScenario } from "./demo.ts";
 import { underLock } from "./migrate.ts";
 import * as schema from "./schema.ts";
+
+function readExample(name: string): Scenario {
+  const parsed = parseScenario(JSON.parse(readFileSync(new URL(`../../examples/${name}`, import.meta.url), "utf8")));
+  if (!parsed.ok) throw new Error(`examples/${name}: ${parsed.issues[0].message}`);
+  return parsed.value;
+}
 
 type Team = { id: string; name: string };
 type User = { id: string; name: string };
@@ -30,12 +39,12 @@ async function insertPeople(db: Queries, teams: Map<string, Team>): Promise<Map<
 
 async function insertDemoScenario(db: Queries, demo: DemoScenario, team: Team, people: Map<string, User>, now: number): Promise<void> {
   let row: { id: string; latestRevision: number } | null = null;
-  let scenario = startOf(demo);
-  for (const { by, hoursAgo, note, change } of demo.revisions) {
+  const example = readExample(demo.example);
+  for (const { by, hoursAgo, note, then } of demo.revisions) {
     const member = { team, user: people.get(by) as User };
     const at = new Date(now - hoursAgo * 3_600_000);
-    scenario = structuredClone(scenario);
-    change?.(scenario);
+    const scenario = structuredClone(example);
+    then?.(scenario);
     const first = row === null;
     if (row === null) row = await insertNewScenario(db, member, scenario, note, at);
     else row = { id: row.id, latestRevision: await insertNextRevision(db, member, row, scenario, note, at) };

@@ -45,8 +45,6 @@ const refuse =
       return next(tooLarge(typeof error.length === "number" ? error.length : null, permittedBytes));
     }
     if (error?.type === "request.aborted") return;
-    if (typeof error?.type === "string" && error.status < 500)
-      return next(new HttpError("request-invalid", "The body of the request cannot be read."));
     next(error);
   };
 

@@ -55,6 +55,10 @@ function asHttpError(error: unknown, log: Logger): HttpError {
   if (isUnstorableText(error)) {
     return new HttpError("request-invalid", "A text holds the character U+0000, which cannot be stored. Remove it.");
   }
+  // An address that cannot be decoded, a file that is not there: Express and its parts say so by status.
+  const status = (error as { status?: unknown } | null)?.status;
+  if (error instanceof URIError || status === 404) return notFound();
+  if (typeof status === "number" && status >= 400 && status < 500) return new HttpError("request-invalid", "The request cannot be read.");
   const reference = randomUUID().slice(0, 8);
   log.error({ err: error, reference }, "A request failed");
   return new HttpError("internal", `Something went wrong on the server. Its log has the cause under ${reference}.`, { reference });

@@ -126,4 +126,18 @@ describe("an address of the API that is none", () => {
     expect(response.status).toBe(404);
     expect(bodyOf(errorBodySchema, response).error.code).toBe("not-found");
   });
+
+  it("is answered with 404 when it cannot even be decoded", async () => {
+    const { agent } = harness.people.engineer;
+    for (const path of ["/api/teams/%E0%A4%A/scenarios", `/api/teams/${own.team}/scenarios/%E0%A4%A`]) {
+      expect(bodyOf(errorBodySchema, await agent.get(path).expect(404)).error.code).toBe("not-found");
+    }
+  });
+});
+
+describe("an address outside the API", () => {
+  it("is answered with 404 when it is an asset that is gone", async () => {
+    const response = await supertest(harness.express).get("/assets/main-of-last-week.js");
+    expect(response.status).toBe(404);
+  });
 });

@@ -92,15 +92,13 @@ describe("keeping a run", () => {
       finished = true;
       return response;
     });
-    const waits: number[] = [];
+    let answered = 0;
     while (!finished) {
-      const from = performance.now();
       await harness.people.trainee.agent.get(`${base()}/members`).expect(200);
-      waits.push(performance.now() - from);
+      answered++;
     }
     expect((await done).status).toBe(201);
-    expect(waits.length).toBeGreaterThan(2);
-    expect(Math.max(...waits)).toBeLessThan(1_000);
+    expect(answered).toBeGreaterThan(10);
   }, 60_000);
 
   it.each([

@@ -249,14 +249,18 @@ describe("the team", () => {
     const { agent } = harness.people.administrator;
     const { id } = await createScenario(harness, scenarioNamed("Watched"), harness.people.reviewer);
     await agent.patch(`${base()}/${id}`).send({ archived: true }).expect(200);
+    await agent.post(`${base()}/${id}/runs`).send({ revision: 1, seed: 8 }).expect(409);
+    await agent.patch(`${base()}/${id}`).send({ archived: false }).expect(200);
+    await agent.post(`${base()}/${id}/runs`).send({ revision: 1, seed: 8 }).expect(201);
     const path = `/api/teams/${harness.team.id}/activity`;
-    const { items, total } = bodyOf(activityListResponse, await agent.get(`${path}?pageSize=3`).expect(200));
+    const { items, total } = bodyOf(activityListResponse, await agent.get(`${path}?pageSize=4`).expect(200));
     expect(items.map(({ what, who, subject }) => [what, who.name, subject?.name])).toEqual([
+      ["run-kept", "The administrator", "Watched"],
+      ["scenario-restored", "The administrator", "Watched"],
       ["scenario-archived", "The administrator", "Watched"],
-      ["run-kept", "The reviewer", "Watched"],
       ["scenario-created", "The reviewer", "Watched"],
     ]);
-    const next = bodyOf(activityListResponse, await agent.get(`${path}?pageSize=3&page=2`).expect(200));
+    const next = bodyOf(activityListResponse, await agent.get(`${path}?pageSize=4&page=2`).expect(200));
     expect(next.total).toBe(total);
     expect(next.items.some(({ id: other }) => items.some((item) => item.id === other))).toBe(false);
     const theirs = bodyOf(activityListResponse, await agent.get(`${path}?who=${harness.people.reviewer.id}&what=scenario-created`).expect(200));

@@ -1,6 +1,6 @@
 /** What happens before the first request: environment, migrations, demo team, and the process itself. */
 import { type ChildProcess, spawn } from "node:child_process";
-import { createServer, type Server } from "node:net";
+import { createServer, type Server, type Socket } from "node:net";
 import pg from "pg";
 import pino from "pino";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
@@ -107,6 +107,7 @@ describe("the database at the first start", () => {
       const { items } = (await rowan.get(`/api/teams/${session.memberships[0].team.id}/scenarios?pageSize=100`)).body;
       const words = items.map(({ verdict }: { verdict: { state: string } }) => verdict.state);
       expect(words).toContain("holds");
+      expect(words).toContain("does-not-fit");
       expect(words.filter((word: string) => word === "crosses").length).toBeGreaterThanOrEqual(2);
       expect(new Set(items.map(({ owner }: { owner: { name: string } }) => owner.name)).size).toBeGreaterThan(1);
       expect(Math.max(...items.map(({ revision }: { revision: number }) => revision))).toBeGreaterThan(2);
@@ -119,14 +120,16 @@ describe("the database at the first start", () => {
 describe("the process", () => {
   let database: TestDatabase;
   let blocker: Server;
+  const held = new Set<Socket>();
   let child: ChildProcess | undefined;
   beforeAll(async () => {
     database = await createTestDatabase();
-    blocker = createServer();
+    blocker = createServer((socket) => held.add(socket));
     await new Promise<void>((resolve) => blocker.listen(0, "127.0.0.1", resolve));
   }, SLOW);
   afterAll(async () => {
     child?.kill("SIGKILL");
+    for (const socket of held) socket.destroy();
     await new Promise((resolve) => blocker.close(resolve));
     await database?.remove();
   });

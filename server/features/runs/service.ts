@@ -68,7 +68,7 @@ export function createRunService(db: Database, simulator: Simulator) {
   /** The same run asked for twice at once is computed once. */
   const underWay = new Map<string, Promise<string>>();
 
-  const make = async (member: Member, key: RunKey, scenario: Scenario): Promise<string> => {
+  const make = async (member: Member, key: RunKey, scenario: Scenario, onRequest: boolean): Promise<string> => {
     const outcome = await simulator.simulate(scenario, key.seed);
     if (!outcome.ok) {
       const [first] = outcome.issues;
@@ -78,18 +78,18 @@ export function createRunService(db: Database, simulator: Simulator) {
     return await db.transaction(async (transaction) => {
       const stored = await storeRun(transaction, member, key, made);
       if (stored) {
-        await record(transaction, member, { what: "run-kept", subject: stored.scenario, revision: key.revision });
+        if (onRequest) await record(transaction, member, { what: "run-kept", subject: stored.scenario, revision: key.revision });
         return stored.id;
       }
       return (await findRunId(transaction, key)) as string;
     });
   };
 
-  const runOf = async (member: Member, key: RunKey, scenario: Scenario): Promise<string> => {
+  const runOf = async (member: Member, key: RunKey, scenario: Scenario, onRequest: boolean): Promise<string> => {
     const name = `${key.scenarioId} ${key.revision} ${key.seed}`;
     const existing = underWay.get(name);
     if (existing) return await existing;
-    const promise = make(member, key, scenario).finally(() => underWay.delete(name));
+    const promise = make(member, key, scenario, onRequest).finally(() => underWay.delete(name));
     underWay.set(name, promise);
     return await promise;
   };
@@ -103,7 +103,7 @@ export function createRunService(db: Database, simulator: Simulator) {
 
     /** With the scenario's own seed, right after saving. */
     async runNewRevision(member: Member, scenarioId: string, revision: number, scenario: Scenario): Promise<void> {
-      await runOf(member, { scenarioId, revision, seed: scenario.run.seed, engine: ENGINE_VERSION }, scenario);
+      await runOf(member, { scenarioId, revision, seed: scenario.run.seed, engine: ENGINE_VERSION }, scenario, false);
     },
 
     async keep(
@@ -116,7 +116,7 @@ export function createRunService(db: Database, simulator: Simulator) {
       const key = { scenarioId, revision: wanted.revision, seed: wanted.seed ?? revision.scenario.run.seed, engine: ENGINE_VERSION };
       const existing = await findRunId(db, key);
       if (existing === null && archivedAt) throw new HttpError("scenario-archived", "This scenario is archived. Restore it to keep new runs.");
-      const run = await this.detail(member.team.id, existing ?? (await runOf(member, key, revision.scenario)));
+      const run = await this.detail(member.team.id, existing ?? (await runOf(member, key, revision.scenario, true)));
       return { run, digestMatches: wanted.digest === null ? null : wanted.digest === run.digest, created: existing === null };
     },
   };

@@ -5,7 +5,7 @@ import type { RunOutcome } from "#shared/simulation/result.ts";
 import { prepareRun } from "#shared/simulation/simulate.ts";
 
 const TURN_MS = 8;
-const ROUNDS_AT_ONCE = 20;
+const ROUNDS_AT_ONCE = 4;
 const AT_THE_SAME_TIME = 4;
 
 export class Stopped extends Error {}
