@@ -2,7 +2,7 @@ import "./drawings.css";
 import type { Limit, Scenario } from "#shared/scenario/schema.ts";
 import type { LimitVerdict, RunResult } from "#shared/simulation/result.ts";
 import { limitParts } from "#shared/simulation/verdict-text.ts";
-import { formatNumber, formatTime } from "#src/components/plots/units.ts";
+import { decimalsFor, formatNumber, formatTime } from "#src/components/plots/units.ts";
 import { Mark } from "#src/components/ui/mark.tsx";
 import { percentText, shownUnit, withUnit } from "#src/lib/format.ts";
 
@@ -16,7 +16,10 @@ export function verdictValue(limit: Limit, verdict: LimitVerdict): string {
   if (limit.type === "saturation") return percentText(verdict.value);
   const { unit, factor } = shownUnit(verdict.unit);
   const shown = verdict.value * factor;
-  const digits = shown === 0 ? 2 : Math.min(6, Math.max(0, 2 - Math.floor(Math.log10(Math.abs(shown)))));
+  // Three figures, but not finer than the limit itself is told.
+  const scale = limit.type === "within" ? Math.max(Math.abs(limit.lo ?? 0), Math.abs(limit.hi ?? 0)) * factor : Math.abs(shown);
+  const three = shown === 0 ? 2 : Math.max(0, 2 - Math.floor(Math.log10(Math.abs(shown))));
+  const digits = Math.min(6, three, decimalsFor(scale) + 1);
   return withUnit(formatNumber(shown, digits), unit);
 }
 

@@ -135,6 +135,7 @@ function Fan({ picture }: { picture: MachinePicture }) {
             <text
               data-part="limit"
               data-x={labelX + (right ? 1 : -1) * (hanging ? 18 : 8)}
+              data-side={right ? 1 : -1}
               x={labelX + (right ? 1 : -1) * (hanging ? 18 : 8)}
               y={labelY + (hanging ? 2 : 10)}
               className="axc"
@@ -171,7 +172,8 @@ function usePose(svg: RefObject<SVGSVGElement | null>, picture: MachinePicture, 
     move("fan", cartX);
     for (const label of find("limit")) {
       const x = cartX + Number(label.getAttribute("data-x"));
-      label.style.display = x < 42 || x > picture.width - 42 ? "none" : "";
+      const far = x + Number(label.getAttribute("data-side")) * (label.textContent ?? "").length * 6.4;
+      label.style.display = far < 0 || far > picture.width ? "none" : "";
     }
     const line = (x: number, theta: number, fromM: number, toM: number) => {
       const [x1, y1] = fromPivot(x, pivotY, theta, fromM * pixelsPerM);

@@ -1,32 +1,31 @@
 import type { ReactNode } from "react";
-import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
 import { useCursorValue, usePlotCursor } from "#src/components/plots/plot-cursor.ts";
-import { plottable, usualSignals } from "#src/components/plots/plot-signals.ts";
+import { plottable } from "#src/components/plots/plot-signals.ts";
 import { timeDecimals } from "#src/components/plots/units.ts";
 import { Button, IconButton } from "#src/components/ui/button.tsx";
 import { fixed } from "#src/lib/format.ts";
 
 interface PlotToolsProps {
-  scenario: Scenario;
   result: RunResult;
-  /** null: the usual ones. */
-  signals: readonly string[] | null;
+  /** Those that are shown. */
+  signals: readonly string[];
+  /** By hand, not the usual ones. */
+  chosen: boolean;
   onSignals(signals: readonly string[] | null): void;
   children?: ReactNode;
 }
 
 /** Zoom, which signals are shown, and what the page adds. */
-export function PlotTools({ scenario, result, signals, onSignals, children }: PlotToolsProps) {
+export function PlotTools({ result, signals, chosen, onSignals, children }: PlotToolsProps) {
   const cursor = usePlotCursor();
   const decimals = timeDecimals(result.rounds.periodS / 10);
   const zoomed = useCursorValue(({ view, durationS }) =>
     view.fromS === 0 && view.untilS === durationS ? "" : `${fixed(view.fromS, decimals)} to ${fixed(view.untilS, decimals)} s`,
   );
   const columns = plottable(result);
-  const shown = signals ?? usualSignals(scenario, result);
   const toggle = (name: string) => {
-    const next = columns.map((column) => column.name).filter((other) => (other === name) !== shown.includes(other));
+    const next = columns.map((column) => column.name).filter((other) => (other === name) !== signals.includes(other));
     if (next.length > 0) onSignals(next);
   };
   return (
@@ -49,17 +48,17 @@ export function PlotTools({ scenario, result, signals, onSignals, children }: Pl
         <summary>
           Signals{" "}
           <span className="second">
-            {shown.length} of {columns.length}
+            {signals.length} of {columns.length}
           </span>
         </summary>
         <fieldset>
           <legend className="vh">Signals in the plots</legend>
           {columns.map(({ name, label }) => (
             <label key={name}>
-              <input type="checkbox" checked={shown.includes(name)} onChange={() => toggle(name)} /> {label}
+              <input type="checkbox" checked={signals.includes(name)} onChange={() => toggle(name)} /> {label}
             </label>
           ))}
-          {signals && (
+          {chosen && (
             <Button kind="bare" small onClick={() => onSignals(null)}>
               The usual ones
             </Button>

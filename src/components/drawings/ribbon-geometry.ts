@@ -111,6 +111,10 @@ export class WordPlacer {
     this.#left = left;
     this.#right = right;
   }
+  /** Keeps words off a mark. */
+  reserve(x: number, y: number, half: number): void {
+    this.#taken.push({ from: x - half, until: x + half, top: y - half, bottom: y + half });
+  }
   place(offers: readonly Placed[]): Placed | null {
     for (const offer of offers) {
       const box = boxOf(offer);

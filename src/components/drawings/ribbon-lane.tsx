@@ -21,6 +21,8 @@ export function RibbonLane({ timing, scale, y, width, measure }: RibbonLaneProps
   const parts = laneParts(timing);
   const [samples, acts] = [xOf(timing.sampleAtS), xOf(timing.actAtS)];
   const placer = new WordPlacer(0, width);
+  placer.reserve(samples, y, 4);
+  placer.reserve(acts, y - 4, 5);
   const words: Word[] = [];
   const say = (text: string, offers: Omit<Placed, "width">[]) => {
     const size = measure(text, "axis");
@@ -29,12 +31,12 @@ export function RibbonLane({ timing, scale, y, width, measure }: RibbonLaneProps
   };
   say("samples", [
     { x: samples - 9, y: y + 4, anchor: "end" },
-    { x: samples + 1, y: y - 8, anchor: "start" },
+    { x: samples + 1, y: y - 10, anchor: "start" },
     { x: samples + 8, y: y + 15, anchor: "start" },
   ]);
   say("acts", [
-    { x: acts - 10, y: y + 15, anchor: "end" },
-    { x: acts + 9, y: y + 4, anchor: "start" },
+    { x: acts - 11, y: y + 15, anchor: "end" },
+    { x: acts + 12, y: y + 4, anchor: "start" },
   ]);
   // Computing first: its box is the shortest, the ways around it have room.
   for (const kind of ["computes", "way", "wait"] as const) {

@@ -24,9 +24,9 @@ interface Head {
   coral: boolean;
 }
 
-/** Names above their slots, in one row, else in two; null when they do not fit and numbers have to stand for them. */
+/** Names above their slots, in one row, else in two or three; null when they do not fit and numbers have to stand for them. */
 export function placeHeads(items: Omit<Head, "row">[], widthOf: (head: Omit<Head, "row">) => number, left: number, right: number): Head[] | null {
-  for (const rows of [1, 2]) {
+  for (const rows of [1, 2, 3]) {
     const ends = new Array<number>(rows).fill(left - 8);
     const placed = items.map((item, index): Head | null => {
       const row = index % rows;

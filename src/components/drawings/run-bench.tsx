@@ -1,9 +1,11 @@
-import { type ReactNode, type Ref, useState } from "react";
+import { type ReactNode, type Ref, useMemo, useRef, useState } from "react";
 import "./drawings.css";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
+import { useWidth } from "#src/components/plots/measure.ts";
 import { createPlotCursor, type PlotCursor, PlotCursorContext } from "#src/components/plots/plot-cursor.ts";
+import { usualSignals } from "#src/components/plots/plot-signals.ts";
 import { PlotStack, type PlotStackHandle } from "#src/components/plots/plot-stack.tsx";
 import { counted, msText } from "#src/lib/format.ts";
 import { CursorTable } from "./cursor-table.tsx";
@@ -29,8 +31,11 @@ export interface RunBenchProps {
 
 /** Where a still picture tells most: the decisive instant of the limit that was used most, else the first push. */
 export function tellingInstant(result: RunResult): number {
-  const decisive = result.limits.filter(({ atS }) => atS !== null).sort((a, b) => b.used - a.used)[0]?.atS;
-  return decisive ?? result.events.find(({ kind }) => kind === "push")?.atS ?? 0;
+  const first = result.events[0]?.atS ?? 0;
+  const told = result.limits.flatMap(({ atS, used }) => (atS !== null ? [{ atS, used }] : [])).sort((a, b) => b.used - a.used);
+  // What happened after something was done to the machine tells more than how it began.
+  const decisive = told.find(({ atS }) => atS > first) ?? told[0];
+  return decisive?.atS ?? result.events.find(({ kind }) => kind === "push")?.atS ?? 0;
 }
 
 /** A cursor for this run, at the instant that tells most. Where the screen stays, it stays too. */
@@ -38,6 +43,9 @@ export function useRunCursor(result: RunResult): PlotCursor {
   const [cursor] = useState(() => createPlotCursor(result.durationS, tellingInstant(result)));
   return cursor;
 }
+
+/** On a phone the first screen has to hold machine, plots and tapes. */
+const NARROW_SIGNALS = 2;
 
 /** "25 ms · 3 hops · 2 transmissions · 6 steps a slot" */
 function roundText({ round }: Scenario, timing: RoundTiming): string {
@@ -53,10 +61,14 @@ function roundText({ round }: Scenario, timing: RoundTiming): string {
 /** Limits, machine, values at the cursor, plots, tapes, time axis and round ribbon: all that stands below the verdict line. */
 export function RunBench({ scenario, timing, result, stale = false, cursor: given, actions, stackRef }: RunBenchProps) {
   const own = useRunCursor(result);
-  const [signals, setSignals] = useState<readonly string[] | null>(null);
+  const host = useRef<HTMLDivElement>(null);
+  const narrow = useWidth(host) < 520;
+  const [chosen, setChosen] = useState<readonly string[] | null>(null);
+  const usual = useMemo(() => usualSignals(scenario, result), [scenario, result]);
+  const signals = chosen ?? (narrow ? usual.slice(0, NARROW_SIGNALS) : usual);
   return (
     <PlotCursorContext value={given ?? own}>
-      <div className={stale ? "run-bench stale" : "run-bench"}>
+      <div ref={host} className={stale ? "run-bench stale" : "run-bench"}>
         <LimitStrip scenario={scenario} result={result} />
         <div className="bench-scene">
           <div className="bench-machine">
@@ -65,8 +77,8 @@ export function RunBench({ scenario, timing, result, stale = false, cursor: give
             <CursorTable scenario={scenario} result={result} />
           </div>
           <div className="bench-plots">
-            <PlotStack scenario={scenario} result={result} signals={signals ?? undefined} stale={stale} ref={stackRef} />
-            <PlotTools scenario={scenario} result={result} signals={signals} onSignals={setSignals}>
+            <PlotStack scenario={scenario} result={result} signals={signals} stale={stale} ref={stackRef} />
+            <PlotTools result={result} signals={signals} chosen={chosen !== null} onSignals={setChosen}>
               {actions}
             </PlotTools>
           </div>

@@ -12,9 +12,14 @@ export function rulerContext(): CanvasRenderingContext2D | null {
   return ruler;
 }
 
-/** The face of the page; a guess of six pixels a letter where nothing can be measured. */
-export const pageFace = (): string => getComputedStyle(document.documentElement).getPropertyValue("--face").trim() || "sans-serif";
+let face: string | undefined;
+/** The face of the page; it never changes while the page is shown. */
+export function pageFace(): string {
+  face ||= getComputedStyle(document.documentElement).getPropertyValue("--face").trim();
+  return face || "sans-serif";
+}
 
+/** A guess of six pixels a letter where nothing can be measured. */
 export function measureWith(face: string): Measure {
   const ctx = rulerContext();
   return (text, font) => {

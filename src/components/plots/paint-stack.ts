@@ -5,7 +5,7 @@ import type { Palette } from "./palette.ts";
 import type { View } from "./plot-cursor.ts";
 import type { PlotLimit } from "./plot-signals.ts";
 import { indexAt } from "./series-points.ts";
-import { placeEvents } from "./stack-events.ts";
+import { type PlacedEvent, placeEvents } from "./stack-events.ts";
 import { EVENT_ROW, LIMIT_WORDS, NEAT, type PlotLane, referenceWord, type StackLayout, TAPE, xOfTime, yOfValue } from "./stack-layout.ts";
 import { lossTicks, lostInView, type TapePiece, tapePieces } from "./tape-pieces.ts";
 import { timeScale } from "./time-scale.ts";
@@ -82,7 +82,13 @@ function limitEdge(frame: Frame, lane: PlotLane, limit: PlotLimit, offset: numbe
     if (reference.stair && before && before.y !== y) edge.push({ x, y: before.y });
     edge.push({ x, y });
   };
-  for (let i = first; i <= last; i += step) add(Math.max(xOf(from), xOf(t[i] as number)), yOfValue(lane, offset + (reference.values[i] as number)));
+  let level = Number.NaN;
+  for (let i = first; i <= last; i += step) {
+    const value = reference.values[i] as number;
+    // A reference that stands still needs no points.
+    if (value !== level) add(Math.max(xOf(from), xOf(t[i] as number)), yOfValue(lane, offset + value));
+    level = value;
+  }
   if (edge.length > 0) add(xOf(until), (edge[edge.length - 1] as { y: number }).y);
   return edge;
 }
@@ -183,14 +189,20 @@ function paintWords(ctx: Ctx, frame: Frame, lane: PlotLane): void {
 function paintTitle(ctx: Ctx, frame: Frame, lane: PlotLane): void {
   const { palette, layout } = frame;
   const { label, symbol, unit } = lane.signal;
+  // Lines that come down from the events pass behind the words.
+  ctx.fillStyle = palette.panel;
+  ctx.fillRect(layout.left - 2, lane.titleY - 12, titleWidth(ctx, palette, lane.signal) + 4, 16);
   let x = layout.left;
-  write(ctx, label, x, lane.titleY, FONT.strong(palette), palette.ink);
-  x += ctx.measureText(label).width + 4;
+  const add = (text: string, font: string) => {
+    write(ctx, text, x, lane.titleY, font, palette.ink);
+    x += ctx.measureText(text).width;
+  };
+  add(label, FONT.strong(palette));
   if (symbol !== "" && symbol !== label) {
-    write(ctx, symbol, x, lane.titleY, FONT.symbol(palette), palette.ink);
-    x += ctx.measureText(symbol).width;
-  } else x -= 4;
-  if (unit !== "") write(ctx, `, ${unit}`, x, lane.titleY, FONT.title(palette), palette.ink);
+    x += 4;
+    add(symbol, FONT.symbol(palette));
+  }
+  if (unit !== "") add(`, ${unit}`, FONT.title(palette));
 }
 
 /** Width of a plot's title, so that the value at the cursor keeps clear of it. */
@@ -222,23 +234,27 @@ function triangle(ctx: Ctx, x: number, y: number): void {
   ctx.closePath();
 }
 
-function paintEvents(ctx: Ctx, frame: Frame): void {
-  const { layout, view, palette } = frame;
-  const xOf = xOfTime(layout, view);
+function placedEvents(ctx: Ctx, { layout, view, palette }: Frame): PlacedEvent[] {
   ctx.font = FONT.axis(palette);
   const measure = (words: string) => ctx.measureText(words).width;
-  const { events } = placeEvents(layout.marked, { xOf, left: layout.left, right: layout.right, rows: layout.eventRows, measure });
-  for (const { mark, x, untilX, row, text, lead } of events) {
+  const space = { xOf: xOfTime(layout, view), left: layout.left, right: layout.right, rows: layout.eventRows, measure };
+  return placeEvents(layout.marked, space).events;
+}
+
+/** Dotted lines from the marks down through the plots. */
+function paintLeads(ctx: Ctx, { layout, palette }: Frame, events: readonly PlacedEvent[]): void {
+  ctx.strokeStyle = palette.ink3;
+  ctx.lineWidth = 1;
+  ctx.setLineDash([1, 2.5]);
+  for (const { x, row, lead } of events) if (lead) line(ctx, x, 12 + row * EVENT_ROW, x, layout.plotsBottom);
+  ctx.setLineDash([]);
+}
+
+function paintEvents(ctx: Ctx, { layout, palette }: Frame, events: readonly PlacedEvent[]): void {
+  for (const { mark, x, untilX, row, text } of events) {
     const y = 12 + row * EVENT_ROW;
     const lost = mark === "outage" || mark === "silence" || mark === "ended";
     const colour = lost ? palette.coral : palette.ink;
-    if (lead) {
-      ctx.strokeStyle = palette.ink3;
-      ctx.lineWidth = 1;
-      ctx.setLineDash([1, 2.5]);
-      line(ctx, x, y, x, layout.plotsBottom);
-      ctx.setLineDash([]);
-    }
     ctx.fillStyle = colour;
     ctx.strokeStyle = colour;
     ctx.lineWidth = 1.25;
@@ -362,14 +378,16 @@ export function paintTimeAxis(ctx: Ctx, frame: Frame, labels: boolean): void {
 
 /** Under the signal lines. */
 export function paintUnder(ctx: Ctx, frame: Frame): void {
+  const events = placedEvents(ctx, frame);
+  for (const lane of frame.layout.plots) paintGround(ctx, frame, lane);
+  paintLeads(ctx, frame, events);
   for (const lane of frame.layout.plots) {
-    paintGround(ctx, frame, lane);
     paintTicks(ctx, frame, lane);
     paintWords(ctx, frame, lane);
     paintTitle(ctx, frame, lane);
     paintCrossings(ctx, frame, lane);
   }
-  paintEvents(ctx, frame);
+  paintEvents(ctx, frame, events);
   paintTapes(ctx, frame);
   paintTimeAxis(ctx, frame, false);
 }

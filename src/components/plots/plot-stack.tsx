@@ -5,7 +5,7 @@ import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
 import { stackPng } from "./export-png.ts";
 import { measureWith, pageFace, useWidth } from "./measure.ts";
-import { onThemeChange, paletteOf, pictureFonts } from "./palette.ts";
+import { onThemeChange, type Palette, paletteOf, pictureFonts } from "./palette.ts";
 import { type PlotCursor, useOnCursor, usePlotCursor, type View } from "./plot-cursor.ts";
 import { plotSignals, usualSignals } from "./plot-signals.ts";
 import { measuredTitle, StackCanvas } from "./stack-canvas.ts";
@@ -49,9 +49,6 @@ function useRepaint(): number {
   return epoch;
 }
 
-/** A run on fewer pixels than this shows only what its limits watch first. */
-const NARROW_SIGNALS = 2;
-
 /** Events, signals, loss tapes and time on one axis. Needs a PlotCursorContext above. */
 export function PlotStack({ scenario, result, second, signals: names, stale = false, ref }: PlotStackProps) {
   const cursor = usePlotCursor();
@@ -61,15 +58,12 @@ export function PlotStack({ scenario, result, second, signals: names, stale = fa
   const overlay = useRef<StackOverlayHandle>(null);
   const canvas = useRef<StackCanvas | null>(null);
   const painted = useRef<View | null>(null);
+  const palette = useRef<(Palette & { of: string }) | null>(null);
   const width = useWidth(host);
   const epoch = useRepaint();
   const { t } = result.series;
 
-  const shown = useMemo(() => {
-    const usual = names ?? usualSignals(scenario, result);
-    const picked = !names && width > 0 && width < 480 ? usual.slice(0, NARROW_SIGNALS) : usual;
-    return plotSignals(scenario, result, picked, second);
-  }, [scenario, result, names, second, width]);
+  const shown = useMemo(() => plotSignals(scenario, result, names ?? usualSignals(scenario, result), second), [scenario, result, names, second]);
   // biome-ignore lint/correctness/useExhaustiveDependencies: `epoch` stands for the faces, which have widths of their own
   const { layout, titles } = useMemo(() => {
     const face = pageFace();
@@ -84,11 +78,13 @@ export function PlotStack({ scenario, result, second, signals: names, stale = fa
     return () => made.destroy();
   }, []);
 
-  // biome-ignore lint/correctness/useExhaustiveDependencies: `epoch` and `stale` change the colours that are read from the page
+  // biome-ignore lint/correctness/useExhaustiveDependencies: the layout is made from the result
   useLayoutEffect(() => {
     if (!host.current || layout.width <= 0) return;
     cursor.setExtent(result.durationS, Math.max(result.rounds.periodS, result.durationS / 1e5));
-    canvas.current?.update({ layout, t, palette: paletteOf(host.current) }, cursor.view);
+    const colours = `${stale} ${epoch}`;
+    if (palette.current?.of !== colours) palette.current = { of: colours, ...paletteOf(host.current) };
+    canvas.current?.update({ layout, t, palette: palette.current }, cursor.view);
     painted.current = cursor.view;
   }, [layout, t, stale, epoch, cursor]);
 

@@ -47,6 +47,8 @@ export function markedEvents(events: readonly RunEvent[], endS: number, steps = 
     const known = MARKS[event.kind];
     if (!known) continue;
     const words = event.kind === "outage" ? event.text : event.kind === "reference" && !steps ? "reference" : known.words;
+    // Two references that step together are one mark.
+    if (event.kind !== "outage" && marked.some(({ mark, atS }) => mark === known.mark && atS === event.atS)) continue;
     const item = { ...known, words, atS: event.atS, untilS: event.atS };
     marked.push(item);
     if (event.kind === "outage") open.push(item);

@@ -44,6 +44,15 @@ export function StackOverlay({ layout, t, titles, timeDecimals, ref }: StackOver
     },
   }));
 
+  /** From the first title to the axis; interrupted where it would run through a title. */
+  const linePath = (x: number): string => {
+    let path = `M${x} ${(layout.plots[0]?.titleY ?? 15) - 15}`;
+    layout.plots.forEach(({ titleY }, index) => {
+      if (x >= layout.left - 2 && x <= layout.left + (titles[index] ?? 0) + 3) path += `V${titleY - 12}M${x} ${titleY + 5}`;
+    });
+    return `${path}V${layout.axisTop + NEAT}`;
+  };
+
   const place = (cursor: PlotCursor) => {
     const root = svg.current;
     if (!root) return;
@@ -55,7 +64,7 @@ export function StackOverlay({ layout, t, titles, timeDecimals, ref }: StackOver
     const slipWidth = formatTime(cursor.timeS, timeDecimals).length * 6.6 + 14;
     const slipX = Math.min(layout.width - slipWidth / 2, Math.max(slipWidth / 2, x));
     if (visible) {
-      find("line")?.setAttribute("d", `M${x} ${layout.plots[0] ? layout.plots[0].titleY - 15 : 0}V${layout.axisTop + NEAT}`);
+      find("line")?.setAttribute("d", linePath(x));
       layout.plots.forEach((lane, index) => {
         placeValue(lane, index, x, cursor.timeS, find, titles[index] ?? 0);
       });
