@@ -5,7 +5,6 @@
  *   schema
  */
 import { readFileSync, writeFileSync } from "node:fs";
-import { resolve } from "node:path";
 import { parseArgs } from "node:util";
 import { z } from "zod";
 import { roundTiming } from "#shared/network/round.ts";
@@ -23,16 +22,13 @@ holdfast round FILE
 holdfast schema
 FILE may be - for standard input. JSON goes to standard output.`;
 
-/** Paths are meant as the caller sees them; npm changes to the project's folder and says where it was called. */
-const pathOf = (file: string): string => resolve(process.env.INIT_CWD ?? process.cwd(), file);
-
 /** Something the caller can put right; printed as it is. */
 class Refused extends Error {}
 
 function readScenario(file: string): unknown {
   let text: string;
   try {
-    text = readFileSync(file === "-" ? 0 : pathOf(file), "utf8");
+    text = readFileSync(file === "-" ? 0 : file, "utf8");
   } catch (cause) {
     throw new Refused(`${file} cannot be read: ${cause instanceof Error ? cause.message : String(cause)}`);
   }
@@ -61,7 +57,7 @@ function seedOf(text: string | undefined): number | null {
 
 function save(file: string, text: string): void {
   try {
-    writeFileSync(pathOf(file), text);
+    writeFileSync(file, text);
   } catch (cause) {
     throw new Refused(`${file} cannot be written: ${cause instanceof Error ? cause.message : String(cause)}`);
   }

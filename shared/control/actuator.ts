@@ -2,6 +2,8 @@
  * The actuator node's half of the loop logic (model 4, steps 5 and 6): what comes out at an acting instant, and the
  * reaction to silence. Hold is a plan of one command that ends in hold, zero one that ends in zero.
  */
+import { copy } from "#shared/math/matrix.ts";
+
 export interface SilenceSetup {
   afterLost: number;
   /** Delivered commands in a row after which commands act again; 0: never. */
@@ -41,17 +43,18 @@ export class ActuatorNode {
   }
 
   /**
-   * An acting instant: plan (planLength x m) replaces the buffer when delivered. `counts` is false while the network has
+   * An acting instant: the plan (planLength x m, at an offset into plans) replaces the buffer when delivered. `counts` is false while the network has
    * not joined. Returns what changed: the reaction to silence began, ended, or nothing.
    */
-  act(plan: Float64Array, delivered: boolean, counts: boolean): "begins" | "ends" | null {
+  act(plans: Float64Array, offset: number, delivered: boolean, counts: boolean): "begins" | "ends" | null {
     const m = this.#m;
     const buffer = this.#buffer;
-    if (delivered) buffer.set(plan);
-    else if (buffer.length > m) {
-      buffer.copyWithin(0, m);
-      if (!this.#holdAtEnd) buffer.fill(0, buffer.length - m);
-    } else if (!this.#holdAtEnd) buffer.fill(0);
+    const kept = buffer.length - m;
+    if (delivered) copy(buffer, plans, buffer.length, offset);
+    else {
+      for (let i = 0; i < kept; i++) buffer[i] = buffer[i + m];
+      if (!this.#holdAtEnd) for (let i = kept; i < buffer.length; i++) buffer[i] = 0;
+    }
     return this.#silence ? this.#listen(this.#silence, delivered, counts) : null;
   }
 

@@ -3,7 +3,7 @@
  * that are shifted, never indexed by the round, so that an analysis can read the same stage as a linear map.
  * Vectors are deviations from the operating point.
  */
-import { addProduct, multiply } from "#shared/math/matrix.ts";
+import { addProduct, copy, multiply, setProduct, shiftIn } from "#shared/math/matrix.ts";
 import type { KalmanDesign, LoopDesign } from "./design.ts";
 import type { Encoder } from "./encoding.ts";
 import { filterGain } from "./riccati.ts";
@@ -121,7 +121,6 @@ export class StateFeedback implements Controller {
     if (acknowledgement === "at-once" || (acknowledgement === "reported" && delivered)) {
       for (let j = 0; j < m; j++) this.#believed[this.#presentRow * m + j] = inForce[j];
     }
-    this.#carry(this.estimate, this.#believed, this.#prior, k === 0);
     this.#update(k, y, delivered);
     this.#predict();
     this.#command(k);
@@ -133,25 +132,23 @@ export class StateFeedback implements Controller {
     const { model, instants } = this.#setup.design;
     const n = this.#n;
     const m = this.#m;
-    out.fill(0);
-    if (first) {
-      addProduct(out, model.start.phi, x, 0, n, n);
-      return;
-    }
-    addProduct(out, model.period.phi, x, 0, n, n);
-    addProduct(out, model.between.gamma1, believed, (instants.wholePeriods + 1) * m, n, m);
+    setProduct(out, first ? model.start.phi : model.period.phi, x, n, n);
+    if (first) return;
+    if (instants.restS > 0) addProduct(out, model.between.gamma1, believed, (instants.wholePeriods + 1) * m, n, m);
     addProduct(out, model.between.gamma0, believed, instants.wholePeriods * m, n, m);
   }
 
   #update(k: number, y: Float64Array, delivered: boolean): void {
-    const { c, d, p, direct, kalman } = this.#setup.design;
+    const { c, d, p, direct, selected, kalman } = this.#setup.design;
     const n = this.#n;
     const x = this.estimate;
-    x.set(this.#prior);
-    if (direct) {
-      if (delivered) for (let i = 0; i < p; i++) x[direct[i]] = y[i];
+    if (direct && delivered && selected) {
+      for (let i = 0; i < p; i++) x[selected[i]] = y[i];
       return;
     }
+    this.#carry(x, this.#believed, this.#prior, k === 0);
+    copy(x, this.#prior, n);
+    if (direct) return;
     const gain = this.#filter ? this.#filter.step(k, delivered) : kalman?.gain;
     if (!delivered || !gain) return;
     const innovation = this.#innovation;
@@ -168,17 +165,16 @@ export class StateFeedback implements Controller {
     const { model, instants } = this.#setup.design;
     const m = this.#m;
     const x = this.#ahead;
-    x.set(this.estimate);
+    copy(x, this.estimate, this.#n);
     if (instants.restS > 0) this.#step(x, model.rest.phi, model.rest.gamma, this.#believed, instants.wholePeriods * m);
     for (let row = instants.wholePeriods - 1; row >= 0; row--) this.#step(x, model.period.phi, model.period.gamma, this.#believed, row * m);
   }
 
   #step(x: Float64Array, phi: Float64Array, gamma: Float64Array, u: Float64Array, uOffset: number): void {
     const spare = this.#spare;
-    spare.fill(0);
-    addProduct(spare, phi, x, 0, this.#n, this.#n);
+    setProduct(spare, phi, x, this.#n, this.#n);
     addProduct(spare, gamma, u, uOffset, this.#n, this.#m);
-    x.set(spare);
+    copy(x, spare, this.#n);
   }
 
   /** Step 4 for entry 0 and, on the predicted state, for every further entry of the plan. */
@@ -254,12 +250,6 @@ export class StateFeedback implements Controller {
       if (!further) q[i] += step;
     }
   }
-}
-
-/** Rows of m move one back; row 0 becomes from[offset..]. */
-function shiftIn(rows: Float64Array, from: Float64Array, offset: number, m: number): void {
-  rows.copyWithin(m, 0, rows.length - m);
-  for (let j = 0; j < m; j++) rows[j] = from[offset + j];
 }
 
 /** Kalman filter whose covariance shrinks only when a measurement arrives (Sinopoli et al., IEEE TAC 49(9), 2004). */

@@ -49,11 +49,13 @@ export interface LoopDesign {
   c: Float64Array;
   d: Float64Array;
   p: number;
+  /** Where every measured signal is one state and nothing else: the state's index for each signal; null otherwise. */
+  selected: Int32Array | null;
   /** Present for lqr and gain; k: m x n, ki: m x ni, integrated: indices of states. */
   feedback: { k: Float64Array; ki: Float64Array; ni: number; ci: Float64Array } | null;
   kalman: KalmanDesign | null;
-  /** Index of the state that each measured signal is, when all states are measured directly. */
-  direct: Int32Array | null;
+  /** No filter: all states are measured, and a delivered measurement is the estimate. */
+  direct: boolean;
 }
 
 /** Signals that a loop can refer to, by name: states first, then outputs. */
@@ -71,16 +73,24 @@ export function measuredRows(loop: Loop): { c: Float64Array; d: Float64Array; mi
   return { c: Float64Array.from(c), d: Float64Array.from(d), missing };
 }
 
+function selectedStates(c: Float64Array, d: Float64Array, n: number, m: number, p: number): Int32Array | null {
+  const selected = new Int32Array(p);
+  for (let i = 0; i < p; i++) {
+    const row = c.subarray(i * n, (i + 1) * n);
+    selected[i] = row.indexOf(1);
+    if (row.some((value, j) => value !== (j === selected[i] ? 1 : 0)) || d.subarray(i * m, (i + 1) * m).some((value) => value !== 0)) return null;
+  }
+  return selected;
+}
+
 function controllerModel(a: Float64Array, b: Float64Array, n: number, m: number, instants: LoopInstants): ControllerModel {
-  const { gamma0, gamma1 } = delayedHold(a, b, n, m, instants.periodS, instants.restS);
-  return {
-    n,
-    m,
-    period: zeroOrderHold(a, b, n, m, instants.periodS),
-    between: { gamma0, gamma1 },
-    rest: zeroOrderHold(a, b, n, m, instants.restS),
-    start: zeroOrderHold(a, b, n, m, instants.sampleNs / 1e9),
-  };
+  const hold = (h: number): Hold => (h > 0 ? zeroOrderHold(a, b, n, m, h) : { phi: identity(n), gamma: new Float64Array(n * m) });
+  const period = hold(instants.periodS);
+  const rest = hold(instants.restS);
+  // Without a rest the acting instant falls on the sampling instant, and nothing acts before it.
+  const between =
+    instants.restS > 0 ? delayedHold(a, b, n, m, instants.periodS, instants.restS) : { gamma0: period.gamma, gamma1: new Float64Array(n * m) };
+  return { n, m, period, between, rest, start: hold(instants.sampleNs / 1e9) };
 }
 
 /** Largest modulus among the eigenvalues is clearly above 1: the powers of A grow without bound. */
@@ -158,10 +168,9 @@ export function designLoop(scenario: Scenario, ns: { period: number; sample: num
 
   const { estimator } = loop.controller;
   let kalman: KalmanDesign | null = null;
-  let direct: Int32Array | null = null;
-  if (law.type !== "pid" && estimator.type === "direct") {
-    direct = Int32Array.from(loop.sensor.signals, ({ signal }) => plant.states.findIndex((state) => state.name === signal));
-  } else if (law.type !== "pid" && estimator.type === "kalman") {
+  const selected = selectedStates(c, d, n, m, p);
+  const direct = law.type !== "pid" && estimator.type === "direct";
+  if (law.type !== "pid" && estimator.type === "kalman") {
     const intensity = diagonal(estimator.processNoise.map((std) => std * std));
     const sensor = diagonal(estimator.measurementNoise.map((std) => std * std));
     const processPeriod = processCovariance(a, intensity, n, periodS);
@@ -181,5 +190,5 @@ export function designLoop(scenario: Scenario, ns: { period: number; sample: num
     }
     kalman = { gain, processPeriod, processStart, sensor };
   }
-  return { design: issues.length === 0 ? { instants, model, c, d, p, feedback, kalman, direct } : null, issues };
+  return { design: issues.length === 0 ? { instants, model, c, d, p, selected, feedback, kalman, direct } : null, issues };
 }

@@ -3,6 +3,7 @@
  * encoding, references and reaction to silence off, by the analysis. Order within a round, from one sampling instant to the
  * next: measure(k), compute(k), act(k - actAge).
  */
+import { shiftIn } from "#shared/math/matrix.ts";
 import { createPlant } from "#shared/plants/registry.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { ActuatorNode } from "./actuator.ts";
@@ -24,7 +25,6 @@ export class LoopLogic {
   readonly underWay: Float64Array;
   readonly #encoder: Encoder | null;
   readonly #row: number;
-  readonly #acting: Float64Array;
 
   /** linear: leave out saturation, rate limit, anti-windup, encoding, references and reaction to silence. */
   constructor(scenario: Scenario, design: LoopDesign, estimate: ArrayLike<number>, options: { linear: boolean }) {
@@ -76,7 +76,6 @@ export class LoopLogic {
     this.actAge = restS > 0 ? wholePeriods : wholePeriods - 1;
     this.#row = planLength * m;
     this.underWay = new Float64Array((this.actAge + 1) * this.#row);
-    this.#acting = new Float64Array(this.#row);
   }
 
   /** All memory of the loop besides the plant, for an analysis. */
@@ -86,8 +85,15 @@ export class LoopLogic {
 
   /** Step 1. x (n) true state and u (m) the plant's input at the sampling instant, v (p at vOffset) the sensor noise. */
   measure(x: Float64Array, u: Float64Array, v: Float64Array, vOffset: number): void {
-    const { c, d, p, model } = this.design;
+    const { c, d, p, model, selected } = this.design;
     const { n, m } = model;
+    if (selected) {
+      for (let i = 0; i < p; i++) {
+        const y = x[selected[i]] + v[vOffset + i];
+        this.measured[i] = this.#encoder ? this.#encoder.apply(i, y) : y;
+      }
+      return;
+    }
     for (let i = 0; i < p; i++) {
       let y = v[vOffset + i];
       for (let j = 0; j < n; j++) y += c[i * n + j] * x[j];
@@ -99,15 +105,12 @@ export class LoopLogic {
   /** Steps 2 to 4 of round k; the command is under way afterwards. */
   compute(k: number, measurementDelivered: boolean): void {
     this.controller.compute(k, this.measured, measurementDelivered, this.actuator.inForce);
-    this.underWay.copyWithin(this.#row, 0, this.underWay.length - this.#row);
-    this.underWay.set(this.controller.plan);
+    shiftIn(this.underWay, this.controller.plan, 0, this.#row);
   }
 
   /** Steps 5 and 6 for the command computed actAge rounds before the newest one. */
   act(commandDelivered: boolean, counts: boolean): "begins" | "ends" | null {
-    const offset = this.actAge * this.#row;
-    for (let i = 0; i < this.#row; i++) this.#acting[i] = this.underWay[offset + i];
-    return this.actuator.act(this.#acting, commandDelivered, counts);
+    return this.actuator.act(this.underWay, this.actAge * this.#row, commandDelivered, counts);
   }
 }
 

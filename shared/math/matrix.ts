@@ -96,11 +96,33 @@ export function solve(a: Float64Array, b: Float64Array, n: number, p: number): F
   return x;
 }
 
-/** y += A x, a: n x m, at offsets into y and x. For hot loops: allocates nothing. */
+// For hot loops: these allocate nothing, and copy by hand because set, fill and copyWithin are slow on a few numbers.
+
+/** y += A x, a: n x m, x from xOffset on. */
 export function addProduct(y: Float64Array, a: Float64Array, x: Float64Array, xOffset: number, n: number, m: number): void {
-  for (let i = 0; i < n; i++) {
+  for (let i = 0, at = 0; i < n; i++) {
     let sum = y[i];
-    for (let j = 0; j < m; j++) sum += a[i * m + j] * x[xOffset + j];
+    for (let j = 0; j < m; j++) sum += a[at++] * x[xOffset + j];
     y[i] = sum;
   }
+}
+
+/** y = A x, a: n x m. */
+export function setProduct(y: Float64Array, a: Float64Array, x: Float64Array, n: number, m: number): void {
+  for (let i = 0, at = 0; i < n; i++) {
+    let sum = 0;
+    for (let j = 0; j < m; j++) sum += a[at++] * x[j];
+    y[i] = sum;
+  }
+}
+
+/** The first n numbers of from (from its offset on) to the start of to. */
+export function copy(to: Float64Array, from: Float64Array, n: number, offset = 0): void {
+  for (let i = 0; i < n; i++) to[i] = from[offset + i];
+}
+
+/** Rows of `width` numbers move one back; the first row becomes from[offset ..]. */
+export function shiftIn(rows: Float64Array, from: Float64Array, offset: number, width: number): void {
+  for (let i = rows.length - 1; i >= width; i--) rows[i] = rows[i - width];
+  for (let j = 0; j < width; j++) rows[j] = from[offset + j];
 }

@@ -43,6 +43,8 @@ export class Recorder {
   count = 0;
   readonly #n: number;
   readonly #m: number;
+  /** The integrator's components: the states, then the lagged inputs, if any. */
+  readonly #columns: readonly Float64Array[];
 
   constructor(n: number, m: number, periodNs: number, endNs: number) {
     const points = Math.floor((endNs * POINTS_PER_ROUND) / periodNs) + 1;
@@ -51,6 +53,7 @@ export class Recorder {
     for (let i = 0; i < points; i++) this.t[i] = Math.round(i * step) / 1e9;
     this.x = Array.from({ length: n }, () => new Float64Array(points));
     this.u = Array.from({ length: m }, () => new Float64Array(points));
+    this.#columns = [...this.x, ...this.u];
     this.#n = n;
     this.#m = m;
   }
@@ -66,11 +69,13 @@ export class Recorder {
     let end = first;
     while (end < t.length && t[end] < until) end++;
     if (end === first) return true;
-    for (let j = 0; j < this.#n; j++) integrator.sample(j, t, first, end, x[j]);
-    for (let j = 0; j < this.#m; j++) {
-      const felt = this.u[j];
-      if (lagged) integrator.sample(this.#n + j, t, first, end, felt);
-      else for (let i = first; i < end; i++) felt[i] = u[j] + slope[j] * (t[i] - segmentS);
+    integrator.record(t, first, end, this.#columns);
+    if (!lagged) {
+      for (let j = 0; j < this.#m; j++) {
+        const felt = this.u[j];
+        if (slope[j] === 0) for (let i = first; i < end; i++) felt[i] = u[j];
+        else for (let i = first; i < end; i++) felt[i] = u[j] + slope[j] * (t[i] - segmentS);
+      }
     }
     if (guard >= 0) {
       const guarded = x[guard];

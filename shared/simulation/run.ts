@@ -223,8 +223,9 @@ export class Run {
     const raw = this.#raw;
     const from = this.#nowNs;
     this.#segmentNs = from;
+    const pushed = this.#pushing;
     this.#pushing = this.#disturbance.begin(from);
-    if (!this.#pushing) this.#d.fill(0);
+    if (pushed && !this.#pushing) this.#d.fill(0);
     this.#felt();
     const outcome = this.#integrator.advance(from / 1e9, nextNs / 1e9, this.#onStep);
     if (outcome !== "done") {
