@@ -69,7 +69,13 @@ export function PageHead(props: PageHeadProps) {
         <div className="acts">
           <ButtonPair label="Undo and redo">
             <IconButton icon="undo" label="Undo (Ctrl+Z)" impossible={props.canUndo ? null : "Nothing to undo."} onClick={props.onUndo} />
-            <IconButton icon="redo" label="Redo (Ctrl+Shift+Z)" impossible={props.canRedo ? null : "Nothing to redo."} onClick={props.onRedo} />
+            <IconButton
+              className="wide-only"
+              icon="redo"
+              label="Redo (Ctrl+Shift+Z)"
+              impossible={props.canRedo ? null : "Nothing to redo."}
+              onClick={props.onRedo}
+            />
           </ButtonPair>
           {props.onDuplicate && (
             <Button className="wide-only" busy={props.duplicating} onClick={props.onDuplicate}>
@@ -77,13 +83,13 @@ export function PageHead(props: PageHeadProps) {
             </Button>
           )}
           <Menu trigger={<IconButton icon="more" label="More" />}>
+            <MenuItem onSelect={props.onRedo} impossible={props.canRedo ? null : "Nothing to redo."}>
+              Redo
+            </MenuItem>
+            <MenuRule />
             <MenuItem onSelect={props.onExport}>Export as JSON</MenuItem>
             <MenuItem onSelect={props.onImport}>Import JSON into this scenario</MenuItem>
-            {props.onDuplicate && (
-              <MenuItem asChild={false} onSelect={props.onDuplicate}>
-                Duplicate
-              </MenuItem>
-            )}
+            {props.onDuplicate && <MenuItem onSelect={props.onDuplicate}>Duplicate</MenuItem>}
             {props.onRename && <MenuItem onSelect={props.onRename}>Rename</MenuItem>}
             <MenuRule />
             <MenuItem asChild>
@@ -93,7 +99,13 @@ export function PageHead(props: PageHeadProps) {
           </Menu>
           {saveImpossible !== undefined && (
             <Button kind="go" impossible={saveImpossible} onClick={props.onSave} title="Ctrl+S">
-              {saved ? "Saved" : `Save revision ${revision + 1}`}
+              {saved ? (
+                "Saved"
+              ) : (
+                <>
+                  Save <span className="wide-only">revision</span> {revision + 1}
+                </>
+              )}
             </Button>
           )}
         </div>

@@ -6,8 +6,14 @@ export function useEngine(): EngineClient | null {
   const [engine, setEngine] = useState<EngineClient | null>(null);
   useEffect(() => {
     const made = createEngine();
-    setEngine(made);
+    let gone = false;
+    // Asked for nothing first: the time of the first run is then that of the run, not that of loading the worker.
+    const ready = () => {
+      if (!gone) setEngine(made);
+    };
+    made.run(null, null).then(ready, ready);
     return () => {
+      gone = true;
       made.dispose();
       setEngine(null);
     };

@@ -36,6 +36,7 @@ export function LiveBench({ bench, issues, lastGood, seed, onSeed, onFirstIssue,
             <SeedStep icon="left" label="The seed before" run={run} step={-1} onSeed={onSeed} />
             <SeedStep icon="right" label="Another seed" run={run} step={1} onSeed={onSeed} />
           </ButtonPair>
+          <span className="small second">another seed</span>
           {seed !== null && run && run.scenario.run.seed !== run.result.seed && (
             <Button small kind="bare" onClick={() => onSeed(null)}>
               Back to seed {run.scenario.run.seed}
@@ -111,9 +112,9 @@ function Head({
 }: Pick<LiveBenchProps, "bench" | "issues" | "lastGood" | "onFirstIssue"> & { stale: boolean }) {
   const { run, cancelled, broken } = bench;
   const basis = run && (
-    <>
+    <span>
       seed {run.result.seed} · {withUnit(significant(run.result.durationS, 4), "s")} long
-    </>
+    </span>
   );
   if (stale) {
     const fields = `${countOf(issues.length)} in the set-up ${issues.length === 1 ? "has" : "have"} to be put right first.`;
@@ -135,8 +136,7 @@ function Head({
         {run && (
           <div className="meta">
             {basis}
-            <br />
-            {clockText(run.at)}
+            <span>{clockText(run.at)}</span>
           </div>
         )}
       </div>
@@ -162,7 +162,6 @@ function Head({
       meta={
         <>
           {basis}
-          <br />
           <span title="From asking the engine to its answer">run in {withUnit(significant(run.elapsedMs, 2), "ms")}</span>
         </>
       }

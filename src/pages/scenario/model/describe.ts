@@ -1,17 +1,40 @@
 /** Parts of a scenario in a few words: for folded sections, list entries and lists of changes. Takes drafts as they are. */
 
-import { counted } from "#src/lib/format.ts";
-import { choicesAt, LAW, LIMIT, ON_LOSS, OUTAGE_MESSAGES, PHY, PLACEMENT, PROCESS, SILENCE, wordOf } from "./choices.ts";
+import { counted, significant, withUnit } from "#src/lib/format.ts";
+import {
+  ACKNOWLEDGEMENT,
+  choicesAt,
+  ESTIMATOR,
+  KALMAN_UPDATE,
+  LIMIT,
+  ON_LOSS,
+  OUTAGE_MESSAGES,
+  PHY,
+  PLACEMENT,
+  PROCESS,
+  SILENCE,
+  wordOf,
+} from "./choices.ts";
 import { fieldSpec } from "./field-spec.ts";
 import { getAt, type Path, patternOf } from "./json-path.ts";
 import { channelNamed, isHanging, plantOf, signalNamed } from "./machine.ts";
-import { MILLISECONDS, PERCENT, valueText } from "./screen-unit.ts";
+import { MILLISECONDS, PERCENT, toScreen, valueText } from "./screen-unit.ts";
 
 type Entry = Record<string, unknown>;
 const LOOP = ["loops", 0] as const;
 
 const entry = (value: unknown): Entry => (value !== null && typeof value === "object" ? (value as Entry) : {});
 const list = (value: unknown): unknown[] => (Array.isArray(value) ? value : []);
+
+const BRIEF_DIGITS = 4;
+
+/** As `shown`, rounded for reading at a glance. */
+function brief(json: unknown, path: Path): string {
+  const value = getAt(json, path);
+  if (typeof value !== "number") return String(value ?? "none");
+  const { unit } = fieldSpec(json, path);
+  return withUnit(significant(toScreen(value, unit), BRIEF_DIGITS), unit.text);
+}
 
 /** The value at a path with its unit on the screen. */
 export function shown(json: unknown, path: Path): string {
@@ -37,9 +60,20 @@ export function describeLoop(json: unknown): string {
   return getAt(json, [...LOOP, "controller", "placement"]) === "actuator" ? kind : `${kind}, ${describeOnLoss(json)}`;
 }
 
-export function describeController(json: unknown): string {
-  const controller = entry(getAt(json, [...LOOP, "controller"]));
-  return `${lower(wordOf(LAW, entry(controller.law).type)).replace("pID", "PID")}, ${wordOf(PLACEMENT, controller.placement)}`;
+export function describePlacement(json: unknown): string {
+  const { placement, acknowledgement } = entry(getAt(json, [...LOOP, "controller"]));
+  const where = wordOf(PLACEMENT, placement);
+  return placement === "actuator" ? where : `${where}, ${wordOf(ACKNOWLEDGEMENT, acknowledgement)}`;
+}
+
+export function describeIntegral(json: unknown): string {
+  const integral = list(getAt(json, [...LOOP, "controller", "law", "integral"])).map(entry);
+  return integral.length === 0 ? "none" : integral.map(({ signal }) => lower(signalNamed(json, signal)?.label ?? String(signal))).join(", ");
+}
+
+export function describeEstimator(json: unknown): string {
+  const { type, update } = entry(getAt(json, [...LOOP, "controller", "estimator"]));
+  return type === "kalman" ? `Kalman, ${wordOf(KALMAN_UPDATE, update)}` : wordOf(ESTIMATOR, type);
 }
 
 export function describeSensor(json: unknown): string {
@@ -49,9 +83,19 @@ export function describeSensor(json: unknown): string {
 }
 
 export function describeActuator(json: unknown): string {
+  const inputs = list(getAt(json, [...LOOP, "actuator", "inputs"]));
+  const path = [...LOOP, "actuator", "inputs", 0];
+  if (inputs.length !== 1) return counted(inputs.length, "input");
+  const { lo, hi } = entry(inputs[0]);
+  return typeof lo === "number" && lo === -Number(hi)
+    ? `±${shown(json, [...path, "hi"])}`
+    : `${shown(json, [...path, "lo"])} to ${shown(json, [...path, "hi"])}`;
+}
+
+export function describeSilence(json: unknown): string {
   const silence = getAt(json, [...LOOP, "actuator", "silence"]);
-  const onLoss = describeOnLoss(json);
-  return silence === null ? onLoss : `${onLoss}, ${wordOf(SILENCE, entry(silence).reaction)} after ${entry(silence).afterLost}`;
+  if (silence === null) return "ignored";
+  return `${wordOf(SILENCE, entry(silence).reaction)} after ${entry(silence).afterLost} lost`;
 }
 
 export function describeTiming(latencyS: number | null): string {
@@ -98,7 +142,7 @@ export function describePush(json: unknown, index: number): string {
   const path = ["pushes", index];
   const push = entry(getAt(json, path));
   const where = channelNamed(json, push.channel)?.label ?? String(push.channel);
-  const at = (key: string) => shown(json, [...path, key]);
+  const at = (key: string) => brief(json, [...path, key]);
   const until = typeof push.untilS === "number" ? ` to ${at("untilS")}` : " on";
   switch (push.type) {
     case "impulse":
@@ -119,20 +163,20 @@ export function describePush(json: unknown, index: number): string {
 export function describeChange(json: unknown, index: number): string {
   const path = ["changes", index];
   const parameter = String(getAt(json, [...path, "parameter"]));
-  return `${fieldSpec(json, ["loops", 0, "plant", parameter]).label} becomes ${shown(json, [...path, "value"])} at ${shown(json, [...path, "atS"])}`;
+  return `${fieldSpec(json, ["loops", 0, "plant", parameter]).label} becomes ${brief(json, [...path, "value"])} at ${brief(json, [...path, "atS"])}`;
 }
 
 export function describeOutage(json: unknown, index: number): string {
   const path = ["losses", "outages", index];
   const messages = list(getAt(json, [...path, "messages"]));
   const which = messages.length === 2 ? "both messages" : wordOf(OUTAGE_MESSAGES, messages[0]).replace("meas.", "measurement");
-  return `Outage of ${which}, ${shown(json, [...path, "fromS"])} to ${shown(json, [...path, "untilS"])}`;
+  return `Outage of ${which}, ${brief(json, [...path, "fromS"])} to ${brief(json, [...path, "untilS"])}`;
 }
 
 export function describeLimit(json: unknown, index: number): string {
   const path = ["limits", index];
   const limit = entry(getAt(json, path));
-  const at = (key: string) => shown(json, [...path, key]);
+  const at = (key: string) => brief(json, [...path, key]);
   if (limit.type === "saturation") return `Saturated less than ${at("below")} of the time`;
   const what = `${limit.of === "error" ? "Error of " : ""}${signalNamed(json, limit.signal)?.label ?? String(limit.signal)}`;
   const signal = limit.of === "error" ? `Error of ${lower(what.slice(9))}` : what;

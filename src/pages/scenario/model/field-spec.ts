@@ -307,6 +307,12 @@ const compact = (value: number, unit: ScreenUnit): string => {
   return Math.abs(screen) >= 1e5 ? screen.toExponential().replace("e+", "e").replaceAll("-", "\u2212") : numberText(screen);
 };
 
+const ANY = 1e9;
+
+/** Behind the field: a range that only keeps out nonsense is not spelt out. */
+export const fieldRangeText = (spec: FieldSpec): string =>
+  spec.meta && spec.meta.min === -spec.meta.max && spec.meta.max >= ANY ? "any number" : rangeText(spec);
+
 /** "0.01 to 1e5", in the unit of the screen. */
 export function rangeText({ meta, unit }: FieldSpec): string {
   if (!meta) return "";

@@ -8,23 +8,29 @@ import { useForm } from "./form.tsx";
 const ACTUATOR = ["loops", 0, "actuator"] as const;
 const at = (...keys: (string | number)[]) => [...ACTUATOR, ...keys];
 
+/** What acts when a command does not arrive. */
+export function OnLossFields() {
+  const { json } = useForm().draft;
+  const plan = getAt(json, at("onLoss", "policy")) === "plan";
+  if (getAt(json, ["loops", 0, "controller", "placement"]) === "actuator" && !plan) return null;
+  return (
+    <>
+      <ChoiceAt path={at("onLoss")} options={ON_LOSS} form />
+      {plan && (
+        <>
+          <NumberAt path={at("onLoss", "length")} />
+          <ChoiceAt path={at("onLoss", "end")} options={PLAN_END} />
+        </>
+      )}
+    </>
+  );
+}
+
 export function ActuatorPart() {
   const { json } = useForm().draft;
   const inputs = (getAt(json, at("inputs")) as { lo: number; hi: number }[] | undefined) ?? [];
-  const plan = getAt(json, at("onLoss", "policy")) === "plan";
   return (
     <>
-      {(getAt(json, ["loops", 0, "controller", "placement"]) !== "actuator" || plan) && (
-        <>
-          <ChoiceAt path={at("onLoss")} options={ON_LOSS} form />
-          {plan && (
-            <>
-              <NumberAt path={at("onLoss", "length")} />
-              <ChoiceAt path={at("onLoss", "end")} options={PLAN_END} />
-            </>
-          )}
-        </>
-      )}
       {inputs.map((input, i) => (
         // biome-ignore lint/suspicious/noArrayIndexKey: one per input of the machine, in its order
         <div key={i}>
@@ -39,19 +45,17 @@ export function ActuatorPart() {
       <NumberAt path={at("lagS")} />
       <NumberAt path={at("deadTimeS")} />
       <NumberAt path={at("busTransferS")} />
-      <Silence />
     </>
   );
 }
 
-function Silence() {
+export function SilenceFields() {
   const { json } = useForm().draft;
   const reaction = getAt(json, at("silence", "reaction"));
   const brakes = plantOf(json)?.brake !== undefined;
   const first = () => ({ afterLost: 10, reaction: "ramp", rampS: 0.2, brakeN: 0, resumeAfter: null });
   return (
     <>
-      <p className="sub3">Reaction to silence</p>
       <SwitchAt path={at("silence")} label="Commands missing" off="ignored" on="reacts" first={first} />
       {getAt(json, at("silence")) !== null && (
         <>

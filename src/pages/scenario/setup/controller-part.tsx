@@ -1,7 +1,5 @@
-import type { ReactNode } from "react";
 import { ACKNOWLEDGEMENT, ESTIMATOR, KALMAN_UPDATE, LAW, PLACEMENT } from "../model/choices.ts";
 import { shown } from "../model/describe.ts";
-import { fieldSpec } from "../model/field-spec.ts";
 import { getAt, type Path } from "../model/json-path.ts";
 import { plantOf, signalNamed } from "../model/machine.ts";
 import { EntryList } from "./entry-list.tsx";
@@ -14,7 +12,8 @@ const ESTIMATOR_PATH = [...CONTROLLER, "estimator"];
 
 const indices = (value: unknown): number[] => (Array.isArray(value) ? value.map((_, i) => i) : []);
 
-export function ControllerPart() {
+/** Kind of controller with its weights, gains or PID figures. */
+export function LawFields() {
   const { json } = useForm().draft;
   const law = getAt(json, [...LAW_PATH, "type"]);
   return (
@@ -22,13 +21,21 @@ export function ControllerPart() {
       <PickAt path={LAW_PATH} options={LAW} form />
       {law === "lqr" && <Weights />}
       {law === "gain" && <Gains />}
-      {law === "pid" ? <Pid /> : <Estimator />}
-      <p className="sub3">Place and time</p>
+      {law === "pid" && <Pid />}
+    </>
+  );
+}
+
+/** Where the controller runs, for how long, and what it learns of its commands. */
+export function PlacementFields() {
+  const { json } = useForm().draft;
+  const apart = getAt(json, [...CONTROLLER, "placement"]) !== "actuator";
+  const acknowledgement = getAt(json, [...CONTROLLER, "acknowledgement"]);
+  return (
+    <>
       <PickAt path={[...CONTROLLER, "placement"]} options={PLACEMENT} />
       <NumberAt path={[...CONTROLLER, "computeS"]} />
-      {(getAt(json, [...CONTROLLER, "placement"]) !== "actuator" || getAt(json, [...CONTROLLER, "acknowledgement"]) !== "none") && (
-        <PickAt path={[...CONTROLLER, "acknowledgement"]} options={ACKNOWLEDGEMENT} />
-      )}
+      {(apart || acknowledgement !== "none") && <PickAt path={[...CONTROLLER, "acknowledgement"]} options={ACKNOWLEDGEMENT} />}
       <OwnLimits />
     </>
   );
@@ -45,7 +52,6 @@ function Weights() {
       {indices(getAt(json, [...LAW_PATH, "inputWeights"])).map((i) => (
         <NumberAt key={`u${i}`} path={[...LAW_PATH, "inputWeights", i]} />
       ))}
-      <Integral first={(signal) => ({ signal, weight: 1 })}>{(path) => <NumberAt path={[...path, "weight"]} label="Weight" />}</Integral>
     </>
   );
 }
@@ -64,48 +70,47 @@ function Gains() {
           ))}
         </div>
       ))}
-      <Integral first={(signal) => ({ signal, gain: inputs.map(() => 0) })}>
-        {(path) =>
-          indices(getAt(json, [...path, "gain"])).map((input) => (
-            <NumberAt key={input} path={[...path, "gain", input]} label={inputs.length === 1 ? "Gain" : plant?.inputs[input]?.label} />
-          ))
-        }
-      </Integral>
     </>
   );
 }
 
-function Integral({ first, children }: { first: (signal: string) => unknown; children: (path: Path) => ReactNode }) {
+/** Integrals of signals, weighted or with typed gains, as the law has it. */
+export function IntegralFields() {
   const { json } = useForm().draft;
   const path = [...LAW_PATH, "integral"];
-  const outputs = plantOf(json)?.outputs ?? [];
+  const weighted = getAt(json, [...LAW_PATH, "type"]) === "lqr";
+  const plant = plantOf(json);
   const used = indices(getAt(json, path)).map((i) => getAt(json, [...path, i, "signal"]));
-  const free = outputs.find(({ name }) => !used.includes(name)) ?? outputs[0];
+  const free = plant?.states.find(({ name }) => !used.includes(name))?.name ?? plant?.states[0]?.name ?? "x1";
+  const inputs = plant?.inputs ?? [];
   const say = (i: number) => {
-    const { label } = fieldSpec(json, [...path, i, "weight"]);
-    const value = getAt(json, [...path, i, "weight"]);
-    return value === undefined ? label : `${label}, weight ${shown(json, [...path, i, "weight"])}`;
+    const label = signalNamed(json, used[i])?.label ?? String(used[i]);
+    const figure = weighted ? [...path, i, "weight"] : [...path, i, "gain", 0];
+    return `${label}, ${weighted ? "weight" : "gain"} ${shown(json, figure)}`;
   };
   return (
-    <>
-      <p className="sub3">Integral action</p>
-      <EntryList
-        path={path}
-        noun="signal"
-        none="None: a constant force on the machine leaves an offset."
-        addWord="Integrate a signal"
-        say={say}
-        first={() => first(free?.name ?? "x1")}
-        most={6}
-      >
-        {(_, entry) => (
-          <>
-            <SignalAt path={[...entry, "signal"]} label="Of" />
-            {children(entry)}
-          </>
-        )}
-      </EntryList>
-    </>
+    <EntryList
+      path={path}
+      noun="signal"
+      none="None: a constant force on the machine leaves an offset."
+      addWord="Integrate a signal"
+      say={say}
+      first={() => (weighted ? { signal: free, weight: 1 } : { signal: free, gain: inputs.map(() => 0) })}
+      most={6}
+    >
+      {(_, entry) => (
+        <>
+          <PickAt path={[...entry, "signal"]} label="Of" options={(plant?.states ?? []).map(({ name, label }) => ({ value: name, word: label }))} />
+          {weighted ? (
+            <NumberAt path={[...entry, "weight"]} label="Weight" />
+          ) : (
+            indices(getAt(json, [...entry, "gain"])).map((input) => (
+              <NumberAt key={input} path={[...entry, "gain", input]} label={inputs.length === 1 ? "Gain" : inputs[input]?.label} />
+            ))
+          )}
+        </>
+      )}
+    </EntryList>
   );
 }
 
@@ -133,11 +138,10 @@ function Pid() {
   );
 }
 
-function Estimator() {
+export function EstimatorFields() {
   const { json } = useForm().draft;
   return (
     <>
-      <p className="sub3">Estimator</p>
       <PickAt path={ESTIMATOR_PATH} options={ESTIMATOR} form label="Estimate" />
       {getAt(json, [...ESTIMATOR_PATH, "type"]) === "kalman" && (
         <>

@@ -121,12 +121,18 @@ export function EntryList(props: EntryListProps) {
                 )}
                 <span className="ml-auto" />
                 {copies && (
-                  <Button small kind="bare" impossible={count >= most ? `At most ${most}.` : null} onClick={() => copy(index)}>
+                  <Button
+                    small
+                    kind="bare"
+                    impossible={count >= most ? `At most ${most}.` : null}
+                    onClick={() => copy(index)}
+                    aria-label={`Duplicate ${noun} ${index + 1}`}
+                  >
                     Duplicate
                   </Button>
                 )}
                 <Button small kind="bare" impossible={count <= least ? `At least ${least} ${noun} is needed.` : null} onClick={() => take(index)}>
-                  Remove
+                  Remove {noun}
                 </Button>
               </div>
             )
@@ -135,7 +141,7 @@ export function EntryList(props: EntryListProps) {
       ))}
       {!readOnly && (
         <Button small icon="plus" className="su-add" impossible={count >= most ? `At most ${most}.` : null} onClick={add}>
-          {addWord ?? `Add a ${noun}`}
+          {addWord ?? `Add ${/^[aeiou]/.test(noun) ? "an" : "a"} ${noun}`}
         </Button>
       )}
     </div>

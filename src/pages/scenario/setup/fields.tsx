@@ -4,7 +4,7 @@ import { pathText } from "#shared/scenario/parse.ts";
 import { ChoiceField, type Option, PickField } from "#src/components/ui/choice.tsx";
 import { Field, type Problem, TextField } from "#src/components/ui/field.tsx";
 import type { Choice } from "../model/choices.ts";
-import { fieldSpec, rangeText } from "../model/field-spec.ts";
+import { fieldRangeText, fieldSpec } from "../model/field-spec.ts";
 import { getAt, type Path, setAt } from "../model/json-path.ts";
 import type { FieldIssue } from "../model/judge.ts";
 import { fieldText, stepped } from "../model/screen-unit.ts";
@@ -72,7 +72,7 @@ export function NumberAt({ path, label, empty, hint }: NumberAtProps) {
       value={text}
       onText={type}
       unit={spec.unit.text}
-      range={rangeText(spec)}
+      range={fieldRangeText(spec)}
       placeholder={empty}
       problem={asProblem(issue)}
       hint={hint}

@@ -46,30 +46,30 @@ export function useIssue(path: Path, below = false): FieldIssue | null {
 
 export function usePlaces(): Pick<Form, "place" | "placed"> {
   const [placed, setPlaced] = useState<ReadonlySet<string>>(new Set());
-  const counts = useRef(new Map<string, number>());
-  const scheduled = useRef(false);
-  return useMemo(() => {
+  const [place] = useState(() => {
+    const counts = new Map<string, number>();
+    let scheduled = false;
     // Many fields come and go at once when a section folds: one new set for all of them.
     const publish = () => {
-      if (scheduled.current) return;
-      scheduled.current = true;
+      if (scheduled) return;
+      scheduled = true;
       queueMicrotask(() => {
-        scheduled.current = false;
-        setPlaced(new Set(counts.current.keys()));
+        scheduled = false;
+        setPlaced((before) => (before.size === counts.size && [...before].every((path) => counts.has(path)) ? before : new Set(counts.keys())));
       });
     };
-    const place = (path: string) => {
-      counts.current.set(path, (counts.current.get(path) ?? 0) + 1);
+    return (path: string) => {
+      counts.set(path, (counts.get(path) ?? 0) + 1);
       publish();
       return () => {
-        const left = (counts.current.get(path) ?? 1) - 1;
-        if (left > 0) counts.current.set(path, left);
-        else counts.current.delete(path);
+        const left = (counts.get(path) ?? 1) - 1;
+        if (left > 0) counts.set(path, left);
+        else counts.delete(path);
         publish();
       };
     };
-    return { place, placed };
-  }, [placed]);
+  });
+  return { place, placed };
 }
 
 /** Remembers, for as long as the page is open, what each form of a part held before another was chosen. */

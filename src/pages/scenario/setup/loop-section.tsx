@@ -1,35 +1,60 @@
 import type { RoundTiming } from "#shared/network/round.ts";
-import { describeActuator, describeController, describeLoop, describeSensor, describeTiming } from "../model/describe.ts";
-import { ActuatorPart } from "./actuator-part.tsx";
-import { ControllerPart } from "./controller-part.tsx";
-import { Fold } from "./fold.tsx";
+import {
+  describeActuator,
+  describeEstimator,
+  describeIntegral,
+  describeLoop,
+  describePlacement,
+  describeSensor,
+  describeSilence,
+  describeTiming,
+} from "../model/describe.ts";
+import { getAt } from "../model/json-path.ts";
+import { ActuatorPart, OnLossFields, SilenceFields } from "./actuator-part.tsx";
+import { EstimatorFields, IntegralFields, LawFields, PlacementFields } from "./controller-part.tsx";
 import { useForm } from "./form.tsx";
+import { Part } from "./part.tsx";
 import { SensorPart } from "./sensor-part.tsx";
-import { SetupSection, sumOrIssues, useIssuesIn } from "./setup-section.tsx";
+import { SetupSection } from "./setup-section.tsx";
 import { TimingPart } from "./timing-part.tsx";
 
-/** One plant with its sensor, controller and actuator. */
+const at = (key: string) => `loops[0].${key}`;
+const PLACEMENT = ["placement", "computeS", "acknowledgement", "limits"].map((key) => at(`controller.${key}`));
+const ACTUATOR = ["inputs", "lagS", "deadTimeS", "busTransferS"].map((key) => at(`actuator.${key}`));
+
+/** One plant with its sensor, controller and actuator: what is set most often first, the rest in parts that fold. */
 export function LoopSection({ timing }: { timing: RoundTiming | null }) {
-  const { draft } = useForm();
-  const { json } = draft;
-  const controller = useIssuesIn("loops[0].controller");
-  const actuator = useIssuesIn("loops[0].actuator");
-  const sensor = useIssuesIn("loops[0].sensor");
-  const instants = useIssuesIn("loops[0].timing");
+  const { json } = useForm().draft;
+  const hasModel = getAt(json, ["loops", 0, "controller", "law", "type"]) !== "pid";
   return (
     <SetupSection id="loop" title="Loop" sum={describeLoop(json)}>
-      <Fold title="Controller" sum={sumOrIssues(controller, describeController(json))} bad={controller > 0} defaultOpen>
-        <ControllerPart />
-      </Fold>
-      <Fold title="Actuator" sum={sumOrIssues(actuator, describeActuator(json))} bad={actuator > 0} defaultOpen>
-        <ActuatorPart />
-      </Fold>
-      <Fold title="Sensor" sum={sumOrIssues(sensor, describeSensor(json))} bad={sensor > 0}>
+      <LawFields />
+      <OnLossFields />
+      {hasModel && (
+        <>
+          <Part title="Integral action" sum={describeIntegral(json)} owns={[at("controller.law.integral")]}>
+            <IntegralFields />
+          </Part>
+          <Part title="Estimator" sum={describeEstimator(json)} owns={[at("controller.estimator")]}>
+            <EstimatorFields />
+          </Part>
+        </>
+      )}
+      <Part title="Placement" sum={describePlacement(json)} owns={PLACEMENT}>
+        <PlacementFields />
+      </Part>
+      <Part title="Sensor" sum={describeSensor(json)} owns={[at("sensor")]}>
         <SensorPart />
-      </Fold>
-      <Fold title="Timing" sum={sumOrIssues(instants, describeTiming(timing?.latencyS ?? null))} bad={instants > 0}>
+      </Part>
+      <Part title="Actuator" sum={describeActuator(json)} owns={ACTUATOR}>
+        <ActuatorPart />
+      </Part>
+      <Part title="Silence" sum={describeSilence(json)} owns={[at("actuator.silence")]}>
+        <SilenceFields />
+      </Part>
+      <Part title="Timing" sum={describeTiming(timing?.latencyS ?? null)} owns={[at("timing")]}>
         <TimingPart timing={timing} />
-      </Fold>
+      </Part>
     </SetupSection>
   );
 }

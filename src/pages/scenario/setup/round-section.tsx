@@ -20,12 +20,17 @@ export function RoundSection({ timing }: { timing: RoundTiming | null }) {
   return (
     <SetupSection id="round" title="Round" sum={sum(json, timing)}>
       <NumberAt path={["round", "periodS"]} />
-      {timing && !timing.fits && <Savings timing={timing} hops={Number(getAt(json, ["round", "hops"]))} />}
-      {timing?.fits && (
-        <p className="note second pb-1">
-          Reserve {msText(timing.reserveS)}; the shortest period is {msText(timing.shortestPeriodS, 5)}.
-        </p>
+      {timing && (
+        <div className="su-ribbon">
+          <RoundRibbon timing={timing} hops={Number(getAt(json, ["round", "hops"]))} />
+          {timing.fits && (
+            <p className="note second">
+              Reserve {msText(timing.reserveS)}; the shortest period is {msText(timing.shortestPeriodS, 5)}.
+            </p>
+          )}
+        </div>
       )}
+      {timing && !timing.fits && <Savings timing={timing} />}
       <PickAt path={["radio", "phy"]} options={PHY} />
       <NumberAt path={["round", "hops"]} />
       <NumberAt path={["round", "transmissions"]} />
@@ -43,12 +48,11 @@ export function RoundSection({ timing }: { timing: RoundTiming | null }) {
 }
 
 /** What would make room, largest first; each can be taken with one press. */
-function Savings({ timing, hops }: { timing: RoundTiming; hops: number }) {
+function Savings({ timing }: { timing: RoundTiming }) {
   const { draft, edit, readOnly } = useForm();
   const missing = -timing.reserveS;
   return (
     <div className="su-save">
-      <RoundRibbon timing={timing} hops={hops} />
       <p className="sub3">What would make room ({msText(missing)} are missing)</p>
       <ul>
         {timing.savings.map((saving) => {

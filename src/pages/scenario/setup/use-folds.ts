@@ -10,10 +10,12 @@ const stored = z.array(z.enum(SECTION_IDS as [SectionId, ...SectionId[]]));
 function remembered(): readonly SectionId[] {
   try {
     const parsed = stored.safeParse(JSON.parse(localStorage.getItem(KEY) ?? "null"));
-    return parsed.success ? parsed.data : FIRST;
+    if (parsed.success) return parsed.data;
   } catch {
-    return FIRST;
+    // Nothing is remembered, then.
   }
+  // On a phone the set-up lies below the bench: closed, it is read at a glance.
+  return window.matchMedia("(max-width: 719px)").matches ? [] : FIRST;
 }
 
 /** Which sections are open; remembered for all scenarios of this browser. */
