@@ -275,7 +275,16 @@ function paintEvents(ctx: Ctx, { layout, palette }: Frame, events: readonly Plac
       if (mark === "silence") ctx.fill();
       else ctx.stroke();
     }
-    if (text) write(ctx, text.words, text.x, y, FONT.axis(palette), lost ? palette.coral : palette.ink2, text.anchor === "start" ? "left" : "right");
+    if (!text) continue;
+    const align = text.anchor === "start" ? "left" : "right";
+    // Dotted lines of other events pass behind the words.
+    ctx.lineWidth = 4;
+    ctx.lineJoin = "round";
+    ctx.strokeStyle = palette.panel;
+    ctx.font = FONT.axis(palette);
+    ctx.textAlign = align;
+    ctx.strokeText(text.words, text.x, y);
+    write(ctx, text.words, text.x, y, FONT.axis(palette), lost ? palette.coral : palette.ink2, align);
   }
 }
 

@@ -160,7 +160,8 @@ export function plotSignals(scenario: Scenario, result: RunResult, names: readon
     const referenceRange = reference ? extremes(reference.values) : null;
     if (referenceRange) data = union(data, referenceRange) ?? data;
     // An input that stays far below its largest value would be a flat line between two rocks.
-    if (command) limits = limits.filter(({ lo, hi }) => Math.max(-(lo ?? 0), hi ?? 0) <= 10 * Math.max(data.max, -data.min));
+    if (command && (data.min !== 0 || data.max !== 0))
+      limits = limits.filter(({ lo, hi }) => Math.max(-(lo ?? 0), hi ?? 0) <= 10 * Math.max(data.max, -data.min));
     const bands = limits
       .filter(({ kind }) => kind !== "settle")
       .map(({ lo, hi, ofError }) => {

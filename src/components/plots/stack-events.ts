@@ -66,6 +66,23 @@ export interface EventSpace {
 }
 
 const GAP = 9;
+/** More marks of one kind than this are counted in words once, not named one by one. */
+const NAMED = 8;
+
+/** "30 pushes" at the first, nothing at the others. */
+function countedOnce<T extends Marked>(visible: T[]): T[] {
+  const counts = new Map<string, number>();
+  for (const { words } of visible) counts.set(words, (counts.get(words) ?? 0) + 1);
+  const told = new Set<string>();
+  return visible.map((item) => {
+    const alike = counts.get(item.words) ?? 0;
+    if (item.words === "" || alike <= NAMED) return item;
+    if (told.has(item.words)) return { ...item, words: "" };
+    told.add(item.words);
+    const plural = item.words === "push" ? "pushes" : item.words === "resumed" ? "times resumed" : `${item.words}s`;
+    return { ...item, words: `${alike} ${plural}` };
+  });
+}
 
 /**
  * Words go to the right of their mark, else to the left, else one row down; never over another mark or word. What finds no
@@ -73,9 +90,11 @@ const GAP = 9;
  */
 export function placeEvents(marked: readonly Marked[], space: EventSpace): { events: PlacedEvent[]; rows: number } {
   const { xOf, left, right, measure } = space;
-  const visible = marked
-    .map((item) => ({ ...item, x: xOf(item.atS), untilX: xOf(item.untilS) }))
-    .filter(({ x, untilX }) => untilX >= left - 0.5 && x <= right + 0.5);
+  const visible = countedOnce(
+    marked
+      .map((item) => ({ ...item, x: xOf(item.atS), untilX: xOf(item.untilS) }))
+      .filter(({ x, untilX }) => untilX >= left - 0.5 && x <= right + 0.5),
+  );
   /** Taken stretches of each row. */
   const taken: [number, number][][] = Array.from({ length: space.rows }, () => []);
   const free = (row: number, from: number, until: number) => (taken[row] ?? []).every(([a, b]) => until <= a || from >= b);
