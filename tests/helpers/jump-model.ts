@@ -51,8 +51,6 @@ export function jumpModel(input: ScenarioInput, from: "sampling" | "acting" = "s
   const step = (z: ArrayLike<number>, measurement: boolean, command: boolean) => {
     let at = 0;
     for (const part of parts) for (let i = 0; i < part.length; i++) part[i] = z[at++];
-    // the input in force is the first entry of the actuator's buffer, no memory of its own
-    logic.actuator.inForce.set(logic.actuator.memory[0].subarray(0, m));
     if (from === "acting") {
       logic.act(command, true);
       carry(after);
