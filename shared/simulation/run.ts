@@ -145,7 +145,7 @@ export class Run {
 
   /** Simulates about this many further rounds, up to the next event; true when the run is over. */
   advance(rounds: number): boolean {
-    const until = Math.min(this.#endNs, (this.#nextSample + rounds) * this.#periodNs);
+    const until = Math.min(this.#endNs, this.#nowNs + rounds * this.#periodNs);
     while (!this.#done && this.#nowNs < until) this.#segment();
     if (!this.#done && this.#nowNs >= this.#endNs) {
       this.#done = true;
