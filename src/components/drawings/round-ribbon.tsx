@@ -1,6 +1,7 @@
 import { useId, useRef } from "react";
 import "./drawings.css";
 import { measureWith, pageFace, useWidth } from "#src/components/plots/measure.ts";
+import { leastLabelPx } from "#src/components/plots/paint-stack.ts";
 import { neatScale } from "#src/components/plots/time-scale.ts";
 import { fixed, withUnit } from "#src/lib/format.ts";
 import { type RoundPicture, ribbonScale, ribbonText, type Stair, stairOf } from "./ribbon-geometry.ts";
@@ -79,7 +80,7 @@ function Ribbon({ timing, hops, width }: RoundRibbonProps & { width: number }) {
 
   const stairs = timing.slots.map((slot) => stairOf(slot, hops, scale, base, STAIRS));
   const next = actsLater ? timing.slots.map((slot) => stairOf(slot, hops, scale, base, STAIRS, timing.periodS)) : [];
-  const neat = neatScale(0, scale.endS, (scale.endS * 46) / (right - 12), "ms", 1000, timing.periodS);
+  const neat = neatScale(0, scale.endS, (scale.endS * leastLabelPx(right - 12)) / (right - 12), "ms", 1000, timing.periodS);
   const inLabels = neat.labels.filter(({ at }) => scale.xOf(at) <= width - 2);
   return (
     <>

@@ -5,6 +5,7 @@ import { useCursorValue, usePlotCursor } from "#src/components/plots/plot-cursor
 import { niceStep } from "#src/components/plots/units.ts";
 import { IconButton } from "#src/components/ui/button.tsx";
 import { significant } from "#src/lib/format.ts";
+import { useMedia } from "#src/lib/use-media.ts";
 
 export interface TransportProps {
   result: RunResult;
@@ -24,17 +25,6 @@ export function speedText(speed: number): string {
   return speed >= 1 ? significant(speed) : `1/${significant(1 / speed)}`;
 }
 
-function useReducedMotion(): boolean {
-  const [reduced, setReduced] = useState(() => matchMedia("(prefers-reduced-motion: reduce)").matches);
-  useEffect(() => {
-    const query = matchMedia("(prefers-reduced-motion: reduce)");
-    const read = () => setReduced(query.matches);
-    query.addEventListener("change", read);
-    return () => query.removeEventListener("change", read);
-  }, []);
-  return reduced;
-}
-
 const FASTER = [0.25, 1, 4] as const;
 /** Without motion a press on play goes on by so many rounds. */
 const STEP_ROUNDS = 10;
@@ -43,7 +33,7 @@ const STEP_ROUNDS = 10;
 export function Transport({ result, note }: TransportProps) {
   const cursor = usePlotCursor();
   const playing = useCursorValue((at) => at.playing);
-  const reduced = useReducedMotion();
+  const reduced = useMedia("(prefers-reduced-motion: reduce)");
   const [times, setTimes] = useState<(typeof FASTER)[number]>(1);
   const usual = usualSpeed(result.durationS);
   const { endedAtS } = result;

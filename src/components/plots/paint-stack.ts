@@ -362,18 +362,21 @@ function paintTapes(ctx: Ctx, frame: Frame): void {
   }
 }
 
+/** Labels stand at least 46 pixels apart, and not more than about thirteen on a wide axis. */
+export const leastLabelPx = (width: number): number => Math.max(46, width / 13);
+const leastLabelS = ({ left, right }: StackLayout, { fromS, untilS }: View): number =>
+  ((untilS - fromS) * leastLabelPx(right - left)) / (right - left);
+
 /** Labels of the time axis that fit between its ends. */
 export function timeLabels(layout: StackLayout, view: View): { x: number; text: string }[] {
   const xOf = xOfTime(layout, view);
-  const least = ((view.untilS - view.fromS) * 46) / (layout.right - layout.left);
-  return timeScale(view.fromS, view.untilS, least).labels.map(({ at, text }) => ({ x: xOf(at), text }));
+  return timeScale(view.fromS, view.untilS, leastLabelS(layout, view)).labels.map(({ at, text }) => ({ x: xOf(at), text }));
 }
 
 export function paintTimeAxis(ctx: Ctx, frame: Frame, labels: boolean): void {
   const { layout, view, palette } = frame;
   const xOf = xOfTime(layout, view);
-  const least = ((view.untilS - view.fromS) * 46) / (layout.right - layout.left);
-  const { inked } = timeScale(view.fromS, view.untilS, least);
+  const { inked } = timeScale(view.fromS, view.untilS, leastLabelS(layout, view));
   ctx.fillStyle = palette.panel;
   ctx.fillRect(layout.left, layout.axisTop, layout.right - layout.left, NEAT);
   ctx.fillStyle = palette.ink;

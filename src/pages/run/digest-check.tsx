@@ -54,6 +54,7 @@ function DigestVerdict({ check, run }: { check: Check; run: RunDetail }) {
     case "broken":
       return <span>This browser’s engine stopped; nothing was compared.</span>;
     case "done":
+      if (check.digest === null) return <span>This page’s engine (version {ENGINE_VERSION}) does not run this revision; nothing was compared.</span>;
       if (check.digest === run.digest) {
         return (
           <span>

@@ -1,19 +1,20 @@
-import type { RunEvent } from "#shared/simulation/result.ts";
+import type { Scenario } from "#shared/scenario/schema.ts";
+import type { RunResult } from "#shared/simulation/result.ts";
 import type { PlotCursor } from "#src/components/plots/plot-cursor.ts";
 import { formatTime, timeDecimals } from "#src/components/plots/units.ts";
 import { counted } from "#src/lib/format.ts";
 import { eventText, eventWord, isLoss } from "./run-words.ts";
 
 interface EventListProps {
-  events: readonly RunEvent[];
+  scenario: Scenario;
+  result: RunResult;
   cursor: PlotCursor;
-  /** Time between two recorded points. */
-  stepS: number;
 }
 
 /** What happened when; a press moves the cursor of the pictures there. */
-export function EventList({ events, cursor, stepS }: EventListProps) {
-  const decimals = timeDecimals(stepS);
+export function EventList({ scenario, result, cursor }: EventListProps) {
+  const { events } = result;
+  const decimals = timeDecimals(result.rounds.periodS / 10);
   const go = (atS: number) => {
     cursor.setPlaying(false);
     cursor.moveTo(atS);
@@ -34,7 +35,7 @@ export function EventList({ events, cursor, stepS }: EventListProps) {
               <button type="button" onClick={() => go(event.atS)} className={isLoss(event) ? "loss" : undefined}>
                 <span className="at">{formatTime(event.atS, decimals)}</span>
                 <b>{eventWord(event)}</b>
-                <span>{eventText(event)}</span>
+                <span>{eventText(event, scenario, result)}</span>
               </button>
             </li>
           ))}

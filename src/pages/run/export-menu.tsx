@@ -64,7 +64,7 @@ export function ExportMenu({ run, scenario, record, result, cursor, stack, engin
     if (!stack.current) throw new Error("The plots are not drawn yet.");
     const { fromS, untilS } = cursor.view;
     const part = fromS === 0 && untilS === run.durationS ? "" : ` · ${formatTime(fromS, 3)} to ${formatTime(untilS, 3)}`;
-    const note = `${runName(run.revision, run.seed)} · ${run.verdict.word}${part} · engine ${run.engine} · times in s`;
+    const note = `${runName(run.revision, run.seed)} · ${run.verdict.word}${part} · engine ${run.engine}`;
     download(file("plots.png"), await stack.current.toPng(run.scenarioName, note), "image/png");
   });
   const length = withUnit(significant(run.durationS, 4), "s");

@@ -157,12 +157,14 @@ function Whole({ run, scenario, record }: { run: RunDetail; scenario: Scenario; 
         </div>
       </section>
       <div className="run-parts">
-        <EventList events={run.events} cursor={cursor} stepS={result.rounds.periodS / 10} />
+        <div>
+          <EventList scenario={scenario} result={result} cursor={cursor} />
+          <DigestCheck run={run} scenario={scenario} engine={engine} />
+        </div>
         <div>
           <LimitTable scenario={scenario} result={result} />
           <SignalTable scenario={scenario} result={result} />
           <MessageTable result={result} />
-          <DigestCheck run={run} scenario={scenario} engine={engine} />
         </div>
       </div>
     </>

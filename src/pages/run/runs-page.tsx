@@ -1,6 +1,5 @@
 import { Link, useParams, useSearchParams } from "react-router-dom";
 import "./run.css";
-import type { RunSummary } from "#shared/api/runs.ts";
 import { useRunList } from "#src/api/runs/list-runs.ts";
 import { useScenario } from "#src/api/scenarios/get-scenario.ts";
 import { DocumentTitle } from "#src/app/document-title.tsx";
@@ -8,19 +7,18 @@ import { paths } from "#src/app/paths.ts";
 import { useTeam } from "#src/app/session.tsx";
 import { Button, LinkButton } from "#src/components/ui/button.tsx";
 import { Icon } from "#src/components/ui/icon.tsx";
-import { VerdictCell } from "#src/components/ui/mark.tsx";
 import { Menu, MenuChoices } from "#src/components/ui/menu.tsx";
 import { QueryError } from "#src/components/ui/query-error.tsx";
 import { Empty, Loading } from "#src/components/ui/states.tsx";
 import { Pager } from "#src/components/ui/table.tsx";
 import { Tell } from "#src/components/ui/tell.tsx";
 import { Way } from "#src/components/ui/way.tsx";
-import { counted, instantText, percentText, significant, whenText, withUnit } from "#src/lib/format.ts";
-import { useNow } from "#src/lib/use-now.ts";
-import { endedText, RUN_VERDICTS, type RunVerdict, VERDICT_CHOICES } from "./run-words.ts";
+import { counted } from "#src/lib/format.ts";
+import { useMedia } from "#src/lib/use-media.ts";
+import { RunCards, RunTable } from "./run-rows.tsx";
+import { RUN_VERDICTS, type RunVerdict, VERDICT_CHOICES } from "./run-words.ts";
 
 const PAGE_SIZE = 25;
-const seconds = (value: number) => withUnit(significant(value, 4), "s");
 
 /** Page, verdict and revision stand in the address; what makes no sense there counts as absent. */
 function useRunFilters() {
@@ -41,6 +39,7 @@ export function RunsPage() {
   const { scenarioId = "" } = useParams();
   const team = useTeam();
   const filters = useRunFilters();
+  const narrow = useMedia("(max-width: 719px)");
   const { page, verdict, revision, change } = filters;
   const scenario = useScenario(team.id, scenarioId);
   const list = useRunList(team.id, scenarioId, { page, pageSize: PAGE_SIZE, verdict, revision });
@@ -61,6 +60,7 @@ export function RunsPage() {
     );
   }
   const { name, latest } = scenario.data;
+  const Rows = narrow ? RunCards : RunTable;
   const filtered = verdict !== undefined || revision !== undefined;
   return (
     <>
@@ -103,7 +103,7 @@ export function RunsPage() {
       {list.isError && list.data && <Tell calm>These rows may be old: they could not be asked for again. {list.error.message}</Tell>}
       {list.data && list.data.items.length > 0 ? (
         <>
-          <RunTable teamId={team.id} items={list.data.items} waiting={list.isPlaceholderData} />
+          <Rows teamId={team.id} items={list.data.items} waiting={list.isPlaceholderData} />
           <Pager page={list.data.page} pageSize={PAGE_SIZE} total={list.data.total} onPage={(next) => change({ page: next, verdict, revision })} />
         </>
       ) : list.data ? (
@@ -159,61 +159,3 @@ const Choice = ({ name, value, options, onChoose }: ChoiceProps) => (
     <MenuChoices options={options} value={value} onChoose={onChoose} />
   </Menu>
 );
-
-function RunTable({ teamId, items, waiting }: { teamId: string; items: readonly RunSummary[]; waiting: boolean }) {
-  const now = useNow();
-  return (
-    <div className="scroll-x" aria-busy={waiting || undefined}>
-      <table className="t run-table">
-        <thead>
-          <tr>
-            <th scope="col">Run</th>
-            <th scope="col" className="r">
-              Revision
-            </th>
-            <th scope="col" className="r">
-              Seed
-            </th>
-            <th scope="col">Verdict</th>
-            <th scope="col" className="r">
-              Delivered
-            </th>
-            <th scope="col" className="r">
-              Length
-            </th>
-            <th scope="col">Kept by</th>
-          </tr>
-        </thead>
-        <tbody>
-          {items.map((run) => (
-            <tr key={run.id}>
-              <th scope="row" className="nw">
-                <Link
-                  to={paths.run(teamId, run.id)}
-                  title={instantText(run.createdAt)}
-                  aria-label={`Open the run of revision ${run.revision} with seed ${run.seed}, ${instantText(run.createdAt)}`}
-                >
-                  {whenText(run.createdAt, now)}
-                </Link>
-              </th>
-              <td className="r">{run.revision}</td>
-              <td className="r">{run.seed}</td>
-              <td>
-                <VerdictCell verdict={run.verdict} />
-              </td>
-              <td className="r nw">
-                {run.delivery.ratio === null ? (
-                  <span className="muted">none sent</span>
-                ) : (
-                  <span title={`${run.delivery.sent - run.delivery.lost} of ${run.delivery.sent} messages`}>{percentText(run.delivery.ratio)}</span>
-                )}
-              </td>
-              <td className="r">{endedText(run, seconds)}</td>
-              <td className="nw">{run.author.name}</td>
-            </tr>
-          ))}
-        </tbody>
-      </table>
-    </div>
-  );
-}
