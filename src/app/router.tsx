@@ -38,6 +38,8 @@ export const routes: RouteObject[] = [
                     path: patterns.scenarioRevisions,
                     lazy: async () => ({ Component: (await import("#src/pages/scenario/revisions-page.tsx")).RevisionsPage }),
                   },
+                  { path: patterns.scenarioRuns, lazy: async () => ({ Component: (await import("#src/pages/run/runs-page.tsx")).RunsPage }) },
+                  { path: patterns.run, lazy: async () => ({ Component: (await import("#src/pages/run/run-page.tsx")).RunPage }) },
                   { path: patterns.members, lazy: async () => ({ Component: (await import("#src/pages/account/members-page.tsx")).MembersPage }) },
                 ],
               },

@@ -124,6 +124,7 @@ function Search({ query, change }: { query: ScenarioListQuery; change: ChangeLis
       if (event.key !== "/" || event.ctrlKey || event.metaKey || event.altKey || isTyping(event.target) || document.querySelector("[role=dialog]"))
         return;
       event.preventDefault();
+      box.current?.focus();
       box.current?.select();
     };
     document.addEventListener("keydown", onKey);
@@ -131,7 +132,7 @@ function Search({ query, change }: { query: ScenarioListQuery; change: ChangeLis
   }, []);
 
   return (
-    <search className="search">
+    <div className="search">
       <Icon name="search" />
       <input
         ref={box}
@@ -147,6 +148,6 @@ function Search({ query, change }: { query: ScenarioListQuery; change: ChangeLis
         onKeyDown={(event) => event.key === "Escape" && setText("")}
       />
       {text === "" && <kbd>/</kbd>}
-    </search>
+    </div>
   );
 }

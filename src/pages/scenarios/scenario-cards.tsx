@@ -1,13 +1,13 @@
 import { Link } from "react-router-dom";
 import { SCENARIO_SORTS, type ScenarioListQuery } from "#shared/api/scenarios.ts";
 import { paths } from "#src/app/paths.ts";
+import { SmallRibbon } from "#src/components/drawings/small-ribbon.tsx";
 import { Icon } from "#src/components/ui/icon.tsx";
 import { VerdictCell } from "#src/components/ui/mark.tsx";
 import { Menu, MenuChoices, MenuRule } from "#src/components/ui/menu.tsx";
 import { msText, whenText } from "#src/lib/format.ts";
 import { useNow } from "#src/lib/use-now.ts";
 import { RowMenu } from "./row-menu.tsx";
-import { RowRibbon } from "./row-ribbon.tsx";
 import { aboutPlant, Delivered, type RowsProps } from "./scenario-table.tsx";
 
 const SORT_WORDS: Record<ScenarioListQuery["sort"], string> = {
@@ -64,7 +64,7 @@ export function ScenarioCards({ teamId, items, query, change, acts, waiting }: R
               </div>
               <VerdictCell verdict={item.verdict} />
               <div className="mt-1.5 flex items-center justify-between gap-3">
-                <RowRibbon item={item} />
+                <SmallRibbon timing={item.round} />
                 <span className="r small">
                   <b className="strong">{msText(item.round.periodS)}</b>
                   <span className="pl">

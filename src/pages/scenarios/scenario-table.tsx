@@ -1,13 +1,13 @@
 import { Link } from "react-router-dom";
 import { PLANT_LABELS, type ScenarioItem, type ScenarioListQuery } from "#shared/api/scenarios.ts";
 import { paths } from "#src/app/paths.ts";
+import { SmallRibbon } from "#src/components/drawings/small-ribbon.tsx";
 import { VerdictCell } from "#src/components/ui/mark.tsx";
 import { SortHead, type Sorting } from "#src/components/ui/table.tsx";
 import { instantText, msText, percentText, whenText } from "#src/lib/format.ts";
 import { useNow } from "#src/lib/use-now.ts";
 import type { ChangeList } from "./list-state.ts";
 import { RowMenu } from "./row-menu.tsx";
-import { RowRibbon } from "./row-ribbon.tsx";
 import type { ScenarioActs } from "./use-scenario-acts.ts";
 
 export interface RowsProps {
@@ -80,7 +80,7 @@ export function ScenarioTable({ teamId, items, query, change, acts, waiting }: R
                 </td>
                 <td className="r strong nw text-body">{msText(item.round.periodS)}</td>
                 <td className="rib">
-                  <RowRibbon item={item} />
+                  <SmallRibbon timing={item.round} />
                 </td>
                 <td className="r nw">
                   <Delivered item={item} />
