@@ -34,6 +34,8 @@ export interface App {
   app: Express;
   /** Every route below /api/teams/:teamId, with the action that it needs. */
   teamRoutes: readonly TeamRoute[];
+  /** Makes ready what the first requests would wait for. */
+  warmUp(): Promise<void>;
   close(): Promise<void>;
 }
 
@@ -76,8 +78,9 @@ export function createApp({ connection, log, sessionSecret, demo, security, clie
   return {
     app,
     teamRoutes,
+    warmUp: () => simulator.warmUp(),
     async close() {
-      simulator.stop();
+      await simulator.stop();
       await session.close();
     },
   };

@@ -57,6 +57,7 @@ async function main(): Promise<void> {
   const client = process.argv.includes("--dev") ? await developmentClient(server) : productionClient();
   const secret = env.HOLDFAST_SESSION_SECRET ?? (await sessionSecret(connection));
   const app: App = createApp({ connection, log, sessionSecret: secret, demo: env.HOLDFAST_DEMO, ...client });
+  app.warmUp().catch((error: unknown) => log.error({ err: error }, "The thread of the runs did not start"));
   server.on("request", app.app);
   const port = await listen(server, env.PORT);
 

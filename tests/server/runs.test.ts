@@ -2,6 +2,7 @@ import { gzipSync } from "node:zlib";
 import { eq } from "drizzle-orm";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { runs } from "#server/db/schema.ts";
+import { createSimulator } from "#server/features/runs/simulator.ts";
 import { errorBodySchema } from "#shared/api/errors.ts";
 import { createRunResponse, runDetailSchema, runListResponse } from "#shared/api/runs.ts";
 import { scenarioResponse } from "#shared/api/scenarios.ts";
@@ -160,5 +161,37 @@ describe("a kept run", () => {
     const state = all.items[0].verdict.state;
     const same = all.items.filter(({ verdict }) => verdict.state === state).length;
     expect((await list(`verdict=${state}`)).total).toBe(same);
+  });
+});
+
+describe("the thread of the runs", () => {
+  it("gives up its runs when the server stops, and takes no more", async () => {
+    const simulator = createSimulator();
+    const long = scenarioNamed("Interrupted", (scenario) => {
+      scenario.run.durationS = 3_000;
+      scenario.losses.process = { type: "none" };
+      scenario.losses.outages = [];
+    });
+    const interrupted = expect(simulator.simulate(long, 1)).rejects.toThrow("stopping");
+    await simulator.stop();
+    await interrupted;
+    await expect(simulator.simulate(long, 1)).rejects.toThrow("stopping");
+  });
+
+  it("computes a short run while a long one is under way", async () => {
+    const simulator = createSimulator();
+    await simulator.warmUp();
+    const long = simulator.simulate(
+      scenarioNamed("Long", (scenario) => {
+        scenario.run.durationS = 600;
+        scenario.losses.process = { type: "none" };
+        scenario.losses.outages = [];
+      }),
+      1,
+    );
+    const order: string[] = [];
+    await Promise.all([long.then(() => order.push("long")), simulator.simulate(scenarioNamed("Short"), 1).then(() => order.push("short"))]);
+    expect(order).toEqual(["short", "long"]);
+    await simulator.stop();
   });
 });

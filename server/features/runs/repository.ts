@@ -118,9 +118,9 @@ export async function findSeries(db: Queries, teamId: string, id: string): Promi
 }
 
 /** null when the same run is there already. */
-export async function insertRun(db: Queries, row: typeof runs.$inferInsert, bytes: Buffer): Promise<string | null> {
+export async function insertRun(db: Queries, row: typeof runs.$inferInsert, bytes: Uint8Array): Promise<string | null> {
   const [inserted] = await db.insert(runs).values(row).onConflictDoNothing().returning({ id: runs.id });
   if (!inserted) return null;
-  await db.insert(runSeries).values({ runId: inserted.id, bytes });
+  await db.insert(runSeries).values({ runId: inserted.id, bytes: Buffer.from(bytes.buffer, bytes.byteOffset, bytes.length) });
   return inserted.id;
 }

@@ -1,12 +1,5 @@
-import { promisify } from "node:util";
-import { gzip } from "node:zlib";
-import type { VerdictLine } from "#shared/api/common.ts";
 import type { CreateRunResponse, RunDetail } from "#shared/api/runs.ts";
-import { encodeSeries } from "#shared/api/series.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
-import { digestRun } from "#shared/simulation/digest.ts";
-import type { RunResult } from "#shared/simulation/result.ts";
-import { verdictSentence } from "#shared/simulation/verdict-text.ts";
 import { ENGINE_VERSION } from "#shared/simulation/version.ts";
 import type { Database, Queries } from "../../db/client.ts";
 import { HttpError, notFound } from "../../http/errors.ts";
@@ -14,43 +7,9 @@ import type { Member } from "../../http/team-routes.ts";
 import { record } from "../activity/repository.ts";
 import { findRevision } from "../revisions/repository.ts";
 import { lockScenario, type ScenarioRow, updateScenario } from "../scenarios/repository.ts";
+import type { RunRecord } from "./record.ts";
 import { findRun, findRunId, insertRun, type RunKey } from "./repository.ts";
 import type { Simulator } from "./simulator.ts";
-
-const compress = promisify(gzip);
-
-function counted(result: RunResult): { sent: number; lost: number } {
-  const { messages } = result.figures;
-  return { sent: messages.reduce((sum, { sent }) => sum + sent, 0), lost: messages.reduce((sum, { lost }) => sum + lost, 0) };
-}
-
-/** A run as it is stored: figures, verdict, digest and the compressed record. */
-export async function recordOf(scenario: Scenario, result: RunResult) {
-  const { bytes, header } = encodeSeries(result);
-  const compressed = await compress(bytes);
-  const { word, sentence } = verdictSentence(scenario, result);
-  return {
-    bytes: compressed,
-    row: {
-      verdict: result.verdict as VerdictLine["state"],
-      verdictWord: word,
-      verdictSentence: sentence,
-      ended: result.ended,
-      endedAtS: result.endedAtS,
-      durationS: result.durationS,
-      ...counted(result),
-      figures: result.figures,
-      limits: result.limits,
-      events: result.events,
-      digest: digestRun(result),
-      points: header.points,
-      keptPoints: header.blocks[0].length,
-      keptEvery: header.keptEvery,
-      compressedBytes: compressed.length,
-    },
-  };
-}
-export type RunRecord = Awaited<ReturnType<typeof recordOf>>;
 
 /** Stores a run and, when it is of the latest revision, shows it in the table. */
 export async function storeRun(transaction: Queries, member: Pick<Member, "user" | "team">, key: RunKey, { row, bytes }: RunRecord, at = new Date()) {
@@ -74,9 +33,8 @@ export function createRunService(db: Database, simulator: Simulator) {
       const [first] = outcome.issues;
       throw new HttpError("scenario-invalid", `Revision ${key.revision} cannot be run: ${first.message}`, { issues: outcome.issues });
     }
-    const made = await recordOf(scenario, outcome.result);
     return await db.transaction(async (transaction) => {
-      const stored = await storeRun(transaction, member, key, made);
+      const stored = await storeRun(transaction, member, key, outcome.record);
       if (stored) {
         if (onRequest) await record(transaction, member, { what: "run-kept", subject: stored.scenario, revision: key.revision });
         return stored.id;

@@ -1,48 +1,80 @@
-/** Runs the engine inside the server without keeping other requests waiting: a few milliseconds at a time. */
-import { setImmediate } from "node:timers/promises";
+/** Has runs computed in a thread of their own, so that no run keeps any other request waiting. */
+import { once } from "node:events";
+import { Worker } from "node:worker_threads";
+import type { Issue } from "#shared/scenario/issues.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
-import type { RunOutcome } from "#shared/simulation/result.ts";
-import { prepareRun } from "#shared/simulation/simulate.ts";
+import type { RunRecord } from "./record.ts";
 
-const TURN_MS = 8;
-const ROUNDS_AT_ONCE = 4;
+export interface Asked {
+  id: number;
+  scenario: Scenario;
+  seed: number;
+}
+export type Computed = { ok: true; record: RunRecord } | { ok: false; issues: Issue[] };
+export type Answered = "ready" | { id: number; computed: Computed } | { id: number; failed: string };
+
 const AT_THE_SAME_TIME = 4;
 
-export class Stopped extends Error {}
+interface Waiting {
+  resolve(computed: Computed): void;
+  reject(error: Error): void;
+}
 
 export function createSimulator() {
-  const waiting: (() => void)[] = [];
-  const stop = new AbortController();
-  let running = 0;
+  const pending = new Map<number, Waiting>();
+  const queue: (() => void)[] = [];
+  let thread: Worker | null = null;
+  let stopped = false;
+  let asked = 0;
 
-  const enter = async () => {
-    if (running >= AT_THE_SAME_TIME) await new Promise<void>((resolve) => waiting.push(resolve));
-    else running++;
+  /** A thread that ended takes its runs with it; the next run starts a new one. */
+  const abandon = (reason: string) => {
+    thread = null;
+    for (const { reject } of pending.values()) reject(new Error(reason));
+    pending.clear();
   };
-  const leave = () => {
-    const next = waiting.shift();
-    if (next) next();
-    else running--;
+
+  const start = (): Worker => {
+    if (thread) return thread;
+    const started = new Worker(new URL("./start-thread.mjs", import.meta.url), { execArgv: [] });
+    started.on("message", (answer: Answered) => {
+      if (answer === "ready") return;
+      const waiting = pending.get(answer.id);
+      pending.delete(answer.id);
+      if ("computed" in answer) waiting?.resolve(answer.computed);
+      else waiting?.reject(new Error(answer.failed));
+    });
+    started.on("error", (error) => started === thread && abandon(`The thread of the runs failed: ${error.message}`));
+    started.on("exit", () => started === thread && abandon("The thread of the runs ended."));
+    thread = started;
+    return started;
   };
 
   return {
-    async simulate(scenario: Scenario, seed: number): Promise<RunOutcome> {
-      await enter();
+    /** Starts the thread ahead of the first run, which would wait for it otherwise. */
+    async warmUp(): Promise<void> {
+      await once(start(), "message");
+    },
+
+    async simulate(scenario: Scenario, seed: number): Promise<Computed> {
+      if (pending.size >= AT_THE_SAME_TIME) await new Promise<void>((resolve) => queue.push(resolve));
       try {
-        const prepared = prepareRun(scenario, seed);
-        if (!prepared.ok) return prepared;
-        for (let done = false; !done; ) {
-          if (stop.signal.aborted) throw new Stopped("The server is stopping.");
-          const until = performance.now() + TURN_MS;
-          while (!done && performance.now() < until) done = prepared.run.advance(ROUNDS_AT_ONCE);
-          await setImmediate();
-        }
-        return { ok: true, result: prepared.run.result() };
+        if (stopped) throw new Error("The server is stopping.");
+        const id = ++asked;
+        const answer = new Promise<Computed>((resolve, reject) => pending.set(id, { resolve, reject }));
+        start().postMessage({ id, scenario, seed } satisfies Asked);
+        return await answer;
       } finally {
-        leave();
+        queue.shift()?.();
       }
     },
-    stop: () => stop.abort(),
+
+    async stop(): Promise<void> {
+      stopped = true;
+      const running = thread;
+      abandon("The server is stopping.");
+      await running?.terminate();
+    },
   };
 }
 export type Simulator = ReturnType<typeof createSimulator>;
