@@ -41,7 +41,7 @@ export class HttpError extends Error {
 /** The same for what is not there, what belongs to another team and what never was an id. */
 export const notFound = () => new HttpError("not-found", "There is nothing at this address, or it is not your team's.");
 
-export function sendError(response: Response, { code, message, details }: HttpError): void {
+function sendError(response: Response, { code, message, details }: HttpError): void {
   const body: ErrorBody = { error: { code, message, ...details } };
   response.status(STATUS[code]).json(body);
 }

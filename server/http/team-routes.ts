@@ -15,14 +15,14 @@ export interface Member {
   roles: Role[];
 }
 
-export interface Call {
+interface Call {
   member: Member;
   params: Record<string, string>;
   query: unknown;
   body: unknown;
 }
 
-export type Answer = { status?: 200 | 201; body: unknown } | { bytes: Buffer; headers: Record<string, string> };
+type Answer = { status?: 200 | 201; body: unknown } | { bytes: Buffer; headers: Record<string, string> };
 
 export interface TeamRoute {
   method: "get" | "post" | "patch" | "delete";

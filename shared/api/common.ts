@@ -1,9 +1,7 @@
 import { z } from "zod";
 
 export const personSchema = z.strictObject({ id: z.uuid(), name: z.string() });
-export type Person = z.infer<typeof personSchema>;
 
-export const PAGE_SIZES = [10, 25, 50, 100] as const;
 const MAX_PAGE = 1_000_000;
 
 /** Query parameters of every list; pages count from 1. */

@@ -1,7 +1,7 @@
 /** How every route says no: one body, a literal code for programs, a message for people. */
 import { z } from "zod";
 
-export const issueSchema = z.strictObject({
+const issueSchema = z.strictObject({
   code: z.string(),
   /** Where, as written in the file: "loops[0].plant.cartMassKg"; for other requests the field or query parameter. */
   path: z.string(),
@@ -9,7 +9,7 @@ export const issueSchema = z.strictObject({
   help: z.array(z.string()).optional(),
 });
 
-export const ERROR_CODES = [
+const ERROR_CODES = [
   // 400
   "not-json",
   "request-invalid",
@@ -39,13 +39,12 @@ export const ERROR_CODES = [
 export type ErrorCode = (typeof ERROR_CODES)[number];
 
 /** The revision that was saved in the meantime. */
-export const newerRevisionSchema = z.strictObject({
+const newerRevisionSchema = z.strictObject({
   number: z.int().positive(),
   author: z.strictObject({ id: z.uuid(), name: z.string() }),
   savedAt: z.iso.datetime(),
   note: z.string(),
 });
-export type NewerRevision = z.infer<typeof newerRevisionSchema>;
 
 export const errorBodySchema = z.strictObject({
   error: z.strictObject({

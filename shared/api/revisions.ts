@@ -3,7 +3,7 @@ import { z } from "zod";
 import { scenarioSchema } from "#shared/scenario/schema.ts";
 import { noteSchema, pageOf, pageQuery, personSchema, verdictSchema } from "./common.ts";
 
-export const revisionSummarySchema = z.strictObject({
+const revisionSummarySchema = z.strictObject({
   number: z.int().positive(),
   name: z.string(),
   note: z.string(),
@@ -21,7 +21,6 @@ export type RevisionDetail = z.infer<typeof revisionDetailSchema>;
 /** Newest first. */
 export const revisionListQuery = z.strictObject(pageQuery);
 export const revisionListResponse = z.strictObject(pageOf(revisionSummarySchema));
-export type RevisionListResponse = z.infer<typeof revisionListResponse>;
 
 /**
  * POST .../revisions -> 201 scenarioResponse, or 409 "revision-conflict" with `latest` when baseRevision is not the newest.

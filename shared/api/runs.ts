@@ -4,7 +4,7 @@ import type { Figures, LimitVerdict, RunEvent } from "#shared/simulation/result.
 import { deliverySchema, pageOf, pageQuery, personSchema, verdictSchema, verdictStateSchema } from "./common.ts";
 
 const seedSchema = z.int().min(0).max(4_294_967_295);
-export const digestSchema = z.string().regex(/^[0-9a-f]{64}$/, "64 hexadecimal digits");
+const digestSchema = z.string().regex(/^[0-9a-f]{64}$/, "64 hexadecimal digits");
 
 const eventSchema = z.strictObject({
   atS: z.number(),

@@ -56,7 +56,7 @@ export const roundSummarySchema = z.strictObject({
 }) satisfies z.ZodType<Omit<RoundTiming, "ns" | "savings" | "issues">>;
 export type RoundSummary = z.infer<typeof roundSummarySchema>;
 
-export const scenarioItemSchema = z.strictObject({
+const scenarioItemSchema = z.strictObject({
   id: z.uuid(),
   name: z.string(),
   plant: plantSummarySchema,
@@ -103,12 +103,11 @@ export const scenarioListResponse = z.strictObject({
 export type ScenarioListResponse = z.infer<typeof scenarioListResponse>;
 
 /** POST .../scenarios -> 201 scenarioResponse. A scenario that breaks the schema: 422 "scenario-invalid" with issues. */
-export const createScenarioRequest = z.strictObject({ scenario: scenarioSchema, note: noteSchema });
+const createScenarioRequest = z.strictObject({ scenario: scenarioSchema, note: noteSchema });
 export type CreateScenarioRequest = z.input<typeof createScenarioRequest>;
 
 /** PATCH .../scenarios/:id. The name is part of the scenario and changes with a revision. */
 export const changeScenarioRequest = z.strictObject({ archived: z.boolean() });
-export type ChangeScenarioRequest = z.infer<typeof changeScenarioRequest>;
 
 /** DELETE .../scenarios/:id, of an archived one: with all its revisions and runs. */
 export const deleteScenarioResponse = z.strictObject({ deleted: z.literal(true) });

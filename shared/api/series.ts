@@ -8,7 +8,7 @@ import type { RunResult } from "#shared/simulation/result.ts";
 
 export const SERIES_CONTENT_TYPE = "application/vnd.holdfast.series";
 /** A longer series is kept at every second, third, ... point. */
-export const MAX_SERIES_POINTS = 200_000;
+const MAX_SERIES_POINTS = 200_000;
 /** Of more rounds than this only delivered / lost is kept, without measurements, estimates and commands. */
 const MAX_DETAILED_ROUNDS = 200_000;
 

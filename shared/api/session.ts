@@ -8,7 +8,7 @@ export const signInRequest = z.strictObject({
 });
 export type SignInRequest = z.infer<typeof signInRequest>;
 
-export const membershipSchema = z.strictObject({
+const membershipSchema = z.strictObject({
   team: z.strictObject({ id: z.uuid(), name: z.string() }),
   roles: z.array(roleSchema).min(1),
 });

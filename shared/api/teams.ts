@@ -3,12 +3,11 @@ import { z } from "zod";
 import { pageOf, pageQuery, personSchema } from "./common.ts";
 import { roleSchema } from "./permissions.ts";
 
-export const memberSchema = z.strictObject({ ...personSchema.shape, roles: z.array(roleSchema).min(1) });
-export type Member = z.infer<typeof memberSchema>;
+const memberSchema = z.strictObject({ ...personSchema.shape, roles: z.array(roleSchema).min(1) });
 export const memberListResponse = z.strictObject({ members: z.array(memberSchema) });
 export type MemberListResponse = z.infer<typeof memberListResponse>;
 
-export const ACTIVITIES = [
+const ACTIVITIES = [
   "signed-in",
   "scenario-created",
   "scenario-duplicated",
@@ -20,7 +19,7 @@ export const ACTIVITIES = [
 ] as const;
 export type ActivityKind = (typeof ACTIVITIES)[number];
 
-export const activityItemSchema = z.strictObject({
+const activityItemSchema = z.strictObject({
   id: z.uuid(),
   at: z.iso.datetime(),
   who: personSchema,
@@ -29,9 +28,7 @@ export const activityItemSchema = z.strictObject({
   subject: z.strictObject({ id: z.uuid(), name: z.string() }).nullable(),
   revision: z.int().nullable(),
 });
-export type ActivityItem = z.infer<typeof activityItemSchema>;
 
 /** Newest first. */
 export const activityListQuery = z.strictObject({ what: z.enum(ACTIVITIES).optional(), who: z.uuid().optional(), ...pageQuery });
 export const activityListResponse = z.strictObject(pageOf(activityItemSchema));
-export type ActivityListResponse = z.infer<typeof activityListResponse>;
