@@ -33,9 +33,7 @@ export function paletteOf(element: Element): Palette {
 }
 
 /** The first block of the tokens is the light theme. */
-export function lightPalette(): Palette {
-  return read((name) => tokens.match(new RegExp(`${name}:\\s*([^;]+);`))?.[1]?.trim() ?? "");
-}
+export const lightPalette = (css = tokens): Palette => read((name) => css.match(new RegExp(`${name}:\\s*([^;]+);`))?.[1]?.trim() ?? "");
 
 /** Calls back when the theme turns: by the page's own switch or by the system. */
 export function onThemeChange(callback: () => void): () => void {
@@ -52,8 +50,8 @@ export function onThemeChange(callback: () => void): () => void {
 let fonts: Promise<unknown> | null = null;
 /** Canvas text is drawn once; it has to wait for the faces, Greek letters included, that no other text on the page may have asked for. */
 export function pictureFonts(face: string): Promise<unknown> {
-  fonts ??= Promise.all(
-    ["400 12px", "600 13px", "italic 400 13px"].flatMap((font) => ["Angle 0", "θ"].map((text) => document.fonts.load(`${font} ${face}`, text))),
-  ).catch(() => undefined);
+  // Where there are no fonts to wait for (tests), there is nothing to wait for.
+  const load = (font: string) => ["Angle 0", "θ"].map((text) => document.fonts?.load(`${font} ${face}`, text));
+  fonts ??= Promise.all(["400 12px", "600 13px", "italic 400 13px"].flatMap(load)).catch(() => undefined);
   return fonts;
 }

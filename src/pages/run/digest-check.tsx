@@ -16,8 +16,8 @@ export function DigestCheck({ run, scenario, engine }: { run: RunDetail; scenari
   const [check, setCheck] = useState<Check>({ state: "idle" });
   const compute = useCallback(() => {
     setCheck({ state: "computing" });
-    engine()
-      .digest(scenario, run.seed)
+    Promise.resolve()
+      .then(() => engine().digest(scenario, run.seed))
       .then((digest) => setCheck({ state: "done", digest }))
       .catch(() => setCheck({ state: "broken" }));
   }, [engine, scenario, run.seed]);
