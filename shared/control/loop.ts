@@ -102,9 +102,9 @@ export class LoopLogic {
     }
   }
 
-  /** Steps 2 to 4 of round k; the command is under way afterwards. */
-  compute(k: number, measurementDelivered: boolean): void {
-    this.controller.compute(k, this.measured, measurementDelivered, this.actuator.inForce);
+  /** Steps 2 to 4 of round k; the command is under way afterwards. inForce (m): the input in force at the sampling instant. */
+  compute(k: number, measurementDelivered: boolean, inForce: Float64Array = this.actuator.inForce): void {
+    this.controller.compute(k, this.measured, measurementDelivered, inForce);
     shiftIn(this.underWay, this.controller.plan, 0, this.#row);
   }
 

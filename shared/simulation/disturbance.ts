@@ -85,6 +85,11 @@ export class Disturbance {
     );
   }
 
+  /** Whether anything but impulses ever pushes. */
+  get canPush(): boolean {
+    return this.#sustained.length > 0;
+  }
+
   /** Chooses what acts in the segment that begins at tNs; true when anything does. */
   begin(tNs: number): boolean {
     if (this.#sustained.length === 0) return false;

@@ -16,6 +16,8 @@ export class Drive {
   readonly value: Float64Array;
   readonly slope: Float64Array;
   sloping = false;
+  /** Whether any input can ever be on a ramp. */
+  readonly canSlope: boolean;
   /** Some input stands at its lowest or largest value. */
   saturated = false;
   /** The next instant at which something changes by itself; Infinity: none. */
@@ -42,6 +44,7 @@ export class Drive {
     this.#margin = Float64Array.from(inputs, (input) => (input.encoding ? quantumOf(input.encoding) / 2 : 0));
     this.#deadNs = toNs(deadTimeS);
     this.#rampS = silence?.rampS ?? 1;
+    this.canSlope = silence?.reaction === "ramp" || inputs.some((input) => input.ratePerS !== null);
     this.value = new Float64Array(this.#m);
     this.slope = new Float64Array(this.#m);
     this.#target = new Float64Array(this.#m);

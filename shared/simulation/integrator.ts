@@ -1,15 +1,14 @@
 /**
- * Steps of the embedded pair of Cash and Karp (ACM TOMS 16(3), 1990): stages and update of the library ode45-cash-karp, with
- * our own error estimate and step control. The library's own control calls Math.pow, which differs between engines, and
- * evaluates the first stage anew where it is known. Steps are the largest step times a power of 1/2, halved while the scaled
- * error is above 1 and doubled after an error below 1/64 (order 5: a doubled step would have about half the permitted error).
+ * Adaptive steps of the embedded pair of Cash and Karp (ACM TOMS 16(3), 1990) with our own error estimate and step control:
+ * the usual control calls pow, which differs between engines. Steps are the largest step times a power of 1/2, halved while
+ * the scaled error is above 1 and doubled after an error below 1/64 (order 5: a doubled step would have about half the
+ * permitted error).
  */
-import ode, { type Integrator as Stepper } from "ode45-cash-karp";
-
-export type Derivative = (dy: Float64Array, y: Float64Array, t: number) => void;
+import { type Derivative, type Stages, stagesOf } from "./stages.ts";
 
 const DOUBLE_BELOW = 1 / 64;
 const MAX_STEPS = 10_000;
+const SLACK = 1 + 1e-9;
 
 export class Integrator {
   /** The state, changed in place. */
@@ -19,7 +18,7 @@ export class Integrator {
   stepLength = 0;
   readonly #n: number;
   readonly #derivative: Derivative;
-  readonly #stepper: Stepper;
+  readonly #stages: Stages;
   readonly #before: Float64Array;
   readonly #k7: Float64Array;
   /** k7, the derivative at the end of the last step, is known. */
@@ -36,12 +35,12 @@ export class Integrator {
     this.#derivative = derivative;
     this.#maxStep = maxStep;
     this.#h = maxStep;
-    this.y = new Float64Array(n);
+    this.#stages = stagesOf(n, derivative);
+    this.y = this.#stages.y;
     this.#before = new Float64Array(n);
     this.#k7 = new Float64Array(n);
     this.#absolute = absolute;
     this.#relative = relative;
-    this.#stepper = ode(this.y, derivative, 0, maxStep, { verbose: false });
   }
 
   /**
@@ -51,31 +50,31 @@ export class Integrator {
    */
   advance(from: number, to: number, onStep: () => boolean): "done" | "stopped" | "stiff" {
     const { y } = this;
-    const stepper = this.#stepper;
+    const stages = this.#stages;
     const before = this.#before;
     const n = this.#n;
     let at = from;
     for (let steps = 0; steps < MAX_STEPS; ) {
       const rest = to - at;
       if (rest <= 0) return "done";
-      // Two steps of equal length rather than a long and a tiny one.
-      let dt = rest <= this.#h ? rest : rest < 2 * this.#h ? rest / 2 : this.#h;
+      // Two steps of equal length rather than a long and a tiny one; times in seconds are rounded, hence the slack.
+      const most = this.#h * SLACK;
+      let dt = rest <= most ? rest : rest <= 2 * most ? rest / 2 : this.#h;
       for (let i = 0; i < n; i++) before[i] = y[i];
-      stepper.t = at;
       // Within a segment the derivative at the end of a step is the first stage of the next one.
-      if (at > from && this.#extended) for (let i = 0; i < n; i++) stepper._k1[i] = this.#k7[i];
-      else stepper._calculateK1();
+      if (at > from && this.#extended) for (let i = 0; i < n; i++) stages.k1[i] = this.#k7[i];
+      else stages.first(at);
       let error: number;
       for (;;) {
         steps++;
-        stepper._calculateKs(dt);
-        error = this.#error(dt);
+        stages.rest(at, dt);
+        error = stages.error(dt, this.#absolute, this.#relative);
         if (error <= 1) break;
         if (steps >= MAX_STEPS || at + dt / 2 === at) return "stiff";
         dt /= 2;
         this.#h = dt;
       }
-      stepper._update(dt);
+      stages.update(dt);
       if (error < DOUBLE_BELOW && this.#h < this.#maxStep) this.#h = Math.min(this.#maxStep, 2 * this.#h);
       this.stepFrom = at;
       this.stepLength = dt;
@@ -85,23 +84,6 @@ export class Integrator {
       if (dt === rest) return "done";
     }
     return "stiff";
-  }
-
-  /** Largest error of the embedded fourth-order result over its scale. */
-  #error(dt: number): number {
-    const { y } = this;
-    const { _k1: k1, _k3: k3, _k4: k4, _k5: k5, _k6: k6 } = this.#stepper;
-    let most = 0;
-    for (let i = 0; i < this.#n; i++) {
-      const e =
-        (2825 / 27648 - 37 / 378) * k1[i] +
-        (18575 / 48384 - 250 / 621) * k3[i] +
-        (13525 / 55296 - 125 / 594) * k4[i] +
-        (277 / 14336) * k5[i] +
-        (1 / 4 - 512 / 1771) * k6[i];
-      most = Math.max(most, Math.abs(dt * e) / (this.#absolute + this.#relative * Math.abs(y[i])));
-    }
-    return most;
   }
 
   /**
@@ -119,7 +101,7 @@ export class Integrator {
     this.#evaluateEnd();
     const before = this.#before;
     const k7 = this.#k7;
-    const { _k1: k1, _k3: k3, _k4: k4, _k6: k6 } = this.#stepper;
+    const { k1, k3, k4, k6 } = this.#stages;
     for (let i = 0; i < this.#n; i++) {
       const y0 = before[i];
       const d1 = k1[i];

@@ -177,6 +177,8 @@ export class Run {
         plant.derivative(dy, y, u, d);
       };
     }
+    // The right-hand side is most of the cost of a run: nothing is looked up that this scenario cannot need.
+    if (!drive.canSlope && !this.#disturbance.canPush) return (dy, y) => plant.derivative(dy, y, u, d);
     return (dy, y, t) => {
       if (drive.sloping) {
         const into = t - this.#segmentNs / 1e9;
@@ -354,7 +356,8 @@ export class Run {
       for (let j = 0; j < m; j++) raw.costSum += this.#weights.inputs[j] * u[j] * u[j];
     }
     this.#logic.measure(y, u, this.#noise, k * p);
-    this.#logic.compute(k, raw.deliveries.measurement[k] === 1);
+    // While the drive reacts to silence, what is in force is what the drive does, not what a command asked for.
+    this.#logic.compute(k, raw.deliveries.measurement[k] === 1, this.#logic.actuator.silent ? this.#drive.value : this.#logic.actuator.inForce);
     const { estimate, plan } = this.#logic.controller;
     for (let i = 0; i < p; i++) raw.measurement[k * p + i] = this.#logic.measured[i];
     for (let i = 0; i < estimate.length; i++) raw.estimate[k * estimate.length + i] = estimate[i];
