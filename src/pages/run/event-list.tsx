@@ -33,8 +33,7 @@ export function EventList({ scenario, result, cursor }: EventListProps) {
             // biome-ignore lint/suspicious/noArrayIndexKey: the events of a kept run never change
             <li key={index}>
               <button type="button" onClick={() => go(event.atS)} className={isLoss(event) ? "loss" : undefined}>
-                <span className="at">{formatTime(event.atS, decimals)}</span>
-                <b>{eventWord(event)}</b>
+                <span className="at">{formatTime(event.atS, decimals)}</span> <b>{eventWord(event)}</b>{" "}
                 <span>{eventText(event, scenario, result)}</span>
               </button>
             </li>

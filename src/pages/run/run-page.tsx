@@ -148,7 +148,7 @@ function Whole({ run, scenario, record }: { run: RunDetail; scenario: Scenario; 
           />
           {!isWhole(record) && (
             <Tell calm>
-              {record.keptEvery > 1 && `Of this long run every ${record.keptEvery}th point is kept and drawn. `}
+              {record.keptEvery > 1 && `Of this long run one point in ${record.keptEvery} is kept and drawn. `}
               {!record.detailed && "Of its rounds only delivered and lost are kept. "}
               Files are computed anew and are whole.
             </Tell>
