@@ -4,9 +4,9 @@ import { type Derivative, fromLibrary, stagesOf } from "#shared/simulation/stage
 /** A nonlinear system of four states that depends on time, so that every stage and its time count. */
 const derivative: Derivative = (dy, y, t) => {
   dy[0] = y[2] + 0.3 * t;
-  dy[1] = y[3] * y[0] - t * t;
-  dy[2] = 9.7 * y[1] - 0.4 * y[2] * y[2];
-  dy[3] = -3.1 * y[0] + y[1] * y[2] * y[3] + 1;
+  dy[1] = y[3] * y[0] - y[1];
+  dy[2] = -9.7 * y[0] - 0.4 * y[2] * y[2] * y[2];
+  dy[3] = -3.1 * y[3] + y[1] / (1 + y[2] * y[2]);
 };
 
 it("the written-out stages for four states give the library's bits, over many steps of many lengths", () => {
