@@ -4,6 +4,7 @@ import { useSession, useTeam } from "#src/app/session.tsx";
 import { QueryError } from "#src/components/ui/query-error.tsx";
 import { Loading } from "#src/components/ui/states.tsx";
 import { counted, listed } from "#src/lib/format.ts";
+import { ActivityRecord } from "./activity-record.tsx";
 import { RightsTable } from "./rights-table.tsx";
 
 export function MembersPage() {
@@ -53,6 +54,11 @@ export function MembersPage() {
         </section>
         <RightsTable own={team.roles} />
       </div>
+      {team.may("read-activity") && (
+        <div className="mt-8 border-t-rule border-t-ink pt-4">
+          <ActivityRecord teamId={team.id} />
+        </div>
+      )}
     </>
   );
 }

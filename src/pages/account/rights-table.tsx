@@ -1,12 +1,12 @@
 import { ACTIONS, type Action, actionText, may, ROLES, type Role } from "#shared/api/permissions.ts";
 import { Icon } from "#src/components/ui/icon.tsx";
 
-type Answer = "yes" | "no" | "own attempts" | "not their own";
+type Answer = "yes" | "no" | "own exercise attempts" | "not their own";
 
 /** The matrix is asked, not repeated: a right without a condition, or with which one, or none. */
 function answer(role: Role, action: Action): Answer {
   if (may([role], action)) return "yes";
-  if (may([role], action, { ownAttempt: true })) return "own attempts";
+  if (may([role], action, { ownAttempt: true })) return "own exercise attempts";
   if (may([role], action, { ownRevision: false })) return "not their own";
   return "no";
 }
