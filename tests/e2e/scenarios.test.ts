@@ -9,7 +9,10 @@ test("a template becomes a scenario and stands in the table, where it can be fou
   const { page } = await holdfast.visit("engineer");
   await page.getByRole("button", { name: /^New: Overhead crane/ }).click();
   await page.getByRole("heading", { level: 1, name: /^Overhead crane/ }).waitFor();
-  await page.getByRole("region", { name: "Live bench" }).getByRole("paragraph").first().waitFor();
+  await page
+    .getByRole("region", { name: "Live bench" })
+    .getByText(/run in/)
+    .waitFor();
 
   await page.getByRole("navigation", { name: "Holdfast" }).getByRole("link", { name: "Scenarios" }).click();
   await page

@@ -1,0 +1,128 @@
+/** Every page, in both themes, on a wall of pixels and on a small phone: accessible, nothing cut off, reachable by keys. */
+import axe from "axe-core";
+import type { Page } from "playwright-core";
+import { keepRun, makeScenario, pendulum, saveRevision } from "./api.ts";
+import { expect, type Holdfast, test, type Visit } from "./app.ts";
+
+interface Stop {
+  name: string;
+  path: string;
+  /** A text that is there when the page is. */
+  ready: RegExp;
+}
+
+/** A scenario with two revisions and a run, and all pages that show it. */
+async function stops(visit: Visit): Promise<Stop[]> {
+  const made = await makeScenario(visit, { ...pendulum(), name: "For every page" });
+  const saved = await saveRevision(visit, made.id, 1, { ...made.latest.scenario, description: "Changed once." });
+  const run = await keepRun(visit, saved, 3);
+  const team = `/teams/${visit.team.id}`;
+  return [
+    { name: "scenarios", path: `${team}/scenarios`, ready: /of the team/ },
+    { name: "no scenario found", path: `${team}/scenarios?search=nothing-of-this-name`, ready: /nothing-of-this-name/ },
+    { name: "scenario", path: `${team}/scenarios/${made.id}`, ready: /run in/ },
+    { name: "old revision", path: `${team}/scenarios/${made.id}?revision=1`, ready: /Revision 1/ },
+    { name: "revisions", path: `${team}/scenarios/${made.id}/revisions`, ready: /Saved for a test/ },
+    { name: "runs", path: `${team}/scenarios/${made.id}/runs`, ready: /1 run|seed/i },
+    { name: "run", path: `${team}/runs/${run.id}`, ready: /bit for bit/ },
+    { name: "team", path: `${team}/members`, ready: /Tove Saltby/ },
+    { name: "account", path: "/account", ready: /rowan\.fennick@/ },
+    { name: "methods", path: "/methods", ready: /Methods/ },
+    { name: "not there", path: "/no/such/page", ready: /Nothing is at this address/ },
+  ];
+}
+
+async function go(page: Page, { path, ready }: Stop): Promise<void> {
+  await page.goto(path);
+  await page.getByRole("main").getByText(ready).first().waitFor();
+}
+
+/** What axe finds against WCAG 2.2 AA, one line each. */
+async function findings(page: Page, where: string): Promise<string[]> {
+  await page.evaluate(axe.source);
+  const { violations } = await page.evaluate(() =>
+    (window as unknown as { axe: typeof axe }).axe.run({
+      runOnly: ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa", "best-practice"],
+    }),
+  );
+  return violations.flatMap(({ id, nodes }) => nodes.map((node) => `${where}: ${id} at ${node.target.join(" ")}: ${node.failureSummary}`));
+}
+
+/** What is wider than the window, if anything makes the page scroll sideways. */
+const overflow = (page: Page) =>
+  page.evaluate(() => {
+    const { scrollWidth, clientWidth } = document.documentElement;
+    if (scrollWidth <= clientWidth) return [];
+    const wide = [...document.querySelectorAll("body *")].filter((element) => element.getBoundingClientRect().right > clientWidth + 1);
+    return [`${scrollWidth} px in ${clientWidth} px`, ...wide.slice(0, 5).map((element) => element.outerHTML.slice(0, 120))];
+  });
+
+async function look(
+  holdfast: Holdfast,
+  colorScheme: "light" | "dark",
+  size: { width: number; height: number },
+  check: (page: Page, where: string) => Promise<unknown[]>,
+) {
+  const visit = await holdfast.visit("engineer", { colorScheme, viewport: size, reducedMotion: "reduce" });
+  const found: unknown[] = [];
+  for (const stop of await stops(visit)) {
+    await go(visit.page, stop);
+    found.push(...(await check(visit.page, `${stop.name}, ${colorScheme}, ${size.width} px`)));
+  }
+  const { page } = await holdfast.stranger({ colorScheme, viewport: size });
+  await go(page, { name: "sign-in", path: "/sign-in", ready: /Demo team/ });
+  found.push(...(await check(page, `sign-in, ${colorScheme}, ${size.width} px`)));
+  expect(found).toEqual([]);
+}
+
+test.for(["light", "dark"] as const)(
+  "every page passes the accessibility rules in the %s theme",
+  { timeout: 240_000 },
+  async (theme, { holdfast }) => {
+    holdfast.expectTrouble(/answer 404/);
+    await look(holdfast, theme, { width: 1440, height: 900 }, findings);
+  },
+);
+
+test("every page passes the accessibility rules on a phone", async ({ holdfast }) => {
+  await look(holdfast, "light", { width: 390, height: 844 }, findings);
+}, 240_000);
+
+test.for([360, 768, 2560])("no page scrolls sideways at %i px", { timeout: 240_000 }, async (width, { holdfast }) => {
+  await look(holdfast, "light", { width, height: 800 }, async (page, where) => (await overflow(page)).map((line) => `${where}: ${line}`));
+});
+
+/** Presses Tab from the top of the page until the focus leaves it; what was focused, by name. */
+async function tabbed(page: Page): Promise<{ name: string; ring: boolean }[]> {
+  const seen: { name: string; ring: boolean }[] = [];
+  for (let presses = 0; presses < 300; presses++) {
+    await page.keyboard.press("Tab");
+    const at = await page.evaluate(() => {
+      const element = document.activeElement;
+      if (!element || element === document.body) return null;
+      const labels = (element as HTMLInputElement).labels;
+      const name = element.getAttribute("aria-label") ?? labels?.[0]?.textContent ?? element.textContent ?? "";
+      const { boxShadow, outlineStyle } = getComputedStyle(element);
+      return { name: name.trim(), ring: boxShadow !== "none" || outlineStyle !== "none" };
+    });
+    if (!at) return seen;
+    seen.push(at);
+  }
+  throw new Error(`The focus does not leave the page; last: ${seen.slice(-5).map(({ name }) => name)}`);
+}
+
+test("every main control of the bench is reached by Tab, with a ring to be seen, and no trap", async ({ holdfast }) => {
+  const visit = await holdfast.visit("engineer");
+  const { id } = await makeScenario(visit, { ...pendulum(), name: "By keys alone" });
+  await go(visit.page, { name: "scenario", path: `/teams/${visit.team.id}/scenarios/${id}`, ready: /run in/ });
+  const seen = await tabbed(visit.page);
+  expect(seen[0].name).toBe("Skip to the content");
+  const names = seen.map(({ name }) => name);
+  for (const wanted of [/^Scenarios$/, /^Account of/, /^More$/, /^Losses/, /^Command lost/, /^Another seed/, /^Keep this run$/, /^Play/]) {
+    expect(
+      names.some((name) => wanted.test(name)),
+      `${wanted} among: ${names.join(" | ")}`,
+    ).toBe(true);
+  }
+  expect(seen.filter(({ ring }) => !ring).map(({ name }) => name)).toEqual([]);
+}, 120_000);
