@@ -64,7 +64,7 @@ export function machinePicture(spec: PendulumSpec, scenario: Scenario, result: R
   const visitedM = Math.max(Math.abs(travelled.min), Math.abs(travelled.max), reachM * 0.7) * 1.1;
   const halfM = Math.min(spec.halfTrackM ?? visitedM, reachM * 100);
   const narrow = width < 260;
-  const longest = narrow ? 127 : 180;
+  const longest = narrow ? 112 : 180;
   const rail = width - 2 * END;
   const fitting = Math.min(rail / (2 * halfM), longest / reachM);
   const pixelsPerM = Math.max(fitting, Math.min(60, longest) / reachM);

@@ -6,7 +6,7 @@ export function MachineRail({ picture, reference }: { picture: MachinePicture; r
   const { width, halfM, pixelsPerM, ends, railY, labelY, hanging, positionLimits } = picture;
   const xOf = (metres: number) => width / 2 + metres * pixelsPerM;
   const [left, right] = [xOf(-halfM), xOf(halfM)];
-  const { inked, labels } = neatScale(-halfM, halfM, 40 / pixelsPerM, "m");
+  const { inked, labels } = neatScale(-halfM, halfM, 35 / pixelsPerM, "m");
   const rockTop = hanging ? railY - 2 : railY - 22;
   const arrow = hanging ? `M-5 ${labelY - 22}h10l-5 7z` : `M-5 ${labelY + 12}h10l-5 -7z`;
   return (

@@ -198,19 +198,22 @@ function paintTitle(ctx: Ctx, frame: Frame, lane: PlotLane): void {
     x += ctx.measureText(text).width;
   };
   add(label, FONT.strong(palette));
-  if (symbol !== "" && symbol !== label) {
+  if (isLetter(symbol)) {
     x += 4;
     add(symbol, FONT.symbol(palette));
   }
   if (unit !== "") add(`, ${unit}`, FONT.title(palette));
 }
 
+/** A letter of the field, accents counted apart; a name that only repeats the label is not shown. */
+const isLetter = (symbol: string): boolean => symbol !== "" && symbol.length <= 3;
+
 /** Width of a plot's title, so that the value at the cursor keeps clear of it. */
 export function titleWidth(ctx: Ctx, palette: Pick<Palette, "face">, { label, symbol, unit }: PlotLane["signal"]): number {
   ctx.font = FONT.strong(palette);
   let width = ctx.measureText(label).width;
   ctx.font = FONT.title(palette);
-  if (symbol !== "" && symbol !== label) width += 4 + ctx.measureText(symbol).width;
+  if (isLetter(symbol)) width += 4 + ctx.measureText(symbol).width;
   return width + (unit === "" ? 0 : ctx.measureText(`, ${unit}`).width);
 }
 

@@ -2,7 +2,7 @@
  * Cursor and zoom of one run. Pictures that share a time axis share one of these. It lives outside React: a pointer that
  * moves 60 times a second tells its listeners once per frame, and they write to their own canvas or SVG.
  */
-import { createContext, useContext, useEffect, useRef, useState, useSyncExternalStore } from "react";
+import { createContext, useContext, useEffect, useRef, useSyncExternalStore } from "react";
 
 export interface View {
   fromS: number;
@@ -139,10 +139,4 @@ export function useOnCursor(draw: (cursor: PlotCursor) => void): void {
 export function useCursorValue<T extends string | number | boolean>(select: (cursor: PlotCursor) => T): T {
   const cursor = usePlotCursor();
   return useSyncExternalStore(cursor.subscribe, () => select(cursor));
-}
-
-/** A cursor that lives as long as this component, for a run of this length. */
-export function useOwnPlotCursor(durationS: number, timeS: number): PlotCursor {
-  const [cursor] = useState(() => createPlotCursor(durationS, timeS));
-  return cursor;
 }

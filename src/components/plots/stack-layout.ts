@@ -90,7 +90,7 @@ export function layOutStack(result: RunResult, signals: readonly PlotSignal[], w
   let y = 5 + eventRows * EVENT_ROW;
   const plots = signals.map((signal, index): PlotLane => {
     if (index > 0) y += BETWEEN;
-    const height = Math.round((signal.command ? 70 : index === 0 ? 126 : signals.length > 5 ? 80 : 104) * (narrow ? 0.88 : 1));
+    const height = Math.round((signal.command ? 70 : index === 0 ? 126 : signals.length > 5 ? 80 : 104) * (narrow ? 0.8 : 1));
     const lane = { signal, titleY: y + 17, top: y + TITLE, height };
     y += TITLE + height;
     return lane;

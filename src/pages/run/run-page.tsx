@@ -159,12 +159,12 @@ function Whole({ run, scenario, record }: { run: RunDetail; scenario: Scenario; 
       <div className="run-parts">
         <div>
           <EventList scenario={scenario} result={result} cursor={cursor} />
+          <MessageTable result={result} />
           <DigestCheck run={run} scenario={scenario} engine={engine} />
         </div>
         <div>
           <LimitTable scenario={scenario} result={result} />
           <SignalTable scenario={scenario} result={result} />
-          <MessageTable result={result} />
         </div>
       </div>
     </>
