@@ -2,7 +2,7 @@
 import { apiPaths } from "#shared/api/paths.ts";
 import { healthResponse } from "#shared/api/session.ts";
 
-export type Connection = "up" | "server-down" | "database-down";
+type Connection = "up" | "server-down" | "database-down";
 
 const FIRST_WAIT_MS = 1000;
 const LONGEST_WAIT_MS = 5000;

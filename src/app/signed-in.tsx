@@ -5,6 +5,7 @@ import { useSessionQuery } from "#src/api/session/get-session.ts";
 import { sessionExpiry } from "#src/api/session-expiry.ts";
 import { QueryError } from "#src/components/ui/query-error.tsx";
 import { Loading } from "#src/components/ui/states.tsx";
+import { BareTop } from "./bare-top.tsx";
 import { Layout } from "./layout.tsx";
 import { paths } from "./paths.ts";
 import { type Session, SessionContext } from "./session.tsx";
@@ -33,18 +34,14 @@ export function SignedIn() {
       </SessionContext>
     );
   }
-  if (query.isError) {
+  if (query.isError || !query.data) {
     return (
-      <main className="page">
-        <QueryError error={query.error} what="Holdfast" onRetry={() => void refetch()} />
-      </main>
-    );
-  }
-  if (!query.data) {
-    return (
-      <main className="page">
-        <Loading what="Holdfast opens" />
-      </main>
+      <>
+        <BareTop />
+        <main className="page">
+          {query.isError ? <QueryError error={query.error} what="Holdfast" onRetry={() => void refetch()} /> : <Loading what="Holdfast opens" />}
+        </main>
+      </>
     );
   }
   return <Navigate to={paths.signIn(location.pathname + location.search)} replace />;

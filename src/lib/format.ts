@@ -76,8 +76,7 @@ export const withArticle = (word: string): string => `${/^[aeiou]/i.test(word) ?
 
 const MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"];
 const two = (value: number): string => String(value).padStart(2, "0");
-/** "14:32" */
-export const clockText = (at: Date): string => `${two(at.getHours())}:${two(at.getMinutes())}`;
+const clockText = (at: Date): string => `${two(at.getHours())}:${two(at.getMinutes())}`;
 const dayNumber = (at: Date): number => Math.round(Date.UTC(at.getFullYear(), at.getMonth(), at.getDate()) / 86_400_000);
 
 /** "Today 14:32", "Yesterday", "28 Nov", "28 Nov 2024"; in the time zone of this browser. */

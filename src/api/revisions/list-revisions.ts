@@ -9,7 +9,7 @@ export interface PageOfRevisions {
   pageSize: number;
 }
 
-export const revisionListOptions = (teamId: string, scenarioId: string, { page, pageSize }: PageOfRevisions) =>
+const revisionListOptions = (teamId: string, scenarioId: string, { page, pageSize }: PageOfRevisions) =>
   queryOptions({
     queryKey: [...scenarioKeys.one(teamId, scenarioId), "revisions", page, pageSize],
     queryFn: ({ signal }) => request(apiPaths.revisions(teamId, scenarioId) + queryText({ page, pageSize }), revisionListResponse, { signal }),

@@ -6,7 +6,7 @@ import { request } from "../client.ts";
 export const runKey = (teamId: string, runId: string) => ["teams", teamId, "runs", runId] as const;
 
 /** A kept run never changes. */
-export const runOptions = (teamId: string, runId: string) =>
+const runOptions = (teamId: string, runId: string) =>
   queryOptions({
     queryKey: runKey(teamId, runId),
     queryFn: ({ signal }) => request(apiPaths.run(teamId, runId), runDetailSchema, { signal }),

@@ -15,7 +15,7 @@ async function getSeries(teamId: string, runId: string, signal: AbortSignal) {
 }
 
 /** Large: dropped from memory a minute after the last view of it is gone. */
-export const seriesOptions = (teamId: string, runId: string) =>
+const seriesOptions = (teamId: string, runId: string) =>
   queryOptions({
     queryKey: [...runKey(teamId, runId), "series"],
     queryFn: ({ signal }) => getSeries(teamId, runId, signal),

@@ -4,7 +4,7 @@ import { type RunListQuery, runListResponse } from "#shared/api/runs.ts";
 import { queryText, request } from "../client.ts";
 import { scenarioKeys } from "../scenarios/keys.ts";
 
-export const runListOptions = (teamId: string, scenarioId: string, query: RunListQuery) =>
+const runListOptions = (teamId: string, scenarioId: string, query: RunListQuery) =>
   queryOptions({
     queryKey: [...scenarioKeys.one(teamId, scenarioId), "runs", query],
     queryFn: ({ signal }) => request(apiPaths.runs(teamId, scenarioId) + queryText(query), runListResponse, { signal }),

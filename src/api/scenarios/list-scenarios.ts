@@ -4,7 +4,7 @@ import { type ScenarioListQuery, scenarioListResponse } from "#shared/api/scenar
 import { queryText, request } from "../client.ts";
 import { scenarioKeys } from "./keys.ts";
 
-export const scenarioListOptions = (teamId: string, query: ScenarioListQuery) =>
+const scenarioListOptions = (teamId: string, query: ScenarioListQuery) =>
   queryOptions({
     queryKey: [...scenarioKeys.lists(teamId), query],
     queryFn: ({ signal }) => request(apiPaths.scenarios(teamId) + queryText(query), scenarioListResponse, { signal }),

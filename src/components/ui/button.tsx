@@ -3,7 +3,7 @@ import { Link, type LinkProps } from "react-router-dom";
 import { Icon, type IconName } from "./icon.tsx";
 
 /** go: the one filled button of a view; back: takes back or away; bare: "Cancel". */
-export type ButtonKind = "outline" | "go" | "bare" | "back";
+type ButtonKind = "outline" | "go" | "bare" | "back";
 
 interface Look {
   kind?: ButtonKind;

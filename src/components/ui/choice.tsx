@@ -65,7 +65,7 @@ interface PickProps<Value extends string> extends ChoiceProps<Value> {
 }
 
 /** One of many: the browser's own list, on a rule. */
-export function Pick<Value extends string>({ id, label, options, value, onChoose, disabled, hideLabel }: PickProps<Value>) {
+function Pick<Value extends string>({ id, label, options, value, onChoose, disabled, hideLabel }: PickProps<Value>) {
   return (
     <span className="pick">
       <select

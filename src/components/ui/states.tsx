@@ -18,7 +18,7 @@ export function Loading({ what = "Loading" }: { what?: string }) {
 }
 
 /** A sounding over open water: something was looked for and not found. */
-export const Sounding = () => (
+const Sounding = () => (
   <svg width="220" height="70" viewBox="0 0 220 70" aria-hidden="true">
     <line x1="0" y1="22" x2="220" y2="22" className="surf" />
     <path d="M0 22C40 60 70 30 110 50S180 40 220 62" className="bed" />

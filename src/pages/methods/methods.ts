@@ -1,5 +1,5 @@
 /** What the engine computes, formula by formula, with the published source. Kept beside the docstrings of shared/. */
-export interface Method {
+interface Method {
   title: string;
   text: string;
   formulas?: readonly string[];

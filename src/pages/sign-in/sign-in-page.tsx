@@ -1,12 +1,10 @@
 import { Navigate, useSearchParams } from "react-router-dom";
 import { useSessionQuery } from "#src/api/session/get-session.ts";
 import { useSignIn } from "#src/api/session/sign-in.ts";
+import { BareTop } from "#src/app/bare-top.tsx";
 import { Cautions } from "#src/app/cautions.tsx";
 import { DocumentTitle } from "#src/app/document-title.tsx";
 import { paths } from "#src/app/paths.ts";
-import { turnTheme } from "#src/app/theme.ts";
-import { IconButton } from "#src/components/ui/button.tsx";
-import { Logo } from "#src/components/ui/icon.tsx";
 import { DemoSignIns } from "./demo-sign-ins.tsx";
 import { SignInForm } from "./sign-in-form.tsx";
 
@@ -21,17 +19,7 @@ export function SignInPage() {
   return (
     <div className="shell">
       <DocumentTitle>Sign in</DocumentTitle>
-      <div className="topwrap">
-        <header className="top">
-          <span className="brand">
-            <Logo />
-            Holdfast
-          </span>
-          <div className="who">
-            <IconButton kind="bare" icon="theme" label="Turn light and dark" title="Light and dark" onClick={turnTheme} />
-          </div>
-        </header>
-      </div>
+      <BareTop />
       <main className="page">
         <div className="mx-auto max-w-[980px]">
           <div className="title">
