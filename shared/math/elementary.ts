@@ -10,7 +10,5 @@ export { default as tanh } from "@stdlib/math-base-special-tanh";
 
 import sincosBoth from "@stdlib/math-base-special-sincos";
 
-/** Writes sin(x) to out[0] and cos(x) to out[1]. */
-export const sincos = (x: number, out: Float64Array): void => {
-  sincosBoth.assign(x, out, 1, 0);
-};
+/** sincos(x, out, stride, offset) writes sin(x) to out[offset] and cos(x) to out[offset + stride]. */
+export const sincos: (x: number, out: Float64Array, stride: number, offset: number) => void = sincosBoth.assign;

@@ -23,7 +23,7 @@ export function normalStream(uniform: Uniform): () => number {
       return spare;
     }
     const radius = Math.sqrt(-2 * ln(1 - uniform()));
-    sincos(2 * Math.PI * uniform(), pair);
+    sincos(2 * Math.PI * uniform(), pair, 1, 0);
     spare = radius * pair[0];
     hasSpare = true;
     return radius * pair[1];

@@ -84,7 +84,7 @@ export class Pendulum implements Plant {
 
   derivative(dx: Float64Array, x: Float64Array, u: Float64Array, d: Float64Array): void {
     const trig = this.#trig;
-    sincos(x[1], trig);
+    sincos(x[1], trig, 1, 0);
     const v = x[2];
     const w = x[3];
     const inertia = this.#inertia;
@@ -102,7 +102,7 @@ export class Pendulum implements Plant {
 
   impulse(x: Float64Array, channel: number, size: number): void {
     const trig = this.#trig;
-    sincos(x[1], trig);
+    sincos(x[1], trig, 1, 0);
     const mc = this.#ml * trig[1];
     const scale = size / (this.#totalMass * this.#inertia - mc * mc);
     x[2] += (channel === 0 ? this.#inertia : -mc) * scale;
@@ -139,7 +139,7 @@ export class Pendulum implements Plant {
   /** Kinetic and potential energy, J; the latter is 0 at the pivot's height. */
   energy(x: Float64Array): number {
     const trig = this.#trig;
-    sincos(x[1], trig);
+    sincos(x[1], trig, 1, 0);
     const mc = this.#ml * trig[1];
     return 0.5 * this.#totalMass * x[2] * x[2] + mc * x[2] * x[3] + 0.5 * this.#inertia * x[3] * x[3] + this.#mgl * trig[1];
   }

@@ -45,6 +45,9 @@ function traces(raw: Raw): Trace[] {
   return [...plant.outputs.map(ofOutput), ...plant.inputs.map((_, j) => ofInput(j))];
 }
 
+/** A view of part of a buffer as an array of its own, so that sending a result does not send what lies behind it. */
+const whole = (view: Float64Array): Float64Array => (view.byteLength === view.buffer.byteLength ? view : view.slice());
+
 export function assemble(raw: Raw): RunResult {
   const { plant, recorder, scenario, timing, seed, deliveries, design } = raw;
   const loop = scenario.loops[0];
@@ -78,7 +81,7 @@ export function assemble(raw: Raw): RunResult {
     durationS: scenario.run.durationS,
     endedAtS: raw.endedNs / 1e9,
     ended: raw.ended,
-    series: { t: t.slice(), columns, values: values.map((series) => series.slice()) },
+    series: { t: whole(t), columns, values: values.map(whole) },
     rounds: {
       count: sampled,
       periodS: timing.periodS,

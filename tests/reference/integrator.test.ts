@@ -1,6 +1,7 @@
 /** The integrator against the published pair, published test problems and its order. */
 import { describe, expect, it } from "vitest";
-import { type Derivative, Integrator } from "#shared/simulation/integrator.ts";
+import { Integrator } from "#shared/simulation/integrator.ts";
+import type { Derivative } from "#shared/simulation/stages.ts";
 
 const always = () => true;
 
