@@ -1,3 +1,4 @@
+import type { ReactNode } from "react";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
 import { limitParts } from "#shared/simulation/verdict-text.ts";
@@ -5,6 +6,17 @@ import { verdictValue } from "#src/components/drawings/limit-strip.tsx";
 import { formatTime } from "#src/components/plots/units.ts";
 import { MARK_WORDS, Mark } from "#src/components/ui/mark.tsx";
 import { fixed, percentText, quantityText, shownUnit, significant, withUnit } from "#src/lib/format.ts";
+import { useMedia } from "#src/lib/use-media.ts";
+
+/** A table that is wider than a phone scrolls by itself; then keys have to reach it. */
+function Scroller({ label, children }: { label: string; children: ReactNode }) {
+  const narrow = useMedia("(max-width: 719px)");
+  return (
+    <section className="scroll-x" aria-label={label} tabIndex={narrow ? 0 : undefined}>
+      {children}
+    </section>
+  );
+}
 
 interface OfRun {
   scenario: Scenario;
@@ -18,7 +30,7 @@ export function LimitTable({ scenario, result }: OfRun) {
       <div className="hrow">
         <h2 id="run-limits">Limits</h2>
       </div>
-      <div className="scroll-x">
+      <Scroller label="Table of the limits">
         <table className="t">
           <thead>
             <tr>
@@ -56,7 +68,7 @@ export function LimitTable({ scenario, result }: OfRun) {
             })}
           </tbody>
         </table>
-      </div>
+      </Scroller>
     </section>
   );
 }
@@ -84,7 +96,7 @@ export function SignalTable({ scenario, result }: OfRun) {
           ].join(" · ")}
         </span>
       </div>
-      <div className="scroll-x">
+      <Scroller label="Table of the figures">
         <table className="t">
           <thead>
             <tr>
@@ -120,7 +132,7 @@ export function SignalTable({ scenario, result }: OfRun) {
             })}
           </tbody>
         </table>
-      </div>
+      </Scroller>
     </section>
   );
 }
@@ -136,7 +148,7 @@ export function MessageTable({ result }: { result: RunResult }) {
           {result.rounds.count} rounds of {withUnit(significant(result.rounds.periodS * 1000, 4), "ms")}
         </span>
       </div>
-      <div className="scroll-x">
+      <Scroller label="Table of the messages">
         <table className="t">
           <thead>
             <tr>
@@ -175,7 +187,7 @@ export function MessageTable({ result }: { result: RunResult }) {
             ))}
           </tbody>
         </table>
-      </div>
+      </Scroller>
     </section>
   );
 }
