@@ -3,7 +3,8 @@
 /** Thin space and word joiner: number and unit stay together. */
 export const THIN = "\u2009\u2060";
 
-const trueMinus = (text: string): string => (/[1-9]/.test(text) ? text : text.replace("-", "")).replaceAll("-", "\u2212");
+/** A hyphen becomes a minus; "-0.0" loses it. */
+export const trueMinus = (text: string): string => (/[1-9]/.test(text) ? text : text.replace("-", "")).replaceAll("-", "\u2212");
 
 /** So many significant digits, without trailing zeros; powers of ten below 1e-4 and from 1e6 on. */
 export function significant(value: number, digits = 3): string {

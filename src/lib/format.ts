@@ -1,48 +1,11 @@
 /** Numbers with their units, and times, as people read them. Stored values are SI; the screen shows degrees, ms, mm and %. */
 
-/** Thin space and word joiner: number and unit stay together. */
-export const THIN = "\u2009\u2060";
-const MINUS = "\u2212";
+import { trueMinus, withUnit } from "#shared/scenario/show.ts";
 
-/** "0.188" + "m"; no space before a degree sign. */
-export const withUnit = (number: string, unit: string): string =>
-  unit === "" ? number : unit.startsWith("°") ? `${number}${unit}` : `${number}${THIN}${unit}`;
-
-const trueMinus = (text: string): string => (/[1-9]/.test(text) ? text : text.replace("-", "")).replaceAll("-", MINUS);
+export { quantityText, type Shown, shownUnit, significant, THIN, withUnit } from "#shared/scenario/show.ts";
 
 /** Fixed decimals, true minus, never "−0.0". */
 export const fixed = (value: number, decimals: number): string => (Number.isFinite(value) ? trueMinus(value.toFixed(decimals)) : "none");
-
-/** So many significant digits, without trailing zeros; powers of ten written as "1.2e6" below 1e-4 and from 1e6 on. */
-export function significant(value: number, digits = 3): string {
-  if (!Number.isFinite(value)) return "none";
-  const size = Math.abs(value);
-  if (size !== 0 && (size >= 1e6 || size < 1e-4)) {
-    const [mantissa = "0", exponent = "0"] = value.toExponential(digits - 1).split("e");
-    return trueMinus(`${mantissa.includes(".") ? mantissa.replace(/\.?0+$/, "") : mantissa}e${Number(exponent)}`);
-  }
-  return trueMinus(String(Number(value.toPrecision(digits))));
-}
-
-export interface Shown {
-  unit: string;
-  /** Shown value = stored value x factor. */
-  factor: number;
-}
-
-const DEGREES = 180 / Math.PI;
-
-/** Radians become degrees; all else stays. Finer choices (ms, mm, %) belong to the quantity and are made where it is shown. */
-export function shownUnit(unit: string): Shown {
-  if (unit === "rad" || unit.startsWith("rad/")) return { unit: `°${unit.slice(3)}`, factor: DEGREES };
-  return { unit, factor: 1 };
-}
-
-/** Stored value with the unit that the screen uses. */
-export function quantityText(value: number, unit: string, digits = 3): string {
-  const shown = shownUnit(unit);
-  return withUnit(significant(value * shown.factor, digits), shown.unit);
-}
 
 /** "25 ms", "2.5 ms", "1200 ms" */
 export const msText = (seconds: number, digits = 3): string => withUnit(String(Number((seconds * 1000).toPrecision(Math.max(digits, 3)))), "ms");
