@@ -4,6 +4,12 @@ import { createPlotCursor, PlotCursorContext, useOnCursor } from "#src/component
 
 const frame = () => act(() => new Promise((resolve) => requestAnimationFrame(() => resolve(undefined))));
 
+function Picture({ onRender, onDraw }: { onRender: () => void; onDraw: (timeS: number) => void }) {
+  onRender();
+  useOnCursor(({ timeS }) => onDraw(timeS));
+  return null;
+}
+
 describe("the cursor of a run", () => {
   it("stays inside the run and takes the zoomed view along", () => {
     const cursor = createPlotCursor(10, 4);
@@ -43,14 +49,9 @@ describe("the cursor of a run", () => {
     const cursor = createPlotCursor(10);
     const drawn: number[] = [];
     const rendered = vi.fn();
-    function Picture() {
-      rendered();
-      useOnCursor(({ timeS }) => drawn.push(timeS));
-      return null;
-    }
     render(
       <PlotCursorContext value={cursor}>
-        <Picture />
+        <Picture onRender={rendered} onDraw={(timeS) => drawn.push(timeS)} />
       </PlotCursorContext>,
     );
     for (let i = 1; i <= 60; i++) cursor.moveTo(i / 10);
