@@ -78,7 +78,7 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
         </div>
         <div className="acts">
           <Button onClick={() => downloadJson(`${scenario.name} revision ${detail.number}`, scenario)}>Export as JSON</Button>
-          <Button onClick={() => navigate(here, { state: { restore: { revision: detail.number, scenario } } })}>Go on from it</Button>
+          <Button onClick={() => navigate(here, { state: { restore: { revision: detail.number, scenario } } })}>Restore as a draft</Button>
           <LinkButton kind="go" to={here}>
             To revision {data.latest.number}
           </LinkButton>

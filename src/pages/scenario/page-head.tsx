@@ -102,9 +102,10 @@ export function PageHead(props: PageHeadProps) {
               {saved ? (
                 "Saved"
               ) : (
-                <>
-                  Save <span className="wide-only">revision</span> {revision + 1}
-                </>
+                <span>
+                  Save <span className="wide-only">revision </span>
+                  {revision + 1}
+                </span>
               )}
             </Button>
           )}

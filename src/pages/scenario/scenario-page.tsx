@@ -44,16 +44,25 @@ function WithDraft({ data }: { data: ScenarioResponse }) {
   const team = useTeam();
   const client = useQueryClient();
   const store = useMemo(() => browserStore(draftKey(data.id, user.id)), [data.id, user.id]);
-  const [visit, setVisit] = useState(() => ({ count: 0, found: store.read() }));
+  // Decided once a visit: a revision that is saved from here, or by somebody else, does not open the page anew.
+  const [visit, setVisit] = useState(() => ({ count: 0, found: store.read(), newest: data.latest }));
   const startOver = useCallback(async () => {
-    await client.fetchQuery({ ...scenarioOptions(team.id, data.id), staleTime: 0 }).catch(() => null);
-    setVisit(({ count }) => ({ count: count + 1, found: store.read() }));
+    const fresh = await client.fetchQuery({ ...scenarioOptions(team.id, data.id), staleTime: 0 }).catch(() => null);
+    setVisit(({ count, newest }) => ({ count: count + 1, found: store.read(), newest: fresh?.latest ?? newest }));
   }, [client, team.id, data.id, store]);
-  const { found } = visit;
-  const older = found?.state === "open" && found.draft && found.base < data.latest.number ? found : null;
-  const latest = { revision: data.latest.number, scenario: data.latest.scenario };
-  if (older) return <OnOlderBase key={visit.count} {...{ data, store, onOtherBase: startOver }} found={older} />;
-  return <Workshop key={visit.count} data={data} base={latest} store={store} found={found} onOtherBase={startOver} />;
+  const { found, newest, count } = visit;
+  if (found?.state === "open" && found.draft && found.base < newest.number)
+    return <OnOlderBase key={count} data={data} store={store} found={found} onOtherBase={startOver} />;
+  return (
+    <Workshop
+      key={count}
+      data={data}
+      base={{ revision: newest.number, scenario: newest.scenario }}
+      store={store}
+      found={found}
+      onOtherBase={startOver}
+    />
+  );
 }
 
 interface OnOlderBaseProps {

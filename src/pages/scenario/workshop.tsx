@@ -40,6 +40,7 @@ import { type Base, useDraft } from "./use-draft.ts";
 import { useEngine } from "./use-engine.ts";
 import { useKeys } from "./use-keys.ts";
 import { useSaving } from "./use-saving.ts";
+import { useTold } from "./use-told.ts";
 
 interface WorkshopProps {
   data: ScenarioResponse;
@@ -127,7 +128,8 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
       setOpen({ kind: "save" });
     }
   };
-  useKeys({ undo: control.undo, redo: control.redo, save: askToSave });
+  const history = useTold(control, folds);
+  useKeys({ undo: history.undo, redo: history.redo, save: askToSave });
 
   const cannotKeep = !team.may("make-runs")
     ? `Keeping runs is for ${listed(
@@ -145,6 +147,9 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
   return (
     <div className="workshop" data-view={view}>
       <DocumentTitle>{name}</DocumentTitle>
+      <p className="vh" role="status">
+        {history.told}
+      </p>
       <PageHead
         teamId={team.id}
         scenarioId={data.id}
@@ -157,8 +162,8 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
         runs={runs.data?.total}
         canUndo={control.canUndo}
         canRedo={control.canRedo}
-        onUndo={control.undo}
-        onRedo={control.redo}
+        onUndo={history.undo}
+        onRedo={history.redo}
         onShowChanges={() => setOpen({ kind: "changes" })}
         onSave={askToSave}
         saveImpossible={trying ? undefined : cannotSave}
@@ -257,7 +262,7 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
           onRead={(scenario) => {
             control.edit({ kind: "replace", draft: cleanDraft(scenario) });
             setOpen(null);
-            toast({ text: `“${scenario.name}” is on the bench, unsaved.`, action: { word: "Undo", onPress: control.undo } });
+            toast({ text: `“${scenario.name}” is on the bench, unsaved; undo brings back what was.` });
           }}
           onClose={() => setOpen(null)}
         />
@@ -270,7 +275,7 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
           onDiscard={() => {
             control.discard();
             setOpen(null);
-            toast({ text: "Your changes are discarded.", action: { word: "Undo", onPress: control.undo } });
+            toast({ text: "Your changes are discarded; undo brings them back." });
           }}
           onClose={() => setOpen(null)}
         />

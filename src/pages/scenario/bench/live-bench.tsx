@@ -1,4 +1,4 @@
-import type { ReactNode } from "react";
+import { memo, type ReactNode } from "react";
 import { verdictSentence } from "#shared/simulation/verdict-text.ts";
 import { RunBench } from "#src/components/drawings/run-bench.tsx";
 import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
@@ -20,6 +20,9 @@ interface LiveBenchProps {
   /** Beside the seed: keeping the run. */
   actions: ReactNode;
 }
+
+/** Drawn again when there is another run, not at each key. */
+const Pictures = memo(RunBench);
 
 const LARGEST_SEED = 4_294_967_295;
 
@@ -61,7 +64,7 @@ export function LiveBench({ bench, issues, lastGood, seed, onSeed, onFirstIssue,
           <span className="ml-auto">{actions}</span>
         </div>
         {run ? (
-          <RunBench scenario={run.scenario} timing={run.timing} result={run.result} stale={stale} />
+          <Pictures scenario={run.scenario} timing={run.timing} result={run.result} stale={stale} />
         ) : stale ? (
           <Empty title="No result yet" text="The bench runs as soon as every marked field is put right." />
         ) : broken || cancelled ? (

@@ -29,7 +29,7 @@ function longestLoss(bits: readonly unknown[]): number {
 function counts(value: unknown, { kind, columns }: SequenceAtProps): string {
   if (!Array.isArray(value)) return "";
   if (kind === "numbers") return `${counted(value.length, "value")}, divided by spaces or commas.`;
-  if (kind === "rows") return `${counted(value.length, "round")}; a line holds ${columns?.join(", ").toLowerCase()}.`;
+  if (kind === "rows") return `${counted(value.length, "round")}; a line holds ${columns?.join(", ").toLowerCase()}, in SI units.`;
   const lost = value.filter((bit) => bit === 0).length;
   const share = value.length > 0 ? ` (${percentText(lost / value.length)})` : "";
   return `${counted(value.length, "round")}, ${lost} lost${share}, at most ${longestLoss(value)} in a row. 1 delivered, 0 lost.`;
@@ -52,7 +52,7 @@ export function SequenceAt(props: SequenceAtProps) {
     <div className="su-seq">
       <label htmlFor={id}>
         {label ?? spec.label}
-        {spec.unit.text && <span className="second"> in {spec.unit.text}</span>}
+        {kind === "numbers" && spec.unit.text && <span className="second"> in {spec.unit.text}</span>}
       </label>
       <textarea
         id={id}

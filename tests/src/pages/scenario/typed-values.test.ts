@@ -27,7 +27,8 @@ describe("words and ranges of a field", () => {
     expect(fieldSpec(json, ["loops", 0, "controller", "law", "stateWeights", 1]).unit.text).toBe("1/rad²");
     expect(fieldSpec(json, ["loops", 0, "controller", "law", "stateWeights", 2]).unit.text).toBe("s²/m²");
     expect(fieldSpec(json, ["pushes", 0, "size"]).unit.text).toBe("N\u2009s");
-    expect(fieldSpec(crane, ["changes", 0, "value"])).toMatchObject({ unit: { text: "kg" }, meta: { min: 0.001 } });
+    const loaded = { ...crane, changes: [{ atS: 1, parameter: "rodMassKg", value: 90 }] };
+    expect(fieldSpec(loaded, ["changes", 0, "value"])).toMatchObject({ unit: { text: "kg" }, meta: { min: 0.001 } });
   });
 });
 
