@@ -28,12 +28,18 @@ const children = new Set();
 
 /**
  * Runs a program to its end. `quiet` keeps its output and gives it back; otherwise it goes to standard error.
+ * `whole`: out of reach of Ctrl-C, and waited for when this command is stopped, since broken off it would leave a mess.
  * A program that cannot be found counts as code 127, as in a shell.
  */
-export function run(command, args, { quiet = false, ...options } = {}) {
-  return new Promise((resolve) => {
-    const child = spawn(command, args, { cwd: ROOT, stdio: ["ignore", quiet ? "pipe" : 2, quiet ? "pipe" : 2], ...options });
-    children.add(child);
+export function run(command, args, { quiet = false, whole = false, ...options } = {}) {
+  const ended = new Promise((resolve) => {
+    const child = spawn(command, args, {
+      cwd: ROOT,
+      detached: whole,
+      stdio: ["ignore", quiet ? "pipe" : 2, quiet ? "pipe" : 2],
+      ...options,
+    });
+    if (!whole) children.add(child);
     let output = "";
     child.stdout?.on("data", (chunk) => (output += chunk));
     child.stderr?.on("data", (chunk) => (output += chunk));
@@ -43,6 +49,8 @@ export function run(command, args, { quiet = false, ...options } = {}) {
       resolve({ code: code ?? 1, output: output.trim() });
     });
   });
+  if (whole) onClose(() => ended);
+  return ended;
 }
 
 export const lastLines = (text, count = 15) => text.trimEnd().split("\n").slice(-count).join("\n");
