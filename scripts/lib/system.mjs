@@ -73,6 +73,13 @@ function close() {
   return closing;
 }
 
+/** npm can be killed without a word to its script; what it started ends all the same. */
+function endWithNpm() {
+  if (process.env.npm_lifecycle_event === undefined) return;
+  const parent = process.ppid;
+  setInterval(() => process.ppid !== parent && process.kill(process.pid, "SIGTERM"), 500).unref();
+}
+
 /** The frame of every command: orderly end on Ctrl-C, on SIGTERM and when the terminal is closed; troubles as sentences. */
 export async function command(main) {
   for (const stream of [process.stdout, process.stderr]) stream.on("error", () => {});
@@ -82,6 +89,7 @@ export async function command(main) {
       process.exit(128 + number);
     });
   }
+  endWithNpm();
   try {
     checkNode();
     await main();

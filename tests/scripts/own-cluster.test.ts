@@ -42,15 +42,17 @@ async function end(child: ChildProcess, signal: NodeJS.Signals): Promise<void> {
 }
 
 /** A command that holds the database open; resolves to the database's address. */
-async function hold(env: Record<string, string> = {}): Promise<{ child: ChildProcess; url: string }> {
+async function hold(env: Record<string, string> = {}, by: "node" | "sh" = "node"): Promise<{ child: ChildProcess; url: string }> {
   const { DATABASE_URL: _, ...surroundings } = process.env;
-  const child = spawn(process.execPath, ["scripts/hold.mjs"], { cwd: clone, env: { ...surroundings, ...env }, stdio: ["ignore", "pipe", "pipe"] });
+  const line = [process.execPath, "scripts/hold.mjs"];
+  const [program, ...args] = by === "node" ? line : ["sh", "-c", `${line.join(" ")}; exit`];
+  const child = spawn(program, args, { cwd: clone, env: { ...surroundings, ...env }, stdio: ["ignore", "pipe", "pipe"] });
   running.add(child);
   child.once("exit", () => running.delete(child));
   let said = "";
   child.stderr?.on("data", (chunk) => (said += chunk));
-  const line = once(createInterface({ input: child.stdout as NodeJS.ReadableStream }), "line");
-  const url = await Promise.race([line.then(([text]) => text as string), once(child, "exit").then(() => Promise.reject(new Error(said)))]);
+  const first = once(createInterface({ input: child.stdout as NodeJS.ReadableStream }), "line");
+  const url = await Promise.race([first.then(([text]) => text as string), once(child, "exit").then(() => Promise.reject(new Error(said)))]);
   return { child, url };
 }
 
@@ -87,6 +89,12 @@ it.each(["SIGINT", "SIGTERM", "SIGHUP"] as const)(
   },
   60_000,
 );
+
+it("stops when npm, which started the command, is killed", async () => {
+  const { child, url } = await hold({ npm_lifecycle_event: "start" }, "sh");
+  await end(child, "SIGKILL");
+  await expect.poll(() => ask(url, "select 1").then(String, String), { timeout: 15_000 }).toMatch(/ECONNREFUSED/);
+}, 60_000);
 
 it("is shared by two commands, and stopped by the last of them", async () => {
   const first = await hold();
