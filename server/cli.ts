@@ -68,8 +68,8 @@ function run(file: string, options: { seed?: string; series?: string; rounds?: s
   const outcome = simulate(scenario, seedOf(options.seed));
   if (!outcome.ok) throw new Refused(listed(outcome.issues));
   const { result } = outcome;
-  if (options.series) save(options.series, seriesCsv(result, 17));
-  if (options.rounds) save(options.rounds, roundsCsv(result, scenario, 17));
+  if (options.series) save(options.series, seriesCsv(result));
+  if (options.rounds) save(options.rounds, roundsCsv(result, scenario));
   if (options.explicit) save(options.explicit, `${JSON.stringify(explicitScenario(scenario, result), null, 2)}\n`);
   const { engine, seed, durationS, endedAtS, ended, verdict, limits, figures, events, rounds } = result;
   return {

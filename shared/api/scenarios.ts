@@ -27,6 +27,7 @@ const plantSummarySchema = z.strictObject({
 /** What the small round ribbon needs of RoundTiming, under the same names. */
 export const roundSummarySchema = z.strictObject({
   periodS: z.number(),
+  hops: z.number(),
   slots: z.array(
     z.strictObject({
       message: z.enum(["beacon", "measurement", "command"]),

@@ -30,6 +30,8 @@ export interface Saving {
 
 export interface RoundTiming {
   periodS: number;
+  /** Hop bound H. */
+  hops: number;
   slots: Slot[];
   guardS: number;
   /** Period minus last slot's end minus guard; negative when the round does not fit. */
@@ -218,6 +220,7 @@ export function roundTiming(scenario: Scenario): RoundTiming {
   const s = (ns: number) => ns / 1e9;
   return {
     periodS: s(period),
+    hops: round.hops,
     slots: layout.slots.map((slot) => ({
       message: slot.message,
       label: slot.label,

@@ -1,9 +1,9 @@
-/** Runs as tables for other programs. */
+/** Runs as tables for other programs: SI units, numbers with all their digits. */
 import { createPlant } from "#shared/plants/registry.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "./result.ts";
 
-const format = (digits: number) => (value: number) => (digits >= 17 ? String(value) : String(Number(value.toPrecision(digits))));
+const show = (value: number): string => (Number.isFinite(value) ? String(value) : "");
 
 /** "angle_rad"; characters that do not belong into a column name become _. */
 export const columnName = (name: string, unit: string): string =>
@@ -17,23 +17,21 @@ export const columnName = (name: string, unit: string): string =>
     .filter(Boolean)
     .join("_");
 
-/** One row per grid point: t_s, then every signal in SI units. 17 digits give back the same doubles. */
-export function seriesCsv(result: RunResult, digits: number, fromS = 0, untilS = Number.POSITIVE_INFINITY): string {
+/** One row per grid point: t_s, then every signal. A view keeps the points from its beginning to its end, both included. */
+export function seriesCsv(result: RunResult, view?: { fromS: number; untilS: number }): string {
   const { t, columns, values } = result.series;
-  const show = format(digits);
   const lines = [["t_s", ...columns.map(({ name, unit }) => columnName(name, unit))].join(",")];
   for (let i = 0; i < t.length; i++) {
-    if (t[i] < fromS || t[i] > untilS) continue;
+    if (view && (t[i] < view.fromS || t[i] > view.untilS)) continue;
     lines.push([show(t[i]), ...values.map((series) => show(series[i]))].join(","));
   }
   return `${lines.join("\n")}\n`;
 }
 
-/** One row per round: deliveries, what was measured, the sensor's noise, the estimate and the command. */
-export function roundsCsv(result: RunResult, scenario: Scenario, digits: number): string {
+/** One row per round: deliveries (empty where the placement needs no such message), what was measured, the sensor's noise, the estimate and the command. */
+export function roundsCsv(result: RunResult, scenario: Scenario): string {
   const { rounds } = result;
   const plant = createPlant(scenario.loops[0].plant);
-  const show = format(digits);
   const p = rounds.measured.length;
   const n = rounds.count > 0 ? rounds.estimate.length / rounds.count : 0;
   const { m } = plant;
@@ -57,8 +55,8 @@ export function roundsCsv(result: RunResult, scenario: Scenario, digits: number)
         k,
         at,
         Math.round((at + rounds.latencyS) * 1e9) / 1e9,
-        rounds.measurementDelivered[k],
-        rounds.commandDelivered[k],
+        rounds.hasMeasurementSlot ? rounds.measurementDelivered[k] : "",
+        rounds.hasCommandSlot ? rounds.commandDelivered[k] : "",
         ...row(rounds.measurement, p),
         ...row(rounds.noise, p),
         ...row(rounds.estimate, n),

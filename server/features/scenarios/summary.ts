@@ -1,8 +1,7 @@
 /** What is kept of a scenario beside itself: the table's columns, and what stands for a verdict while there is no run. */
 import type { VerdictLine } from "#shared/api/common.ts";
 import { PLANT_LABELS, plantKind, type RoundSummary } from "#shared/api/scenarios.ts";
-import { designLoop } from "#shared/control/design.ts";
-import { type RoundTiming, roundTiming } from "#shared/network/round.ts";
+import type { RoundTiming } from "#shared/network/round.ts";
 import { checkScenario } from "#shared/scenario/check.ts";
 import type { Issue } from "#shared/scenario/issues.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
@@ -15,11 +14,6 @@ function roundSummary(timing: RoundTiming): RoundSummary {
 
 const DOES_NOT_FIT = new Set(["round-does-not-fit", "payload-too-long"]);
 
-function whatPrevents(scenario: Scenario): Issue[] {
-  const { issues, timing } = checkScenario(scenario);
-  return issues.length > 0 ? issues : designLoop(scenario, timing.ns).issues;
-}
-
 /** A draft that breaks a rule across fields is kept all the same; its verdict says what is wrong. */
 function verdictWithoutRun(issues: Issue[]): VerdictLine {
   const unfit = issues.find((issue) => DOES_NOT_FIT.has(issue.code));
@@ -28,7 +22,7 @@ function verdictWithoutRun(issues: Issue[]): VerdictLine {
 }
 
 export function summarise(scenario: Scenario) {
-  const issues = whatPrevents(scenario);
+  const { issues, timing } = checkScenario(scenario);
   const kind = plantKind(scenario.loops[0].plant);
   return {
     columns: {
@@ -37,7 +31,7 @@ export function summarise(scenario: Scenario) {
       searchText: searchText(scenario.name, PLANT_LABELS[kind]),
       plantKind: kind,
       periodS: scenario.round.periodS,
-      round: roundSummary(roundTiming(scenario)),
+      round: roundSummary(timing),
     },
     unrun: verdictWithoutRun(issues),
     runs: issues.length === 0,

@@ -40,9 +40,9 @@ export const waveShare = (step: number, hops: number): number => Math.min(step, 
 
 const round = (value: number): string => String(Math.round(value * 100) / 100);
 
-export function stairOf(slot: Slot, hops: number | undefined, scale: RibbonScale, base: number, height: number, shiftS = 0): Stair {
+export function stairOf(slot: Slot, hops: number, scale: RibbonScale, base: number, height: number, shiftS = 0): Stair {
   const x = (seconds: number) => scale.xOf(seconds + shiftS);
-  const topOf = (step: number) => base - height * (hops === undefined ? 1 : waveShare(step, Math.min(hops, slot.steps)));
+  const topOf = (step: number) => base - height * waveShare(step, Math.min(hops, slot.steps));
   let path = `M${round(x(slot.floodStartS))} ${round(base)}`;
   const divisions: Stair["divisions"] = [];
   const treads: Stair["treads"] = [];
@@ -51,7 +51,7 @@ export function stairOf(slot: Slot, hops: number | undefined, scale: RibbonScale
     const until = x(slot.floodStartS + step * slot.stepS);
     path += `V${round(topOf(step))}H${round(until)}`;
     if (step > 1) divisions.push({ x: from, top: topOf(step - 1) });
-    if (hops !== undefined && step <= hops) treads.push({ x: (from + until) / 2, top: topOf(step), hop: step });
+    if (step <= hops) treads.push({ x: (from + until) / 2, top: topOf(step), hop: step });
   }
   return {
     slot,

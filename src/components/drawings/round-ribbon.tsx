@@ -9,8 +9,6 @@ import { RibbonLane } from "./ribbon-lane.tsx";
 
 export interface RoundRibbonProps {
   timing: RoundPicture;
-  /** Hop bound: the height of the stairs. Without it the slots are plain blocks with step divisions. */
-  hops?: number;
 }
 
 const ms = (seconds: number) => withUnit(fixed(seconds * 1000, 2), "ms");
@@ -43,17 +41,17 @@ export function placeHeads(items: Omit<Head, "row">[], widthOf: (head: Omit<Head
 }
 
 /** One round to scale: the slots of its floods as stairs, reserve, and below it the loop from sampling to acting. */
-export function RoundRibbon({ timing, hops }: RoundRibbonProps) {
+export function RoundRibbon({ timing }: RoundRibbonProps) {
   const host = useRef<HTMLDivElement>(null);
   const width = Math.max(300, useWidth(host) || 640);
   return (
     <div ref={host} className="ribbon">
-      <Ribbon timing={timing} hops={hops} width={width} />
+      <Ribbon timing={timing} width={width} />
     </div>
   );
 }
 
-function Ribbon({ timing, hops, width }: RoundRibbonProps & { width: number }) {
+function Ribbon({ timing, width }: RoundRibbonProps & { width: number }) {
   const clip = useId();
   const measure = measureWith(pageFace());
   const wide = width >= 480;
@@ -78,8 +76,8 @@ function Ribbon({ timing, hops, width }: RoundRibbonProps & { width: number }) {
   const top = heads ? 6 + rows * 34 : 24;
   const base = top + STAIRS + 10;
 
-  const stairs = timing.slots.map((slot) => stairOf(slot, hops, scale, base, STAIRS));
-  const next = actsLater ? timing.slots.map((slot) => stairOf(slot, hops, scale, base, STAIRS, timing.periodS)) : [];
+  const stairs = timing.slots.map((slot) => stairOf(slot, timing.hops, scale, base, STAIRS));
+  const next = actsLater ? timing.slots.map((slot) => stairOf(slot, timing.hops, scale, base, STAIRS, timing.periodS)) : [];
   const neat = neatScale(0, scale.endS, (scale.endS * leastLabelPx(right - 12)) / (right - 12), "ms", 1000, timing.periodS);
   const inLabels = neat.labels.filter(({ at }) => scale.xOf(at) <= width - 2);
   return (
@@ -133,7 +131,7 @@ function Ribbon({ timing, hops, width }: RoundRibbonProps & { width: number }) {
         )}
         <path d={`M12 ${base + 0.5}H${actsLater ? right : scale.post}`} className="ink" />
         {!timing.fits && <path d={`M${scale.post} ${base + 0.5}H${right}`} className="lim" />}
-        {timing.fits && !actsLater && wide && <NextRound timing={timing} hops={hops} post={scale.post} base={base} xOf={scale.xOf} width={width} />}
+        {timing.fits && !actsLater && wide && <NextRound timing={timing} post={scale.post} base={base} xOf={scale.xOf} width={width} />}
         <rect x="12" y={base + 8} width={right - 12} height="5" className="neat" />
         {neat.inked.map(({ from, until }) => (
           <rect key={from} x={scale.xOf(from)} y={base + 8} width={scale.xOf(until) - scale.xOf(from)} height="5" className="neatf" />
@@ -195,26 +193,12 @@ function StairShape({ stair, base, top, number }: { stair: Stair; base: number; 
 }
 
 /** The beginning of the round that follows. */
-function NextRound({
-  timing,
-  hops,
-  post,
-  base,
-  xOf,
-  width,
-}: {
-  timing: RoundPicture;
-  hops?: number;
-  post: number;
-  base: number;
-  xOf(s: number): number;
-  width: number;
-}) {
+function NextRound({ timing, post, base, xOf, width }: { timing: RoundPicture; post: number; base: number; xOf(s: number): number; width: number }) {
   const first = timing.slots[0];
   if (!first) return null;
   const from = xOf(timing.periodS + first.floodStartS);
   const until = Math.min(width - 4, xOf(timing.periodS + first.floodStartS + first.stepS));
-  const height = hops === undefined ? STAIRS : STAIRS / Math.min(hops, first.steps);
+  const height = STAIRS / Math.min(timing.hops, first.steps);
   return (
     <>
       <path d={`M${post} ${base + 0.5}H${width}`} className="dash" />

@@ -88,7 +88,7 @@ export function RunBench({ scenario, timing, result, stale = false, cursor: give
             <h2>Round</h2>
             <span className="rt">{roundText(scenario, timing)}</span>
           </div>
-          <RoundRibbon timing={timing} hops={scenario.round.hops} />
+          <RoundRibbon timing={timing} />
           <p className="note-line">Stairs: the hop that the flood has reached after each step, at the latest, on a line of nodes without loss.</p>
         </section>
       </div>

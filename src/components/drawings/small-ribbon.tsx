@@ -4,18 +4,16 @@ import { laneParts, type RoundPicture, ribbonScale, ribbonText, stairOf } from "
 
 export interface SmallRibbonProps {
   timing: RoundPicture;
-  /** Hop bound: the height of the stairs. Without it the slots are plain blocks. */
-  hops?: number;
   width?: number;
 }
 
 const BASE = 17;
 
 /** For tables: the same marks as the large ribbon, no text. */
-export function SmallRibbon({ timing, hops, width = 176 }: SmallRibbonProps) {
+export function SmallRibbon({ timing, width = 176 }: SmallRibbonProps) {
   const clip = useId();
   const scale = ribbonScale(timing, 5, width - 5);
-  const stairs = timing.slots.map((slot) => stairOf(slot, hops, scale, BASE, 12.2));
+  const stairs = timing.slots.map((slot) => stairOf(slot, timing.hops, scale, BASE, 12.2));
   const slotsEnd = scale.xOf((timing.slots.at(-1)?.endS ?? 0) + timing.guardS);
   const [samples, acts] = [scale.xOf(timing.sampleAtS), scale.xOf(timing.actAtS)];
   const computes = laneParts(timing).find(({ kind }) => kind === "computes");

@@ -2,9 +2,9 @@ import { type RefObject, useState } from "react";
 import type { RunDetail } from "#shared/api/runs.ts";
 import type { SeriesRecord } from "#shared/api/series.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
+import { roundsCsv, seriesCsv } from "#shared/simulation/csv.ts";
 import { explicitScenario } from "#shared/simulation/explicit.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
-import { roundsCsv, seriesCsv } from "#src/components/plots/export-csv.ts";
 import type { PlotCursor } from "#src/components/plots/plot-cursor.ts";
 import type { PlotStackHandle } from "#src/components/plots/plot-stack.tsx";
 import { formatTime } from "#src/components/plots/units.ts";
@@ -55,7 +55,7 @@ export function ExportMenu({ run, scenario, record, result, cursor, stack, engin
 
   const series = make(async () => download(file("series.csv"), seriesCsv(await whole()), CSV));
   const visible = make(async () => download(file("series-part.csv"), seriesCsv(await whole(), cursor.view), CSV));
-  const rounds = make(async () => download(file("rounds.csv"), roundsCsv(await whole()), CSV));
+  const rounds = make(async () => download(file("rounds.csv"), roundsCsv(await whole(), scenario), CSV));
   const json = make(async () => download(file("run.json"), runJson(scenario, await whole(), run.digest), "application/json"));
   const explicit = make(async () =>
     download(file("explicit.json"), `${JSON.stringify(explicitScenario(scenario, await whole()))}\n`, "application/json"),

@@ -22,7 +22,7 @@ export function RoundSection({ timing }: { timing: RoundTiming | null }) {
       <NumberAt path={["round", "periodS"]} />
       {timing && (
         <div className="su-ribbon">
-          <RoundRibbon timing={timing} hops={Number(getAt(json, ["round", "hops"]))} />
+          <RoundRibbon timing={timing} />
           {timing.fits && (
             <p className="note second">
               Reserve {msText(timing.reserveS)}; the shortest period is {msText(timing.shortestPeriodS, 5)}.

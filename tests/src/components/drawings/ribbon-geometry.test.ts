@@ -45,11 +45,6 @@ describe("the stairs of a slot", () => {
     expect(divisions).toHaveLength(slot.steps - 1);
     expect(divisions.slice(3).every(({ top }) => top === 40)).toBe(true);
   });
-  it("are a plain block where the hop bound is not known", () => {
-    const { treads, divisions } = stairOf(slot, undefined, scale, 100, 60);
-    expect(treads).toEqual([]);
-    expect(divisions.every(({ top }) => top === 40)).toBe(true);
-  });
   it("begin after the wake-up, on the scale of the round", () => {
     const { path, wake, right } = stairOf(slot, 3, scale, 100, 60);
     expect(wake.until).toBeCloseTo(12 + (slot.floodStartS / timing.periodS) * 600, 6);
