@@ -13,7 +13,7 @@ export default defineConfig({
     projects: [
       {
         extends: true,
-        test: { name: "unit", include: ["tests/{shared,reference,architecture}/**/*.test.ts"], setupFiles: CONSOLE },
+        test: { name: "unit", include: ["tests/{shared,reference,architecture}/**/*.test.ts"], setupFiles: CONSOLE, testTimeout: 60_000 },
       },
       {
         extends: true,

@@ -22,6 +22,16 @@ holdfast round FILE
 holdfast schema
 FILE may be - for standard input. JSON goes to standard output.`;
 
+/** The format as JSON Schema; what only our own forms need of a number is left out. */
+function jsonSchema(): unknown {
+  return z.toJSONSchema(scenarioSchema, {
+    io: "input",
+    override: ({ jsonSchema: part }) => {
+      delete part.quantity;
+    },
+  });
+}
+
 /** Something the caller can put right; printed as it is. */
 class Refused extends Error {}
 
@@ -116,7 +126,7 @@ function main(): unknown {
   const [command, file, ...rest] = positionals;
   if (values.help) return USAGE;
   if (rest.length > 0) throw new Refused(`${rest.join(" ")}: one file at a time.\n${USAGE}`);
-  if (command === "schema" && !file) return z.toJSONSchema(scenarioSchema, { io: "input" });
+  if (command === "schema" && !file) return jsonSchema();
   if (!file || (command !== "run" && command !== "round")) throw new Refused(USAGE);
   return command === "run" ? run(file, values) : round(file);
 }
