@@ -17,7 +17,13 @@ export default defineConfig({
       },
       {
         extends: true,
-        test: { name: "page", include: ["tests/src/**/*.test.{ts,tsx}"], environment: "jsdom", setupFiles: [CONSOLE, "tests/helpers/dom.ts"] },
+        test: {
+          name: "page",
+          include: ["tests/src/**/*.test.{ts,tsx}"],
+          environment: "jsdom",
+          setupFiles: [CONSOLE, "tests/helpers/dom.ts"],
+          testTimeout: 30_000,
+        },
       },
       {
         extends: true,
@@ -26,6 +32,7 @@ export default defineConfig({
           include: ["tests/{server,scripts}/**/*.test.ts"],
           globalSetup: "tests/helpers/cluster.ts",
           setupFiles: CONSOLE,
+          testTimeout: 30_000,
           hookTimeout: 60_000,
         },
       },
