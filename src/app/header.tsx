@@ -120,7 +120,7 @@ export function Header({ team }: { team: Team | null }) {
           <Menu
             trigger={
               <button type="button" className="initials max-md:hidden" aria-label={`Account of ${session.user.name}`}>
-                {initials(session.user.name)}
+                <span aria-hidden="true">{initials(session.user.name)}</span>
               </button>
             }
           >

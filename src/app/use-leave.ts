@@ -7,9 +7,11 @@ import { paths } from "./paths.ts";
 export function useLeave(): () => void {
   const signOut = useSignOut();
   const toast = useToast();
-  return () =>
-    signOut.mutate(undefined, {
-      onSuccess: () => location.assign(paths.signIn()),
-      onError: (error) => toast({ text: `You are still signed in. ${failureText(error)}` }),
-    });
+  return () => {
+    // The menu that asked is gone when the answer comes, and callbacks given to mutate() would be gone with it.
+    signOut.mutateAsync().then(
+      () => location.assign(paths.signIn()),
+      (error) => toast({ text: `You are still signed in. ${failureText(error)}` }),
+    );
+  };
 }

@@ -1,6 +1,17 @@
 import type { ReactNode } from "react";
+import { useMedia } from "#src/lib/use-media.ts";
 import { Button } from "./button.tsx";
 import { Icon } from "./icon.tsx";
+
+/** A table that is wider than a phone scrolls by itself; then keys have to reach it. */
+export function Scroller({ label, busy = false, children }: { label: string; busy?: boolean; children: ReactNode }) {
+  const narrow = useMedia("(max-width: 719px)");
+  return (
+    <section className="scroll-x" aria-label={label} aria-busy={busy || undefined} tabIndex={narrow ? 0 : undefined}>
+      {children}
+    </section>
+  );
+}
 
 export interface Sorting<Key extends string> {
   by: Key;

@@ -4,7 +4,7 @@ import type { ActivityKind, activityListResponse } from "#shared/api/teams.ts";
 import { useActivity } from "#src/api/teams/list-activity.ts";
 import { QueryError } from "#src/components/ui/query-error.tsx";
 import { Loading } from "#src/components/ui/states.tsx";
-import { Pager } from "#src/components/ui/table.tsx";
+import { Pager, Scroller } from "#src/components/ui/table.tsx";
 import { instantText } from "#src/lib/format.ts";
 
 const PAGE_SIZE = 10;
@@ -46,7 +46,7 @@ export function ActivityRecord({ teamId }: { teamId: string }) {
       </h2>
       {list ? (
         <>
-          <div className="scroll-x" aria-busy={query.isPlaceholderData || undefined}>
+          <Scroller label="Table of the activity" busy={query.isPlaceholderData}>
             <table className="t">
               <thead>
                 <tr>
@@ -74,7 +74,7 @@ export function ActivityRecord({ teamId }: { teamId: string }) {
                 )}
               </tbody>
             </table>
-          </div>
+          </Scroller>
           <Pager
             page={list.page}
             pageSize={list.pageSize}

@@ -21,7 +21,7 @@ export function MembersPage() {
           {members && <span className="rev">{counted(members.length, "member")}</span>}
         </h1>
       </div>
-      <div className="grid items-start gap-x-12 gap-y-8 border-t-rule border-t-ink pt-4 min-[1000px]:grid-cols-[minmax(0,2fr)_minmax(0,3fr)]">
+      <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-x-12 gap-y-8 border-t-rule border-t-ink pt-4 min-[1000px]:grid-cols-[minmax(0,2fr)_minmax(0,3fr)]">
         <section aria-labelledby="members">
           <h2 className="h2" id="members">
             Members

@@ -1,5 +1,6 @@
 import { ACTIONS, type Action, actionText, may, ROLES, type Role } from "#shared/api/permissions.ts";
 import { Icon } from "#src/components/ui/icon.tsx";
+import { Scroller } from "#src/components/ui/table.tsx";
 
 type Answer = "yes" | "no" | "own exercise attempts" | "not their own";
 
@@ -20,7 +21,7 @@ export function RightsTable({ own }: { own: readonly Role[] }) {
       <h2 className="h2" id="rights">
         What each role may do
       </h2>
-      <div className="scroll-x">
+      <Scroller label="Table of the rights">
         <table className="t">
           <thead>
             <tr>
@@ -52,7 +53,7 @@ export function RightsTable({ own }: { own: readonly Role[] }) {
             ))}
           </tbody>
         </table>
-      </div>
+      </Scroller>
       <p className="note muted mt-2">A person can have several roles in a team; their rights add up. Nothing of a team is visible outside it.</p>
     </section>
   );

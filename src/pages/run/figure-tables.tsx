@@ -1,22 +1,11 @@
-import type { ReactNode } from "react";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
 import { limitParts } from "#shared/simulation/verdict-text.ts";
 import { verdictValue } from "#src/components/drawings/limit-strip.tsx";
 import { formatTime } from "#src/components/plots/units.ts";
 import { MARK_WORDS, Mark } from "#src/components/ui/mark.tsx";
+import { Scroller } from "#src/components/ui/table.tsx";
 import { fixed, percentText, quantityText, shownUnit, significant, withUnit } from "#src/lib/format.ts";
-import { useMedia } from "#src/lib/use-media.ts";
-
-/** A table that is wider than a phone scrolls by itself; then keys have to reach it. */
-function Scroller({ label, children }: { label: string; children: ReactNode }) {
-  const narrow = useMedia("(max-width: 719px)");
-  return (
-    <section className="scroll-x" aria-label={label} tabIndex={narrow ? 0 : undefined}>
-      {children}
-    </section>
-  );
-}
 
 interface OfRun {
   scenario: Scenario;

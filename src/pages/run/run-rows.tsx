@@ -27,7 +27,7 @@ const RunLink = ({ teamId, run, now }: { teamId: string; run: RunSummary; now: D
   <Link
     to={paths.run(teamId, run.id)}
     title={instantText(run.createdAt)}
-    aria-label={`Open the run of revision ${run.revision} with seed ${run.seed}, ${instantText(run.createdAt)}`}
+    aria-label={`${whenText(run.createdAt, now)}: open the run of revision ${run.revision} with seed ${run.seed}`}
   >
     {whenText(run.createdAt, now)}
   </Link>

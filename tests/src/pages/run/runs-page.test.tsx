@@ -48,7 +48,7 @@ describe("the runs of a scenario", () => {
   it("lists verdict, delivery, and how a run ended, with a link to each", async () => {
     const early = run({ seed: 77, ended: "diverged", endedAtS: 4.3, verdict: { state: "crosses", word: "Crosses", sentence: "It diverged." } });
     open(listOf([early]));
-    const link = await screen.findByRole("link", { name: /^Open the run of revision 3 with seed 77/ });
+    const link = await screen.findByRole("link", { name: /open the run of revision 3 with seed 77$/ });
     expect(link.getAttribute("href")).toBe(`/teams/${TEAM.id}/runs/${early.id}`);
     const row = screen.getAllByRole("row")[1];
     expect(row?.textContent).toContain("It diverged.");
