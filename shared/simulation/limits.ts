@@ -133,8 +133,8 @@ function within(limit: Extract<Limit, { type: "within" }>, index: number, raw: R
   const endedS = raw.endedNs / 1e9;
   const lo = limit.lo ?? Number.NEGATIVE_INFINITY;
   const hi = limit.hi ?? Number.POSITIVE_INFINITY;
-  const centre = Number.isFinite(lo) && Number.isFinite(hi) ? (lo + hi) / 2 : 0;
-  // How much of the room from the centre (or from zero) to the bound is used.
+  // Rest uses nothing: room is counted from zero where zero is allowed, otherwise from the middle.
+  const centre = Number.isFinite(lo) && Number.isFinite(hi) && (lo >= 0 || hi <= 0) ? (lo + hi) / 2 : 0;
   const shareOf = (value: number): number => {
     if (value > hi || value < lo) {
       const room = value > hi ? hi - centre : centre - lo;

@@ -17,6 +17,11 @@ describe("a limit", () => {
     expect(verdict).toMatchObject({ state: "holds", value: 1, used: 0.5, atS: 0, crossedAtS: null });
   });
 
+  it("counts what is used from rest, not from the middle of lopsided bounds", () => {
+    const [verdict] = decay([{ type: "within", signal: "x1", lo: -0.1, hi: 4 }]).limits;
+    expect(verdict).toMatchObject({ value: 1, used: 0.25 });
+  });
+
   it("is near above 90 % and crossed above 100 %", () => {
     const states = decay([
       { type: "within", signal: "x1", lo: -1.05, hi: 1.05 },
