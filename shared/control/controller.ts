@@ -3,10 +3,10 @@
  * that are shifted, never indexed by the round, so that an analysis can read the same stage as a linear map.
  * Vectors are deviations from the operating point.
  */
-import { addProduct, copy, multiply, setProduct, shiftIn } from "#shared/math/matrix.ts";
-import type { KalmanDesign, LoopDesign } from "./design.ts";
+import { addProduct, copy, setProduct, shiftIn } from "#shared/math/matrix.ts";
+import type { LoopDesign } from "./design.ts";
 import type { Encoder } from "./encoding.ts";
-import { filterGain } from "./riccati.ts";
+import { TimeVaryingFilter } from "./filter.ts";
 
 export interface CommandLimits {
   lo: Float64Array;
@@ -249,43 +249,5 @@ export class StateFeedback implements Controller {
       for (let j = 0; j < m; j++) if (-feedback.ki[j * ni + i] * step * this.limited[j] > 0) further = true;
       if (!further) q[i] += step;
     }
-  }
-}
-
-/** Kalman filter whose covariance shrinks only when a measurement arrives (Sinopoli et al., IEEE TAC 49(9), 2004). */
-class TimeVaryingFilter {
-  readonly #design: LoopDesign;
-  readonly #kalman: KalmanDesign;
-  /** n x n, starts at 0: the estimate at t = 0 is taken as exact. */
-  #covariance: Float64Array;
-
-  constructor(design: LoopDesign, kalman: KalmanDesign) {
-    this.#design = design;
-    this.#kalman = kalman;
-    this.#covariance = new Float64Array(design.model.n * design.model.n);
-  }
-
-  step(k: number, delivered: boolean): Float64Array | null {
-    const { model, c, p } = this.#design;
-    const { n } = model;
-    const phi = k === 0 ? model.start.phi : model.period.phi;
-    const noise = k === 0 ? this.#kalman.processStart : this.#kalman.processPeriod;
-    const carried = multiply(phi, this.#covariance, n, n, n);
-    const prior = new Float64Array(n * n);
-    for (let i = 0; i < n; i++) {
-      for (let j = 0; j <= i; j++) {
-        let sum = noise[i * n + j];
-        for (let s = 0; s < n; s++) sum += carried[i * n + s] * phi[j * n + s];
-        prior[i * n + j] = sum;
-        prior[j * n + i] = sum;
-      }
-    }
-    this.#covariance = prior;
-    if (!delivered) return null;
-    const gain = filterGain(prior, c, this.#kalman.sensor, n, p);
-    if (!gain) return null;
-    const shrink = multiply(multiply(gain, c, n, p, n), prior, n, n, n);
-    this.#covariance = prior.map((value, i) => value - (shrink[i] + shrink[(i % n) * n + Math.floor(i / n)]) / 2);
-    return gain;
   }
 }
