@@ -105,6 +105,7 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
         </SetupForm>
         <LiveBench
           bench={bench}
+          timing={judged.timing}
           issues={judged.issues}
           lastGood={null}
           seed={seed}

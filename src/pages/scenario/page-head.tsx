@@ -4,6 +4,7 @@ import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
 import { Menu, MenuItem, MenuRule } from "#src/components/ui/menu.tsx";
 import { Way } from "#src/components/ui/way.tsx";
 import { counted } from "#src/lib/format.ts";
+import { usePhone } from "./use-phone.ts";
 
 export const changesText = (count: number, trying: boolean): string =>
   trying ? `${counted(count, "value")} tried` : `${counted(count, "unsaved change")}`;
@@ -37,6 +38,7 @@ interface PageHeadProps {
 export function PageHead(props: PageHeadProps) {
   const { teamId, scenarioId, name, machine, revision, note, changes, trying, runs, saveImpossible } = props;
   const saved = changes === 0;
+  const phone = usePhone();
   return (
     <>
       <div className="title">
@@ -69,27 +71,24 @@ export function PageHead(props: PageHeadProps) {
         <div className="acts">
           <ButtonPair label="Undo and redo">
             <IconButton icon="undo" label="Undo (Ctrl+Z)" impossible={props.canUndo ? null : "Nothing to undo."} onClick={props.onUndo} />
-            <IconButton
-              className="wide-only"
-              icon="redo"
-              label="Redo (Ctrl+Shift+Z)"
-              impossible={props.canRedo ? null : "Nothing to redo."}
-              onClick={props.onRedo}
-            />
+            {!phone && (
+              <IconButton icon="redo" label="Redo (Ctrl+Shift+Z)" impossible={props.canRedo ? null : "Nothing to redo."} onClick={props.onRedo} />
+            )}
           </ButtonPair>
-          {props.onDuplicate && (
-            <Button className="wide-only" busy={props.duplicating} onClick={props.onDuplicate}>
+          {props.onDuplicate && !phone && (
+            <Button busy={props.duplicating} onClick={props.onDuplicate}>
               Duplicate
             </Button>
           )}
           <Menu trigger={<IconButton icon="more" label="More" />}>
-            <MenuItem onSelect={props.onRedo} impossible={props.canRedo ? null : "Nothing to redo."}>
-              Redo
-            </MenuItem>
-            <MenuRule />
+            {phone && (
+              <MenuItem onSelect={props.onRedo} impossible={props.canRedo ? null : "Nothing to redo."}>
+                Redo
+              </MenuItem>
+            )}
             <MenuItem onSelect={props.onExport}>Export as JSON</MenuItem>
             <MenuItem onSelect={props.onImport}>Import JSON into this scenario</MenuItem>
-            {props.onDuplicate && <MenuItem onSelect={props.onDuplicate}>Duplicate</MenuItem>}
+            {props.onDuplicate && phone && <MenuItem onSelect={props.onDuplicate}>Duplicate</MenuItem>}
             {props.onRename && <MenuItem onSelect={props.onRename}>Rename</MenuItem>}
             <MenuRule />
             <MenuItem asChild>
@@ -99,14 +98,7 @@ export function PageHead(props: PageHeadProps) {
           </Menu>
           {saveImpossible !== undefined && (
             <Button kind="go" impossible={saveImpossible} onClick={props.onSave} title="Ctrl+S">
-              {saved ? (
-                "Saved"
-              ) : (
-                <span>
-                  Save <span className="wide-only">revision </span>
-                  {revision + 1}
-                </span>
-              )}
+              {saved ? "Saved" : `Save ${phone ? "" : "revision "}${revision + 1}`}
             </Button>
           )}
         </div>

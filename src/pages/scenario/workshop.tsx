@@ -225,6 +225,7 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
         </SetupForm>
         <LiveBench
           bench={bench}
+          timing={judged.timing}
           issues={issues}
           lastGood={lastGoodText(issues, bench.run?.scenario)}
           seed={seed}

@@ -1,16 +1,20 @@
 import { memo, type ReactNode } from "react";
+import type { RoundTiming } from "#shared/network/round.ts";
 import { verdictSentence } from "#shared/simulation/verdict-text.ts";
+import { RoundRibbon } from "#src/components/drawings/round-ribbon.tsx";
 import { RunBench } from "#src/components/drawings/run-bench.tsx";
 import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
 import { Mark, VerdictLine } from "#src/components/ui/mark.tsx";
 import { Empty, Loading } from "#src/components/ui/states.tsx";
-import { counted, significant, withUnit } from "#src/lib/format.ts";
+import { counted, msText, significant, withUnit } from "#src/lib/format.ts";
 import { clockText } from "../clock.ts";
 import type { FieldIssue } from "../model/judge.ts";
 import type { Bench, BenchRun } from "./use-bench.ts";
 
 interface LiveBenchProps {
   bench: Bench;
+  /** Of the round that is being edited, also when it does not fit. */
+  timing: RoundTiming | null;
   issues: readonly FieldIssue[];
   /** Was the last good value of the only bad field: "with plan at 6 steps". */
   lastGood: string | null;
@@ -27,13 +31,13 @@ const Pictures = memo(RunBench);
 const LARGEST_SEED = 4_294_967_295;
 
 /** Verdict, limits, machine, plots, tapes and round of what is being edited. */
-export function LiveBench({ bench, issues, lastGood, seed, onSeed, onFirstIssue, actions }: LiveBenchProps) {
+export function LiveBench({ bench, timing, issues, lastGood, seed, onSeed, onFirstIssue, actions }: LiveBenchProps) {
   const { run, progress, broken, cancelled } = bench;
   const stale = issues.length > 0;
   return (
     <section className="bench sheet doc" aria-label="Live bench" aria-busy={progress !== null}>
       <div className="pad">
-        <Head {...{ bench, issues, lastGood, stale, onFirstIssue }} />
+        <Head {...{ bench, timing, issues, lastGood, stale, onFirstIssue }} />
         <div className="bench-acts">
           <ButtonPair label="Seed">
             <SeedStep icon="left" label="The seed before" run={run} step={-1} onSeed={onSeed} />
@@ -66,7 +70,17 @@ export function LiveBench({ bench, issues, lastGood, seed, onSeed, onFirstIssue,
         {run ? (
           <Pictures scenario={run.scenario} timing={run.timing} result={run.result} stale={stale} />
         ) : stale ? (
-          <Empty title="No result yet" text="The bench runs as soon as every marked field is put right." />
+          <>
+            <Empty title="No result yet" text="The bench runs as soon as every marked field is put right." />
+            {timing && (
+              <section className="bench-round-only" aria-label="Round">
+                <div className="hrow">
+                  <h2>Round</h2>
+                </div>
+                <RoundRibbon timing={timing} />
+              </section>
+            )}
+          </>
         ) : broken || cancelled ? (
           <Empty title={broken ? "The engine stopped" : "The run was stopped"} text={broken ? "Nothing that you entered is lost." : undefined}>
             <Button onClick={bench.again}>Run it again</Button>
@@ -106,13 +120,9 @@ function SeedStep({
   );
 }
 
-function Head({
-  bench,
-  issues,
-  lastGood,
-  stale,
-  onFirstIssue,
-}: Pick<LiveBenchProps, "bench" | "issues" | "lastGood" | "onFirstIssue"> & { stale: boolean }) {
+type HeadProps = Pick<LiveBenchProps, "bench" | "timing" | "issues" | "lastGood" | "onFirstIssue"> & { stale: boolean };
+
+function Head({ bench, timing, issues, lastGood, stale, onFirstIssue }: HeadProps) {
   const { run, cancelled, broken } = bench;
   const basis = run && (
     <span>
@@ -120,20 +130,14 @@ function Head({
     </span>
   );
   if (stale) {
-    const fields = `${countOf(issues.length)} in the set-up ${issues.length === 1 ? "has" : "have"} to be put right first.`;
+    const unfit = timing !== null && !timing.fits;
     return (
       <div className="verdict">
-        <Mark state="not-decided" size={20} quiet />
+        <Mark state={unfit ? "does-not-fit" : "not-decided"} size={20} quiet />
         <p className="say" role="status">
-          {run ? (
-            <>
-              <b>Last good result{lastGood ? "," : "."}</b> {lastGood && `${lastGood}. `}
-            </>
-          ) : (
-            <b>Not decided. </b>
-          )}
+          <StaleWords run={run} lastGood={lastGood} missingS={unfit ? -timing.reserveS : null} />{" "}
           <button type="button" className="link bench-first" onClick={onFirstIssue}>
-            {fields}
+            {countOf(issues.length)} in the set-up {issues.length === 1 ? "has" : "have"} to be put right first.
           </button>
         </p>
         {run && (
@@ -169,6 +173,24 @@ function Head({
         </>
       }
     />
+  );
+}
+
+function StaleWords({ run, lastGood, missingS }: { run: BenchRun | null; lastGood: string | null; missingS: number | null }) {
+  if (missingS !== null) {
+    return (
+      <>
+        <b>Does not fit.</b> The round is {msText(missingS)} longer than its period{run ? "; below is the last good result." : "."}
+      </>
+    );
+  }
+  if (!run) return <b>Not decided.</b>;
+  return lastGood ? (
+    <>
+      <b>Last good result,</b> {lastGood}.
+    </>
+  ) : (
+    <b>Last good result.</b>
   );
 }
 

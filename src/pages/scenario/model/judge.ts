@@ -37,11 +37,15 @@ function typedIssues({ typed, json }: Draft): FieldIssue[] {
   );
 }
 
+/** Numbers and their units stay together, as everywhere on the screen. */
+const joined = (text: string): string => text.replace(/(\d) (ms|s|B|kg|N|m|%)(?![\w/])/g, (_, digit: string, unit: string) => withUnit(digit, unit));
+
 /** Splits a sentence of the engine's rules where it first pauses. */
 export function fromRule({ path, code, message }: Issue): FieldIssue {
-  const pause = message.search(/[:;.]\s/);
-  if (pause < 0) return { path, code, rule: message, more: "" };
-  return { path, code, rule: message.slice(0, pause + 1), more: message.slice(pause + 1).trim() };
+  const text = joined(message);
+  const pause = text.search(/[:;.]\s/);
+  if (pause < 0) return { path, code, rule: text, more: "" };
+  return { path, code, rule: text.slice(0, pause + 1), more: text.slice(pause + 1).trim() };
 }
 
 /** Rules whose sentence speaks of the file, said in the words and units of the form. */
