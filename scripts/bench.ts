@@ -101,6 +101,9 @@ function inC(scenario: Scenario): number | null {
   }
 }
 
+// A reader such as head may close the pipe early.
+process.stdout.on("error", () => process.exit());
+
 const line = (what: string, time: number, base: number, of: string) =>
   console.log(`${what.padEnd(58)}${time.toFixed(0).padStart(7)} us   ${(time / base).toFixed(2).padStart(6)} x ${of}`);
 

@@ -97,7 +97,8 @@ export class Integrator {
     const theta = this.#theta;
     const from = this.stepFrom;
     const h = this.stepLength;
-    for (let k = 0; k < points; k++) theta[k] = (t[first + k] - from) / h;
+    const perSecond = 1 / h;
+    for (let k = 0; k < points; k++) theta[k] = (t[first + k] - from) * perSecond;
     this.#evaluateEnd();
     const before = this.#before;
     const k7 = this.#k7;

@@ -19,7 +19,7 @@ export function overallVerdict(limits: readonly LimitVerdict[], ended: RunResult
 }
 
 /** Times at which something new begins, s: pushes and steps of the reference. Settling is counted between them. */
-function disturbances(scenario: Scenario): number[] {
+export function disturbances(scenario: Scenario): number[] {
   const times = scenario.pushes.map((push) => (push.type === "impulse" ? push.atS : push.fromS));
   for (const { profile } of scenario.loops[0].references) if (profile.type !== "sine") times.push(...profile.points.map((point) => point.atS));
   times.push(...scenario.changes.map((change) => change.atS));

@@ -2,6 +2,7 @@
 import { createPlant } from "#shared/plants/registry.ts";
 import type { Limit, Scenario } from "#shared/scenario/schema.ts";
 import { percentText, plusMinusText, quantityText, withUnit } from "#shared/scenario/show.ts";
+import { disturbances } from "./limits.ts";
 import type { LimitVerdict, RunResult, Verdict } from "./result.ts";
 
 const WORDS = ["no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve"];
@@ -41,8 +42,20 @@ export function limitLabel(limit: Limit, scenario: Scenario): string {
   return `${name} ${rule}`;
 }
 
+/**
+ * Outside its band for as long as it could be watched, which is until something new began or the run ended: the figure of
+ * such a verdict is no settling time, only how long the signal had not settled.
+ */
+export function neverSettled(scenario: Scenario, verdict: LimitVerdict, endedAtS: number): boolean {
+  const limit = scenario.limits[verdict.index];
+  if (limit?.type !== "settle") return false;
+  const next = disturbances(scenario).find((t) => t > limit.afterS) ?? endedAtS;
+  // The last grid point lies up to a tenth of a round before the next disturbance.
+  return limit.afterS + verdict.value > Math.min(next, endedAtS) - scenario.round.periodS / 5;
+}
+
 /** "the angle passes 12° at 4.29 s" */
-function crossing(scenario: Scenario, verdict: LimitVerdict): string {
+function crossing(scenario: Scenario, verdict: LimitVerdict, endedAtS: number): string {
   const limit = scenario.limits[verdict.index];
   if (limit.type === "saturation") return `the input is saturated for ${percentText(verdict.value)} of the time, ${percentText(limit.below)} allowed`;
   const { label, unit } = signalOf(scenario, limit.signal);
@@ -53,6 +66,10 @@ function crossing(scenario: Scenario, verdict: LimitVerdict): string {
       return `the ${name} passes ${quantityText(bound ?? 0, unit)}${verdict.crossedAtS === null ? "" : ` at ${seconds(verdict.crossedAtS)}`}`;
     }
     case "settle":
+      if (neverSettled(scenario, verdict, endedAtS)) {
+        const watched = Math.max(0, Math.min(verdict.value, endedAtS - limit.afterS));
+        return `the ${name} has not settled after ${seconds(watched)}, ${seconds(limit.withinS)} allowed`;
+      }
       return `the ${name} needs ${seconds(verdict.value)} to settle, ${seconds(limit.withinS)} allowed`;
     case "rms":
       return `the RMS of the ${name} is ${quantityText(verdict.value, unit)}, ${quantityText(limit.below, unit)} allowed`;
@@ -81,7 +98,8 @@ export function verdictSentence(
     .filter(({ state }) => state === "crosses")
     .sort((a, b) => (a.crossedAtS ?? result.endedAtS) - (b.crossedAtS ?? result.endedAtS));
   if (result.ended === "track-end") {
-    const first = crossed[0] ? ` First, ${crossing(scenario, crossed[0])}.` : "";
+    const [before] = crossed.filter(({ crossedAtS }) => crossedAtS !== null && crossedAtS < result.endedAtS);
+    const first = before ? ` First, ${crossing(scenario, before, result.endedAtS)}.` : "";
     return {
       word,
       sentence: `The ${result.events.find(({ kind }) => kind === "track-end")?.text ?? "end of the track"} is reached at ${seconds(result.endedAtS)}.${first}`,
@@ -91,7 +109,7 @@ export function verdictSentence(
   if (crossed.length > 0) {
     const rest =
       count === 1 ? "" : `; ${crossed.length === count ? `all ${inWords(count)}` : `${inWords(crossed.length)} of ${inWords(count)}`} limits crossed`;
-    return { word, sentence: `${capital(crossing(scenario, crossed[0]))}${rest}.` };
+    return { word, sentence: `${capital(crossing(scenario, crossed[0], result.endedAtS))}${rest}.` };
   }
   const most = limits.reduce((a, b) => (b.used > a.used ? b : a));
   const kept = count === 1 ? "The limit is kept" : count === 2 ? "Both limits kept" : `All ${inWords(count)} limits kept`;
