@@ -2,7 +2,6 @@
 
 import { pathText } from "#shared/scenario/parse.ts";
 import { counted } from "#src/lib/format.ts";
-import { PROCESS, wordOf } from "./choices.ts";
 import {
   describeChange,
   describeEncoding,
@@ -107,7 +106,7 @@ function wholeText(json: unknown, path: Path): string {
   if (value === undefined || value === null) return pattern.endsWith("encoding") ? "32-bit number" : NONE;
   const list = typeof path.at(-1) === "number" ? LISTS[patternOf(path.slice(0, -1))] : undefined;
   if (list) return list.say(json, path);
-  if (pattern === "losses.process") return isNode(value) ? `${wordOf(PROCESS, value.type)}: ${describeProcess(value)}` : NONE;
+  if (pattern === "losses.process") return describeProcess(value);
   if (pattern.endsWith("encoding")) return describeEncoding(json, path);
   if (pattern === "round.beacon") return `${leafText(json, [...path, "payloadBytes"])}`;
   if (Array.isArray(value) && value.length > 0 && value.every((one) => one === 0 || one === 1))

@@ -15,35 +15,43 @@ const number = (value: unknown, otherwise: number): number => (typeof value === 
 /** Figures that people go on working with, not the last bits of a computation. */
 const rounded = (value: number): number => Number(value.toPrecision(5));
 
-/** The gains that the present law amounts to, inputs x states; null when there are none. */
-function presentGain(good: Scenario | null): number[][] | null {
-  if (!good || good.loops[0].controller.law.type === "pid") return null;
+interface Gains {
+  gain: number[][];
+  integral: { signal: string; gain: number[] }[];
+}
+
+/** The gains, inputs x states, that the scenario's law amounts to; null for a PID and where a design fails. */
+function presentGains(good: Scenario | null): Gains | null {
+  const law = good?.loops[0].controller.law;
+  if (!good || !law || law.type === "pid") return null;
   const { design } = designLoop(good, roundTiming(good).ns);
   const feedback = design?.feedback;
   if (!design || !feedback) return null;
   const { n, m } = design.model;
-  return Array.from({ length: m }, (_, j) => Array.from({ length: n }, (_, i) => rounded(feedback.k[j * n + i])));
+  const row = (count: number, value: (index: number) => number) => Array.from({ length: count }, (_, index) => rounded(value(index)));
+  return {
+    gain: Array.from({ length: m }, (_, j) => row(n, (i) => feedback.k[j * n + i])),
+    integral: law.integral.map(({ signal }, i) => ({ signal, gain: row(m, (j) => feedback.ki[j * feedback.ni + i]) })),
+  };
 }
 
-function presentIntegral(good: Scenario | null): { signal: string; gain: number[] }[] {
-  const law = good?.loops[0].controller.law;
-  if (!good || !law || law.type === "pid") return [];
-  const { design } = designLoop(good, roundTiming(good).ns);
-  const feedback = design?.feedback;
-  if (!design || !feedback) return [];
-  return law.integral.map(({ signal }, i) => ({
-    signal,
-    gain: Array.from({ length: design.model.m }, (_, j) => rounded(feedback.ki[j * feedback.ni + i])),
-  }));
+/** The scenario with a law that has a model, in place of a PID: the one that it had before, else equal weights. */
+function withModel(good: Scenario | null, before: Law | null): Scenario | null {
+  const loop = good?.loops[0];
+  const plant = good && plantOf(good);
+  if (!good || !loop || !plant || loop.controller.law.type !== "pid") return good;
+  const law = before ?? { type: "lqr", stateWeights: Array(plant.n).fill(1), inputWeights: Array(plant.m).fill(1), integral: [] };
+  return { ...good, loops: [{ ...loop, controller: { ...loop.controller, law } }] };
 }
 
-function firstLaw(type: string, json: unknown, good: Scenario | null): Law {
+function firstLaw(type: string, json: unknown, good: Scenario | null, before: Law | null): Law {
   const plant = plantOf(json);
   const n = plant?.n ?? 1;
   const m = plant?.m ?? 1;
   if (type === "lqr") return { type, stateWeights: Array(n).fill(1), inputWeights: Array(m).fill(1), integral: [] };
-  const gain = presentGain(good);
-  if (type === "gain") return { type, gain: gain ?? Array.from({ length: m }, () => Array(n).fill(0)), integral: presentIntegral(good) };
+  const gains = presentGains(withModel(good, before));
+  const gain = gains?.gain;
+  if (type === "gain") return { type, gain: gain ?? Array.from({ length: m }, () => Array(n).fill(0)), integral: gains?.integral ?? [] };
   // The PID begins as the part of the present state feedback that acts on the first angle, or else on the first signal.
   const measured = (getAt(json, ["loops", 0, "sensor", "signals"]) as { signal: string }[] | undefined)?.map(({ signal }) => signal) ?? [];
   const signal = measured.find((name) => outputNamed(json, name)?.unit === "rad") ?? measured[0] ?? "x1";
@@ -151,8 +159,16 @@ function firstProfile(type: string, json: unknown, path: Path): Node {
   return { type, points: Array.isArray(profile.points) ? profile.points : [{ atS: 1, value: 0.1 }] };
 }
 
-const FIRST: Record<string, (type: string, json: unknown, path: Path, good: Scenario | null) => unknown> = {
-  "loops[].controller.law": (type, json, _, good) => firstLaw(type, json, good),
+/** What the session knows beside the draft. */
+export interface Known {
+  /** The last scenario that could be run. */
+  good: Scenario | null;
+  /** The last law with a model that ran. */
+  modelLaw: Law | null;
+}
+
+const FIRST: Record<string, (type: string, json: unknown, path: Path, known: Known) => unknown> = {
+  "loops[].controller.law": (type, json, _, { good, modelLaw }) => firstLaw(type, json, good, modelLaw),
   "loops[].controller.estimator": (type, json) => firstEstimator(type, json),
   "loops[].actuator.onLoss": (policy) => (policy === "plan" ? { policy, length: 6, end: "zero" } : { policy }),
   "loops[].sensor.noise": (type, json) =>
@@ -169,7 +185,7 @@ const FIRST: Record<string, (type: string, json: unknown, path: Path, good: Scen
 /** The key that says which form the part at the path has. */
 export const tagKey = (path: Path): "type" | "policy" => (path.at(-1) === "onLoss" ? "policy" : "type");
 
-/** The part in another form, with values to begin with. `good`: the last scenario that could be run. */
-export function firstOf(json: unknown, path: Path, tag: string, good: Scenario | null): unknown {
-  return FIRST[patternOf(path)]?.(tag, json, path, good) ?? { [tagKey(path)]: tag };
+/** The part in another form, with values to begin with. */
+export function firstOf(json: unknown, path: Path, tag: string, known: Known): unknown {
+  return FIRST[patternOf(path)]?.(tag, json, path, known) ?? { [tagKey(path)]: tag };
 }

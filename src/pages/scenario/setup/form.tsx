@@ -5,7 +5,7 @@ import type { Scenario } from "#shared/scenario/schema.ts";
 import type { Draft, Edit } from "../model/draft.ts";
 import { getAt, type Path, setAt } from "../model/json-path.ts";
 import type { FieldIssue } from "../model/judge.ts";
-import { firstOf, tagKey } from "../model/variants.ts";
+import { firstOf, type Known, tagKey } from "../model/variants.ts";
 
 export interface Form {
   draft: Draft;
@@ -75,8 +75,9 @@ export function usePlaces(): Pick<Form, "place" | "placed"> {
 /** Remembers, for as long as the page is open, what each form of a part held before another was chosen. */
 export function useForms(draft: Draft, good: Scenario | null, edit: (edit: Edit) => void): Form["chooseForm"] {
   const parked = useRef(new Map<string, unknown>());
-  const now = useRef({ draft, good });
-  now.current = { draft, good };
+  const law = good?.loops[0].controller.law;
+  const now = useRef<Known & { draft: Draft }>({ draft, good, modelLaw: null });
+  now.current = { draft, good, modelLaw: law && law.type !== "pid" ? law : now.current.modelLaw };
   return useMemo(
     () => (path, tag) => {
       const { json } = now.current.draft;
@@ -87,7 +88,7 @@ export function useForms(draft: Draft, good: Scenario | null, edit: (edit: Edit)
       parked.current.set(`${at}#${String(present?.[key])}`, present);
       edit({
         kind: "put",
-        json: setAt(json, path, parked.current.get(`${at}#${tag}`) ?? firstOf(json, path, tag, now.current.good)),
+        json: setAt(json, path, parked.current.get(`${at}#${tag}`) ?? firstOf(json, path, tag, now.current)),
         forget: [path],
       });
     },

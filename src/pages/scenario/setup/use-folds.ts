@@ -14,8 +14,8 @@ function remembered(): readonly SectionId[] {
   } catch {
     // Nothing is remembered, then.
   }
-  // On a phone the set-up lies below the bench: closed, it is read at a glance.
-  return window.matchMedia("(max-width: 719px)").matches ? [] : FIRST;
+  // Where set-up and bench lie one above the other, the set-up begins closed, so that both are seen.
+  return window.matchMedia("(max-width: 1199px)").matches ? [] : FIRST;
 }
 
 /** Which sections are open; remembered for all scenarios of this browser. */

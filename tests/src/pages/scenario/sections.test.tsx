@@ -2,6 +2,7 @@ import { screen, waitFor, within } from "@testing-library/react";
 import { beforeEach, describe, expect, it, vi } from "vitest";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { TEMPLATES } from "#shared/scenario/templates.ts";
+import { setAt } from "#src/pages/scenario/model/json-path.ts";
 import { fakeServer } from "../../helpers/fake-server.ts";
 import { changes, field, openScenario, openSection, plain, SHORT, typeInto, untilRun } from "./open-scenario.tsx";
 
@@ -25,13 +26,24 @@ describe("the sections of the set-up", () => {
     await typeInto(user, "loops[0].controller.law.stateWeights[1]", "75");
     const kind = screen.getByLabelText("Controller");
     await user.selectOptions(kind, "gain");
-    const gain = Number(field("loops[0].controller.law.gain[0][1]").value.replace("\u2212", "-"));
+    const angleGain = () => Number(field("loops[0].controller.law.gain[0][1]").value.replace("\u2212", "-"));
+    const gain = angleGain();
     expect(gain).toBeLessThan(-20);
     await untilRun(({ stale }) => expect(stale).toBe("false"));
     await user.selectOptions(screen.getByLabelText("Controller"), "lqr");
     expect(field("loops[0].controller.law.stateWeights[1]").value).toBe("75");
     await user.selectOptions(screen.getByLabelText("Controller"), "gain");
-    expect(Number(field("loops[0].controller.law.gain[0][1]").value.replace("\u2212", "-"))).toBe(gain);
+    expect(angleGain()).toBe(gain);
+  });
+
+  it("begin typed gains after a PID with the gains of the law that ran before it", async () => {
+    const onHold = setAt(SHORT, ["loops", 0, "actuator", "onLoss"], { policy: "hold" }) as Scenario;
+    const { user } = await openScenario(server, { scenario: onHold });
+    await user.selectOptions(screen.getByLabelText("Controller"), "pid");
+    const proportional = Number(field("loops[0].controller.law.proportional").value.replace("\u2212", "-"));
+    await untilRun(({ stale }) => expect(stale).toBe("false"));
+    await user.selectOptions(screen.getByLabelText("Controller"), "gain");
+    expect(Number(field("loops[0].controller.law.gain[0][1]").value.replace("\u2212", "-"))).toBe(proportional);
   });
 
   it("show what a channel of bursts comes to", async () => {
