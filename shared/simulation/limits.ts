@@ -63,6 +63,25 @@ function lastOutside({ t, values, eventT, eventValues }: Watched, band: number, 
   return last;
 }
 
+/** Whether the last value in [from, until], the disturbance at `next` left out, is outside the band. */
+function outsideAtEnd({ t, values, eventT, eventValues }: Watched, band: number, from: number, until: number, next: number): boolean {
+  let at = -1;
+  let last = 0;
+  const look = (times: Float64Array, found: Float64Array) => {
+    for (let i = times.length - 1; i >= 0 && times[i] >= from; i--) {
+      if (times[i] > until || (times[i] >= next && next !== until)) continue;
+      if (times[i] > at) {
+        at = times[i];
+        last = found[i];
+      }
+      return;
+    }
+  };
+  look(t, values);
+  look(eventT, eventValues);
+  return at >= 0 && Math.abs(last) > band;
+}
+
 export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Trace[]): LimitVerdict {
   const endedS = raw.endedNs / 1e9;
   const failed = raw.ended === "diverged";
@@ -108,11 +127,16 @@ export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Tr
     case "settle": {
       if (failed) return diverged("s");
       const next = disturbances(raw.scenario).find((t) => t > limit.afterS) ?? raw.scenario.run.durationS;
-      const whole = next === raw.scenario.run.durationS ? Number.POSITIVE_INFINITY : next;
-      const last = lastOutside(watch(raw, trace, true), limit.band, limit.afterS, whole);
-      // A run that ended before it could settle has not settled.
-      const unsettled = endedS < Math.min(next, limit.afterS + limit.withinS);
-      const value = unsettled ? Math.max(last - limit.afterS, next - limit.afterS) : last - limit.afterS;
+      const windowEnd = Math.min(next, endedS);
+      const watched = watch(raw, trace, true);
+      const last = lastOutside(watched, limit.band, limit.afterS, next === raw.scenario.run.durationS ? Number.POSITIVE_INFINITY : next);
+      // Outside at the last instant that was looked at: it has not settled, however short the time was.
+      if (endedS < next || outsideAtEnd(watched, limit.band, limit.afterS, windowEnd, next)) {
+        const value = Math.max(windowEnd - limit.afterS, last - limit.afterS);
+        const crossedAtS = Math.max(limit.afterS, Math.min(windowEnd, limit.afterS + limit.withinS));
+        return { ...base, state: "crosses", value, unit: "s", used: Number.MAX_VALUE, atS: last, crossedAtS };
+      }
+      const value = last - limit.afterS;
       const used = limit.withinS > 0 ? value / limit.withinS : value > 0 ? Number.MAX_VALUE : 0;
       const state = stateOf(used);
       return {
@@ -122,7 +146,7 @@ export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Tr
         unit: "s",
         used,
         atS: last,
-        crossedAtS: state === "crosses" ? Math.min(endedS, limit.afterS + limit.withinS) : null,
+        crossedAtS: state === "crosses" ? limit.afterS + limit.withinS : null,
         settlingS: value,
       };
     }

@@ -42,16 +42,17 @@ export function limitLabel(limit: Limit, scenario: Scenario): string {
   return `${name} ${rule}`;
 }
 
-/**
- * Outside its band for as long as it could be watched, which is until something new began or the run ended: the figure of
- * such a verdict is no settling time, only how long the signal had not settled.
- */
+/** How long settling could be watched, s: until something new began or the run ended. */
+function watchedS(scenario: Scenario, limit: Extract<Limit, { type: "settle" }>, endedAtS: number): number {
+  const next = disturbances(scenario).find((t) => t > limit.afterS) ?? endedAtS;
+  return Math.max(0, Math.min(next, endedAtS) - limit.afterS);
+}
+
+/** Outside its band for as long as it could be watched: then the figure is no settling time. */
 export function neverSettled(scenario: Scenario, verdict: LimitVerdict, endedAtS: number): boolean {
   const limit = scenario.limits[verdict.index];
-  if (limit?.type !== "settle") return false;
-  const next = disturbances(scenario).find((t) => t > limit.afterS) ?? endedAtS;
   // The last grid point lies up to a tenth of a round before the next disturbance.
-  return limit.afterS + verdict.value > Math.min(next, endedAtS) - scenario.round.periodS / 5;
+  return limit?.type === "settle" && verdict.value > watchedS(scenario, limit, endedAtS) - scenario.round.periodS / 5;
 }
 
 /** "the angle passes 12° at 4.29 s" */
@@ -67,8 +68,7 @@ function crossing(scenario: Scenario, verdict: LimitVerdict, endedAtS: number): 
     }
     case "settle":
       if (neverSettled(scenario, verdict, endedAtS)) {
-        const watched = Math.max(0, Math.min(verdict.value, endedAtS - limit.afterS));
-        return `the ${name} has not settled after ${seconds(watched)}, ${seconds(limit.withinS)} allowed`;
+        return `the ${name} has not settled after ${seconds(watchedS(scenario, limit, endedAtS))}, ${seconds(limit.withinS)} allowed`;
       }
       return `the ${name} needs ${seconds(verdict.value)} to settle, ${seconds(limit.withinS)} allowed`;
     case "rms":

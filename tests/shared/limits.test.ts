@@ -83,6 +83,22 @@ describe("the verdict in words", () => {
     expect(verdictSentence(scenario, ran(scenario)).sentence).toMatch(/^The angle passes −?1\.15° at \d\.\d\d.+s\.$/u);
   });
 
+  it("calls no settling time what only lasted until the run ended or something new began", () => {
+    // e^-t leaves the band of 0.1 at 2.3 s.
+    const told = (durationS: number, stepsAt: number[] = []) => {
+      const scenario = scalar((s) => {
+        s.run = { durationS, seed: 1 };
+        if (stepsAt.length > 0)
+          s.loops[0].references = [{ signal: "x1", profile: { type: "steps", points: stepsAt.map((atS) => ({ atS, value: 0 })) } }];
+        s.limits = [{ type: "settle", signal: "x1", band: 0.1, withinS: 1, afterS: 0 }];
+      });
+      return verdictSentence(scenario, ran(scenario)).sentence.replaceAll(/[\u2009\u2060]/g, "");
+    };
+    expect(told(8)).toBe("The x1 needs 2.30s to settle, 1.00s allowed.");
+    expect(told(2)).toBe("The x1 has not settled after 2.00s, 1.00s allowed.");
+    expect(told(8, [1.5])).toBe("The x1 has not settled after 1.50s, 1.00s allowed.");
+  });
+
   it("labels limits in the units that people read", () => {
     const scenario = template(0);
     expect(scenario.limits.map((limit) => limitLabel(limit, scenario).replaceAll(/[\u2009\u2060]/g, ""))).toEqual([

@@ -1,7 +1,7 @@
 import "./drawings.css";
 import type { Limit, Scenario } from "#shared/scenario/schema.ts";
 import type { LimitVerdict, RunResult } from "#shared/simulation/result.ts";
-import { limitParts } from "#shared/simulation/verdict-text.ts";
+import { limitParts, neverSettled } from "#shared/simulation/verdict-text.ts";
 import { decimalsFor, formatNumber, formatTime } from "#src/components/plots/units.ts";
 import { Mark } from "#src/components/ui/mark.tsx";
 import { percentText, shownUnit, withUnit } from "#src/lib/format.ts";
@@ -75,7 +75,8 @@ export function LimitStrip({ scenario, result }: LimitStripProps) {
                 {name} <span className="second">{rule}</span>
               </p>
               <p className="limit-value">
-                <Mark state={verdict.state} size={14} /> <b>{verdictValue(limit, verdict)}</b>{" "}
+                <Mark state={verdict.state} size={14} />{" "}
+                <b>{neverSettled(scenario, verdict, result.endedAtS) ? "not settled" : verdictValue(limit, verdict)}</b>{" "}
                 <span className="second">{whenText(limit, verdict)}</span>
               </p>
               <UsedBar verdict={verdict} />
