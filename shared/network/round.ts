@@ -67,6 +67,8 @@ export const toNs = (seconds: number): number => Math.round(seconds * 1e9);
 /** A value that is not encoded travels as a 32-bit number. */
 const bitsOf = (encoding: Encoding | null): number => encoding?.bits ?? 32;
 const ms = (ns: number): string => `${(ns / 1e6).toFixed(2)} ms`;
+/** Rounded up: who enters this period gets a round that fits. */
+const msAtLeast = (ns: number): string => ms(Math.ceil(ns / 1e4) * 1e4);
 
 /** Payload of each message of the loop, bytes, without the header; null where the placement needs no such message. */
 export function payloadBytes(scenario: Scenario): { measurement: number | null; command: number | null } {
@@ -170,12 +172,12 @@ export function roundTiming(scenario: Scenario): RoundTiming {
     offer("bytes", "one byte less in every message", { ...asIs, fewerBytes: 1 });
     const faster = PHY_TIMINGS[PHY_TIMINGS.indexOf(timing) + 1];
     if (faster) offer("phy", faster.label, { ...asIs, timing: faster });
-    savings.push({ change: "period", text: `a period of ${ms(shortest)}`, savesS: (shortest - period) / 1e9 });
+    savings.push({ change: "period", text: `a period of ${msAtLeast(shortest)}`, savesS: (shortest - period) / 1e9 });
     savings.sort((a, b) => b.savesS - a.savesS);
     issues.push({
       code: "round-does-not-fit",
       path: "round.periodS",
-      message: `The round does not fit: its slots end at ${ms(layout.end)} and ${ms(guard)} of guard follow, ${ms(-reserve)} more than the period of ${ms(period)}. The shortest period that fits is ${ms(shortest)}.`,
+      message: `The round does not fit: its slots end at ${ms(layout.end)} and ${ms(guard)} of guard follow, ${ms(-reserve)} more than the period of ${ms(period)}. The shortest period that fits is ${msAtLeast(shortest)}.`,
       help: savings.map((saving) => `${saving.text}: saves ${ms(toNs(saving.savesS))}`),
     });
   }

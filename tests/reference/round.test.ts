@@ -156,6 +156,17 @@ describe("a round", () => {
     expect(twenty("ieee802154", { wakeUpS: 0.0002, periodS: timing.shortestPeriodS - 1e-9 }).fits).toBe(false);
   });
 
+  it("names no period that is too short, also where it rounds what it names", () => {
+    for (const wakeUpS of [0.0002, 0.000201, 0.000202, 0.000203, 0.000204]) {
+      const message = twenty("ieee802154", { wakeUpS })
+        .issues.map((issue) => issue.message)
+        .join();
+      const said = Number(/that fits is (\d+\.\d+) ms/.exec(message)?.[1]);
+      expect(twenty("ieee802154", { wakeUpS, periodS: said / 1000 }).fits, message).toBe(true);
+      expect(said).toBeCloseTo(20.18, 1);
+    }
+  });
+
   it("whose payload is too long for the PHY says by how many bytes", () => {
     const timing = twenty("ieee802154", { periodS: 1, beacon: { payloadBytes: 130 } }, 5);
     expect(timing.issues.map(({ code }) => code)).toContain("payload-too-long");
