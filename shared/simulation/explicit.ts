@@ -1,4 +1,5 @@
-import type { Scenario } from "#shared/scenario/schema.ts";
+import { toNs } from "#shared/network/round.ts";
+import type { Push, Scenario } from "#shared/scenario/schema.ts";
 import { noiseValues } from "./disturbance.ts";
 import type { RunResult } from "./result.ts";
 
@@ -20,10 +21,18 @@ export function explicitScenario(scenario: Scenario, result: RunResult): Scenari
       streams: "own",
       outages: [],
     },
-    pushes: scenario.pushes.map((push, index) => {
-      if (push.type !== "noise") return push;
-      const values = Array.from(noiseValues(push, index, seed, scenario.run.durationS));
-      return { type: "given", channel: push.channel, fromS: push.fromS, intervalS: push.intervalS, values: values.length > 0 ? values : [0] };
-    }),
+    pushes: scenario.pushes.flatMap((push, index) => (push.type === "noise" ? written(push, index, seed, scenario.run.durationS) : [push])),
   };
+}
+
+/** A noise push as given values; the last one as a step where the push ends before the value's interval does. */
+function written(push: Extract<Push, { type: "noise" }>, index: number, seed: number, endS: number): Push[] {
+  const { channel, fromS, untilS, intervalS } = push;
+  const values = Array.from(noiseValues(push, index, seed, endS));
+  const lastFromNs = toNs(fromS) + (values.length - 1) * toNs(intervalS);
+  const cut = untilS !== null && toNs(untilS) < lastFromNs + toNs(intervalS) ? values.pop() : undefined;
+  return [
+    ...(values.length > 0 ? [{ type: "given" as const, channel, fromS, intervalS, values }] : []),
+    ...(cut === undefined ? [] : [{ type: "step" as const, channel, fromS: lastFromNs / 1e9, untilS, size: cut }]),
+  ];
 }

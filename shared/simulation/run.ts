@@ -209,6 +209,7 @@ export class Run {
   /** Everything up to the next event, then the events at that instant. */
   #segment(): void {
     if (this.#nowNs === 0 && this.#nextSample === 0) this.#events();
+    if (this.#done) return;
     const sampleNs = this.#nextSample < this.rounds ? this.#nextSample * this.#periodNs + this.#raw.timing.ns.sample : NEVER;
     const actNs = this.#nextAct * this.#periodNs + this.#raw.timing.ns.act;
     const changeNs = this.#nextChange < this.#changes.length ? this.#changes[this.#nextChange].atNs : NEVER;
@@ -314,7 +315,7 @@ export class Run {
       eventful = true;
     }
     if (this.#nextSample < this.rounds && this.#nextSample * this.#periodNs + raw.timing.ns.sample === now) {
-      this.#sample();
+      this.#sample(now);
       eventful = true;
     }
     if (eventful && (now * POINTS_PER_ROUND) % this.#periodNs !== 0) this.#observe(now, y);
@@ -324,7 +325,8 @@ export class Run {
     const raw = this.#raw;
     const j = this.#nextAct++;
     const travels = j + this.#commandDelay;
-    const change = this.#logic.act(raw.deliveries.command[travels] === 1, travels * this.#periodNs >= this.#joinsNs);
+    // The last command may be due in a round that the run does not have; then it needs no slot, and is not lost.
+    const change = this.#logic.act(raw.deliveries.command[travels] !== 0, travels * this.#periodNs >= this.#joinsNs);
     const { silence } = this.#loop.actuator;
     if (change === "begins" && silence) {
       raw.silentReactions++;
@@ -344,7 +346,7 @@ export class Run {
     if (!this.#logic.actuator.silent) this.#drive.ask(now, this.#logic.actuator.inForce, "own-rate");
   }
 
-  #sample(): void {
+  #sample(now: number): void {
     const raw = this.#raw;
     const k = this.#nextSample++;
     const { p } = raw.design;
@@ -359,10 +361,24 @@ export class Run {
     // While the drive reacts to silence, what is in force is what the drive does, not what a command asked for.
     this.#logic.compute(k, raw.deliveries.measurement[k] === 1, this.#logic.actuator.silent ? this.#drive.value : this.#logic.actuator.inForce);
     const { estimate, plan } = this.#logic.controller;
+    if (!allFinite(estimate) || !allFinite(plan)) {
+      this.#loseEstimate(now);
+      return;
+    }
     for (let i = 0; i < p; i++) raw.measurement[k * p + i] = this.#logic.measured[i];
     for (let i = 0; i < estimate.length; i++) raw.estimate[k * estimate.length + i] = estimate[i];
     for (let j = 0; j < m; j++) raw.command[k * m + j] = plan[j];
     raw.sampled = this.#nextSample;
+  }
+
+  /** Long without a measurement, an estimate grows as the model does until it is no number any more; the run ends before it. */
+  #loseEstimate(now: number): void {
+    const raw = this.#raw;
+    this.#done = true;
+    raw.endedNs = now;
+    raw.ended = "diverged";
+    raw.events.push({ atS: now / 1e9, kind: "diverged", text: "the controller's estimate diverged" });
+    raw.recorder.last(now / 1e9, this.#integrator.y, this.#felt(), this.#lagged);
   }
 
   /** What the plant feels at the present instant. */
@@ -380,6 +396,11 @@ export class Run {
     for (let i = 0; i < n; i++) data[offset + 1 + i] = y[i];
     for (let j = 0; j < m; j++) data[offset + 1 + n + j] = u[j];
   }
+}
+
+function allFinite(values: Float64Array): boolean {
+  for (let i = 0; i < values.length; i++) if (!Number.isFinite(values[i])) return false;
+  return true;
 }
 
 /** Sensor noise, rounds x p: one normal value per component and round is always drawn, in component order, or taken as given. */
