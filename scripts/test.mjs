@@ -23,7 +23,7 @@ async function vitest(part, projects, filters) {
       ...["node_modules/vitest/vitest.mjs", "run", ...projects.flatMap((project) => ["--project", project]), ...filters],
       ...["--reporter=default", "--reporter=json", `--outputFile.json=${report}`],
     ],
-    { stdio: ["ignore", 1, 2] },
+    { stdio: ["ignore", 1, 2], env: process.stdout.isTTY ? process.env : { ...process.env, NO_COLOR: "1" } },
   );
   if (!existsSync(report)) return { passed: 0, failed: 1 };
   const { numPassedTests: passed, numFailedTests, numPendingTests, numTodoTests, testResults } = JSON.parse(readFileSync(report, "utf8"));

@@ -4,10 +4,6 @@ export function fromRows(rows: readonly (readonly number[])[]): Float64Array {
   return Float64Array.from(rows.flat());
 }
 
-export function toRows(a: Float64Array, columns: number): number[][] {
-  return Array.from({ length: a.length / columns }, (_, i) => Array.from(a.subarray(i * columns, (i + 1) * columns)));
-}
-
 export function identity(n: number): Float64Array {
   const a = new Float64Array(n * n);
   for (let i = 0; i < n; i++) a[i * n + i] = 1;

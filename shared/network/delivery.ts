@@ -17,14 +17,8 @@ export interface Deliveries {
 type GilbertElliott = Extract<LossProcess, { type: "gilbert-elliott-shared" }>["channel"];
 
 /** Stationary probability of the bad state, goodToBad / (goodToBad + badToGood); 0 for a channel that never moves. */
-export function badShare({ goodToBad, badToGood }: GilbertElliott): number {
+function badShare({ goodToBad, badToGood }: GilbertElliott): number {
   return goodToBad + badToGood > 0 ? goodToBad / (goodToBad + badToGood) : 0;
-}
-
-/** Loss ratio of a Gilbert-Elliott channel in its stationary state (Gilbert 1960, Elliott 1963). */
-export function lossRatio(channel: GilbertElliott): number {
-  const bad = badShare(channel);
-  return (1 - bad) * channel.lossInGood + bad * channel.lossInBad;
 }
 
 /** 1 = bad. The state of round k decides round k, then it moves. Starts stationary. */

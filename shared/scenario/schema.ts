@@ -373,7 +373,6 @@ export type ScenarioInput = z.input<typeof scenarioSchema>;
 export type Loop = Scenario["loops"][number];
 export type Encoding = z.infer<typeof encodingSchema>;
 export type Law = z.infer<typeof lawSchema>;
-export type Estimator = z.infer<typeof estimatorSchema>;
 export type Profile = z.infer<typeof profileSchema>;
 export type Push = z.infer<typeof pushSchema>;
 export type Limit = z.infer<typeof limitSchema>;

@@ -119,8 +119,8 @@ export function Header({ team }: { team: Team | null }) {
           <IconButton kind="bare" icon="theme" label="Turn light and dark" title="Light and dark" onClick={turnTheme} />
           <Menu
             trigger={
-              <button type="button" className="initials max-md:hidden" aria-label={`Account of ${session.user.name}`}>
-                <span aria-hidden="true">{initials(session.user.name)}</span>
+              <button type="button" className="initials max-md:hidden" aria-label={`${initials(session.user.name)}: account of ${session.user.name}`}>
+                {initials(session.user.name)}
               </button>
             }
           >

@@ -2,7 +2,7 @@
 
 import { trueMinus, withUnit } from "#shared/scenario/show.ts";
 
-export { quantityText, type Shown, shownUnit, significant, THIN, withUnit } from "#shared/scenario/show.ts";
+export { quantityText, shownUnit, significant, THIN, withUnit } from "#shared/scenario/show.ts";
 
 /** Fixed decimals, true minus, never "−0.0". */
 export const fixed = (value: number, decimals: number): string => (Number.isFinite(value) ? trueMinus(value.toFixed(decimals)) : "none");

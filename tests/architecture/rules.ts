@@ -57,7 +57,7 @@ function isPropertyName(node: Node, parent: Node | null): boolean {
 
 function purityBreach(node: Node, parent: Node | null): string | null {
   if ((node.type === "BinaryExpression" || node.type === "AssignmentExpression") && /^\*\*=?$/.test(String(node.operator)))
-    return "** is not the same bit for bit in every engine; multiply, or take pow from shared/math/elementary.ts";
+    return "** is not the same bit for bit in every engine; multiply, or let pow in by shared/math/elementary.ts";
   const name = nameOf(node);
   if (name !== null && Object.hasOwn(NOT_IN_SHARED, name) && !isPropertyName(node, parent)) return `${name} reaches ${NOT_IN_SHARED[name]}`;
   return mathBreach(node, parent);

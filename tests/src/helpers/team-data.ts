@@ -7,7 +7,6 @@ import { roundTiming } from "#shared/network/round.ts";
 import { TEMPLATES } from "#shared/scenario/templates.ts";
 
 export const TEAM = { id: "11111111-1111-4111-8111-111111111111", name: "Northquay Packaging" };
-export const OTHER_TEAM = { id: "22222222-2222-4222-8222-222222222222", name: "Saltmarsh Training" };
 export const FENNICK = { id: "33333333-3333-4333-8333-333333333333", name: "R. Fennick" };
 const EMAIL = "r.fennick@northquay.example";
 

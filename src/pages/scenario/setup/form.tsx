@@ -33,9 +33,6 @@ export function useForm(): Form {
   return form;
 }
 
-/** The value at a path of the draft. */
-export const useValue = (path: Path): unknown => getAt(useForm().draft.json, path);
-
 /** Issues of a field; while it is in the page they belong to it. `below`: also those of what lies inside. */
 export function useIssue(path: Path, below = false): FieldIssue | null {
   const { issues, place } = useForm();
