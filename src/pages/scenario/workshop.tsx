@@ -26,6 +26,7 @@ import { SaveDialog } from "./dialogs/save-dialog.tsx";
 import { type Change, describeChanges } from "./model/changes.ts";
 import { cleanDraft } from "./model/draft.ts";
 import { type DraftStore, keepCopy, readCopy, type StoredDraft } from "./model/draft-store.ts";
+import { getAt } from "./model/json-path.ts";
 import { fromRule, judge } from "./model/judge.ts";
 import { lastGoodText } from "./model/last-good.ts";
 import { sectionOf } from "./model/sections.ts";
@@ -74,6 +75,10 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
   const judged = useMemo(() => judge(draft), [draft]);
   const good = useRef<Scenario | null>(null);
   if (judged.scenario) good.current = judged.scenario;
+  const ownSeed = getAt(draft.json, ["run", "seed"]);
+  // A seed that is set in the scenario is the one that runs.
+  // biome-ignore lint/correctness/useExhaustiveDependencies: only when the scenario's own seed changes
+  useEffect(() => setSeed(null), [ownSeed]);
   const bench = useBench(engine, judged.scenario, judged.timing, seed);
   const issues = useMemo(() => [...judged.issues, ...bench.refused.map(fromRule)], [judged, bench.refused]);
   const changes = useMemo(() => describeChanges(control.base.scenario, draft.json), [control.base, draft]);

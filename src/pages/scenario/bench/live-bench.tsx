@@ -7,6 +7,7 @@ import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
 import { Mark, VerdictLine } from "#src/components/ui/mark.tsx";
 import { Empty, Loading } from "#src/components/ui/states.tsx";
 import { counted, msText, significant, withUnit } from "#src/lib/format.ts";
+import type { EngineProgress } from "#src/workers/contract.ts";
 import { clockText } from "../clock.ts";
 import type { FieldIssue } from "../model/judge.ts";
 import type { Bench, BenchRun } from "./use-bench.ts";
@@ -48,17 +49,6 @@ export function LiveBench({ bench, timing, issues, lastGood, seed, onSeed, onFir
             <Button small kind="bare" onClick={() => onSeed(null)}>
               Back to seed {run.scenario.run.seed}
             </Button>
-          )}
-          {progress && (
-            <span className="bench-progress" role="status">
-              <progress max={progress.rounds} value={progress.round} aria-label="Progress of the run" />
-              <span>
-                round {progress.round} of {progress.rounds}
-              </span>
-              <Button small onClick={bench.cancel}>
-                Stop
-              </Button>
-            </span>
           )}
           {(broken || cancelled) && (
             <Button small onClick={bench.again}>
@@ -123,7 +113,7 @@ function SeedStep({
 type HeadProps = Pick<LiveBenchProps, "bench" | "timing" | "issues" | "lastGood" | "onFirstIssue"> & { stale: boolean };
 
 function Head({ bench, timing, issues, lastGood, stale, onFirstIssue }: HeadProps) {
-  const { run, cancelled, broken } = bench;
+  const { run, progress, cancelled, broken } = bench;
   const basis = run && (
     <span>
       seed {run.result.seed} · {withUnit(significant(run.result.durationS, 4), "s")} long
@@ -147,6 +137,16 @@ function Head({ bench, timing, issues, lastGood, stale, onFirstIssue }: HeadProp
           </div>
         )}
       </div>
+    );
+  }
+  if (progress) {
+    return (
+      <VerdictLine
+        state="not-decided"
+        word="Running."
+        sentence={run ? "What is shown below is the run before." : "A long run takes its time; it can be stopped."}
+        meta={<Progress progress={progress} onStop={bench.cancel} />}
+      />
     );
   }
   if (!run) return null;
@@ -173,6 +173,20 @@ function Head({ bench, timing, issues, lastGood, stale, onFirstIssue }: HeadProp
         </>
       }
     />
+  );
+}
+
+function Progress({ progress: { round, rounds }, onStop }: { progress: EngineProgress; onStop: () => void }) {
+  return (
+    <div className="bench-progress" role="status">
+      <span className="num">
+        round {round} of {rounds}
+      </span>
+      <progress max={rounds} value={round} aria-label="Progress of the run" />
+      <Button small onClick={onStop}>
+        Stop
+      </Button>
+    </div>
   );
 }
 

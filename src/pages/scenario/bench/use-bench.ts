@@ -30,7 +30,7 @@ export interface Bench {
   again(): void;
 }
 
-const LONG_MS = 400;
+const LONG_MS = 500;
 
 /** Runs what is edited as soon as it is edited: the newest edit wins, older runs are given up. */
 export function useBench(engine: EngineClient | null, scenario: Scenario | null, timing: RoundTiming | null, seed: number | null): Bench {

@@ -14,8 +14,8 @@ import "#src/pages/scenario/scenario-page.tsx";
 
 export const MOORLING = { id: "55555555-5555-4555-8555-555555555555", name: "A. Moorling" };
 
-/** Two seconds are enough to see that something ran. */
-export const SHORT: Scenario = { ...(TEMPLATES[0].scenario as Scenario), run: { ...TEMPLATES[0].scenario.run, durationS: 2 } };
+/** Long enough for its limits, short enough for a test. */
+export const SHORT: Scenario = { ...(TEMPLATES[0].scenario as Scenario), run: { ...TEMPLATES[0].scenario.run, durationS: 6 } };
 
 interface Opening {
   roles?: Role[];

@@ -14,7 +14,7 @@ beforeEach(() => localStorage.clear());
 
 describe("the sections of the set-up", () => {
   it("speak of trolley and load for a machine that hangs", async () => {
-    const crane = { ...TEMPLATES[1].scenario, run: { ...TEMPLATES[1].scenario.run, durationS: 2 } };
+    const crane = { ...TEMPLATES[1].scenario, run: { ...TEMPLATES[1].scenario.run, durationS: 12 } };
     await openScenario(server, { scenario: crane });
     expect(screen.getByText("Trolley mass")).toBeDefined();
     expect(screen.getByText("Rope, trolley to load")).toBeDefined();
