@@ -20,6 +20,7 @@ const limitVerdictSchema = z.strictObject({
   used: z.number(),
   atS: z.number().nullable(),
   crossedAtS: z.number().nullable(),
+  crossedBound: z.enum(["lo", "hi"]).nullable(),
   settlingS: z.number().nullable(),
 }) satisfies z.ZodType<LimitVerdict>;
 
@@ -43,7 +44,7 @@ export const runSummarySchema = z.strictObject({
   durationS: z.number(),
   verdict: verdictSchema,
   delivery: deliverySchema,
-  /** SHA-256 over series, rounds and verdicts; the same on every machine. */
+  /** SHA-256 over series and rounds; the same on every machine. */
   digest: digestSchema,
   author: personSchema,
   createdAt: z.iso.datetime(),

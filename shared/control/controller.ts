@@ -83,6 +83,8 @@ export class StateFeedback implements Controller {
   readonly #virtualU: Float64Array;
   readonly #reference: Float64Array;
   readonly #innovation: Float64Array;
+  /** Limits met by entry 0, while the further entries of a plan are computed. */
+  readonly #limitedNow: Int8Array;
 
   constructor(setup: ControllerSetup, estimate: ArrayLike<number>) {
     const { design, planLength } = setup;
@@ -108,6 +110,7 @@ export class StateFeedback implements Controller {
     this.#virtualU = new Float64Array(this.#rows * m);
     this.#reference = new Float64Array(Math.max(n, m, this.#ni));
     this.#innovation = new Float64Array(design.p);
+    this.#limitedNow = new Int8Array(m);
   }
 
   /** Every number that is carried from round to round, for an analysis that reads the stage as a linear map. */
@@ -191,7 +194,7 @@ export class StateFeedback implements Controller {
       this.#virtualU.set(this.#believed);
       this.#integrate(this.#virtualQ, this.#virtualX, sampledAt);
     }
-    const limitedNow = planLength > 1 ? this.limited.slice() : null;
+    for (let j = 0; j < m; j++) this.#limitedNow[j] = this.limited[j];
     for (let i = 1; i < planLength; i++) {
       this.#step(x, design.model.period.phi, design.model.period.gamma, this.plan, (i - 1) * m);
       if (this.#ni > 0) {
@@ -202,7 +205,7 @@ export class StateFeedback implements Controller {
       this.#entry(i, x, this.#virtualQ, this.plan, (i - 1) * m, sampledAt + i * periodNs + latencyNs);
       if (this.#ni > 0) this.#integrate(this.#virtualQ, this.#virtualX, sampledAt + i * periodNs);
     }
-    if (limitedNow) this.limited.set(limitedNow);
+    for (let j = 0; j < m; j++) this.limited[j] = this.#limitedNow[j];
     this.#integrate(this.#integral, this.estimate, sampledAt);
   }
 

@@ -126,7 +126,16 @@ function checkLoop(report: Report, scenario: Scenario, loop: Loop, plant: Plant)
   const nStates = `because the plant has ${n} states (${states.join(", ")})`;
   const nInputs = `because the plant has ${m} ${m === 1 ? "input" : "inputs"} (${inputs.join(", ")})`;
 
-  if (start.state) report.length(`${at}.start.state`, "Start values", start.state.length, n, nStates);
+  if (start.state && report.length(`${at}.start.state`, "Start values", start.state.length, n, nStates) && plant.end) {
+    const value = start.state[plant.end.state];
+    if (Math.abs(value) >= plant.end.at) {
+      report.add(
+        "out-of-range",
+        `${at}.start.state[${plant.end.state}]`,
+        `The run starts at ${value} m, at or beyond the ${plant.end.label}; permitted within ±${plant.end.at} m.`,
+      );
+    }
+  }
   if (start.estimate) report.length(`${at}.start.estimate`, "Start values of the estimate", start.estimate.length, n, nStates);
 
   sensor.signals.forEach(({ signal, encoding }, i) => {
@@ -294,6 +303,15 @@ function checkEvents(report: Report, scenario: Scenario, plant: Plant): void {
   scenario.pushes.forEach((push, i) => {
     report.known(`pushes[${i}].channel`, push.channel, channels, "a place where this plant can be pushed");
     if ("untilS" in push) report.ordered(`pushes[${i}].untilS`, push.fromS, push.untilS);
+    if (push.type === "noise") {
+      const values = Math.ceil((Math.min(push.untilS ?? scenario.run.durationS, scenario.run.durationS) - push.fromS) / push.intervalS);
+      if (values > MAX_ROUNDS)
+        report.add(
+          "out-of-range",
+          `pushes[${i}].intervalS`,
+          `The noise needs ${values} values; at most ${MAX_ROUNDS}. Hold each value longer, or let the push end earlier.`,
+        );
+    }
   });
   const spec = scenario.loops[0].plant;
   scenario.changes.forEach((change, i) => {
@@ -322,6 +340,18 @@ function checkLimits(report: Report, scenario: Scenario, plant: Plant): void {
       if (limit.lo !== null && limit.hi !== null && limit.hi <= limit.lo)
         report.add("out-of-order", `${path}.hi`, `The upper bound ${limit.hi} is not above the lower bound ${limit.lo}.`);
     }
-    if (limit.type !== "settle") report.ordered(`${path}.untilS`, limit.fromS, limit.untilS);
+    const end = scenario.run.durationS;
+    if (limit.type === "settle") {
+      if (limit.afterS + limit.withinS > end) {
+        report.add(
+          "out-of-range",
+          `${path}.withinS`,
+          `It may settle until ${limit.afterS + limit.withinS} s, but the run ends at ${end} s. Lengthen the run, or shorten the time.`,
+        );
+      }
+      return;
+    }
+    report.ordered(`${path}.untilS`, limit.fromS, limit.untilS);
+    if (limit.fromS >= end) report.add("out-of-range", `${path}.fromS`, `The limit begins at ${limit.fromS} s, but the run ends at ${end} s.`);
   });
 }

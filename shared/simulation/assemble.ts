@@ -102,11 +102,12 @@ export function assemble(raw: Raw): RunResult {
       command: raw.command.slice(0, sampled * m),
     },
     events,
+    // With a delay of one round, round 0 carries no command.
     figures: {
       signals: all.map((trace) => signalFigures(trace, t)),
       messages: (["measurement", "command"] as const)
         .filter(hasSlot)
-        .map((message) => messageFigures(message, deliveries[message].subarray(0, sampled))),
+        .map((message) => messageFigures(message, deliveries[message].subarray(message === "command" ? timing.commandDelay : 0, sampled))),
       saturatedShare: raw.endedNs > 0 ? raw.saturatedNs / raw.endedNs : 0,
       silentReactions: raw.silentReactions,
       cost: loop.controller.law.type === "lqr" && sampled > 0 ? raw.costSum / sampled : null,

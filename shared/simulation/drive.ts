@@ -18,7 +18,7 @@ export class Drive {
   sloping = false;
   /** Whether any input can ever be on a ramp. */
   readonly canSlope: boolean;
-  /** Some input stands at its lowest or largest value. */
+  /** Some input stands at its lowest or largest value; a drive that only pulls is not saturated at rest. */
   saturated = false;
   /** The next instant at which something changes by itself; Infinity: none. */
   nextNs = NEVER;
@@ -113,7 +113,10 @@ export class Drive {
       if (this.slope[i] !== 0) {
         this.sloping = true;
         this.nextNs = Math.min(this.nextNs, this.#reachNs[i]);
-      } else if (this.value[i] <= this.#lo[i] + this.#margin[i] || this.value[i] >= this.#hi[i] - this.#margin[i]) {
+      } else if (
+        (this.#lo[i] < 0 && this.value[i] <= this.#lo[i] + this.#margin[i]) ||
+        (this.#hi[i] > 0 && this.value[i] >= this.#hi[i] - this.#margin[i])
+      ) {
         this.saturated = true;
       }
     }

@@ -19,7 +19,7 @@ export function overallVerdict(limits: readonly LimitVerdict[], ended: RunResult
 }
 
 /** Times at which something new begins, s: pushes and steps of the reference. Settling is counted between them. */
-export function disturbances(scenario: Scenario): number[] {
+function disturbances(scenario: Scenario): number[] {
   const times = scenario.pushes.map((push) => (push.type === "impulse" ? push.atS : push.fromS));
   for (const { profile } of scenario.loops[0].references) if (profile.type !== "sine") times.push(...profile.points.map((point) => point.atS));
   times.push(...scenario.changes.map((change) => change.atS));
@@ -63,29 +63,20 @@ function lastOutside({ t, values, eventT, eventValues }: Watched, band: number, 
   return last;
 }
 
-/** Whether the last value in [from, until], the disturbance at `next` left out, is outside the band. */
-function outsideAtEnd({ t, values, eventT, eventValues }: Watched, band: number, from: number, until: number, next: number): boolean {
-  let at = -1;
-  let last = 0;
-  const look = (times: Float64Array, found: Float64Array) => {
-    for (let i = times.length - 1; i >= 0 && times[i] >= from; i--) {
-      if (times[i] > until || (times[i] >= next && next !== until)) continue;
-      if (times[i] > at) {
-        at = times[i];
-        last = found[i];
-      }
-      return;
-    }
-  };
-  look(t, values);
-  look(eventT, eventValues);
-  return at >= 0 && Math.abs(last) > band;
+/** Whether the last value in [from, until) is outside the band. */
+function outsideAtEnd({ t, values, eventT, eventValues }: Watched, band: number, from: number, until: number): boolean {
+  const grid = t.findLastIndex((time) => time < until);
+  const event = eventT.findLastIndex((time) => time < until);
+  const gridT = grid < 0 ? -1 : t[grid];
+  const isEvent = event >= 0 && eventT[event] > gridT;
+  if ((isEvent ? eventT[event] : gridT) < from) return false;
+  return Math.abs(isEvent ? eventValues[event] : values[grid]) > band;
 }
 
 export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Trace[]): LimitVerdict {
   const endedS = raw.endedNs / 1e9;
   const failed = raw.ended === "diverged";
-  const base = { index, atS: null, crossedAtS: null, settlingS: null };
+  const base = { index, atS: null, crossedAtS: null, crossedBound: null, settlingS: null };
   // A diverged run crosses every limit and enters quantiles as the largest value.
   const diverged = (unit: string): LimitVerdict => ({
     ...base,
@@ -126,15 +117,21 @@ export function judge(limit: Limit, index: number, raw: Raw, traces: readonly Tr
     }
     case "settle": {
       if (failed) return diverged("s");
-      const next = disturbances(raw.scenario).find((t) => t > limit.afterS) ?? raw.scenario.run.durationS;
-      const windowEnd = Math.min(next, endedS);
+      const next = disturbances(raw.scenario).find((t) => t > limit.afterS) ?? Number.POSITIVE_INFINITY;
       const watched = watch(raw, trace, true);
-      const last = lastOutside(watched, limit.band, limit.afterS, next === raw.scenario.run.durationS ? Number.POSITIVE_INFINITY : next);
-      // Outside at the last instant that was looked at: it has not settled, however short the time was.
-      if (endedS < next || outsideAtEnd(watched, limit.band, limit.afterS, windowEnd, next)) {
-        const value = Math.max(windowEnd - limit.afterS, last - limit.afterS);
-        const crossedAtS = Math.max(limit.afterS, Math.min(windowEnd, limit.afterS + limit.withinS));
-        return { ...base, state: "crosses", value, unit: "s", used: Number.MAX_VALUE, atS: last, crossedAtS };
+      const last = lastOutside(watched, limit.band, limit.afterS, next);
+      // Ended too early, or outside at the last instant that counts: it has not settled, however short the time was.
+      if (endedS < Math.min(next, limit.afterS + limit.withinS) || outsideAtEnd(watched, limit.band, limit.afterS, next)) {
+        const value = Math.max(0, Math.min(next, endedS) - limit.afterS);
+        return {
+          ...base,
+          state: "crosses",
+          value,
+          unit: "s",
+          used: Number.MAX_VALUE,
+          atS: last,
+          crossedAtS: limit.afterS + Math.min(value, limit.withinS),
+        };
       }
       const value = last - limit.afterS;
       const used = limit.withinS > 0 ? value / limit.withinS : value > 0 ? Number.MAX_VALUE : 0;
@@ -173,6 +170,7 @@ function within(limit: Extract<Limit, { type: "within" }>, index: number, raw: R
   let value = 0;
   let atS: number | null = null;
   let crossedAtS: number | null = null;
+  let crossedBound: LimitVerdict["crossedBound"] = null;
   const untilS = limit.untilS ?? endedS;
   const watched = watch(raw, trace, limit.of === "error");
   const scan = (t: Float64Array, values: Float64Array) => {
@@ -185,13 +183,16 @@ function within(limit: Extract<Limit, { type: "within" }>, index: number, raw: R
         value = found;
         atS = t[i];
       }
-      if ((found > hi || found < lo) && (crossedAtS === null || t[i] < crossedAtS)) crossedAtS = t[i];
+      if ((found > hi || found < lo) && (crossedAtS === null || t[i] < crossedAtS)) {
+        crossedAtS = t[i];
+        crossedBound = found > hi ? "hi" : "lo";
+      }
     }
   };
   scan(watched.t, watched.values);
   scan(watched.eventT, watched.eventValues);
   const state = crossedAtS === null ? (used > NEAR ? "near" : "holds") : "crosses";
-  return { index, state, value, unit: trace.column.unit, used, atS, crossedAtS, settlingS: settling(limit, raw, trace) };
+  return { index, state, value, unit: trace.column.unit, used, atS, crossedAtS, crossedBound, settlingS: settling(limit, raw, trace) };
 }
 
 /** Last time outside ± 5 % of the bounds' width around the reference (or zero), from the last disturbance on, s. */

@@ -74,9 +74,10 @@ export interface LimitVerdict {
   used: number;
   /** When the decisive figure was reached, s; null where that has no meaning. */
   atS: number | null;
-  /** First crossing, s. */
+  /** First crossing, s, and the bound that was crossed then. */
   crossedAtS: number | null;
-  /** Settling: last time outside ± 5 % of the band (within) or outside the band (settle), counted from the last push or step before it, s. */
+  crossedBound: "lo" | "hi" | null;
+  /** Last time outside ± 5 % of the bounds' width (within), or outside the band (settle), from the disturbance before it on, s; null: not settled, or no such figure. */
   settlingS: number | null;
 }
 

@@ -64,6 +64,8 @@ export class Run {
   readonly #lagged: boolean;
   readonly #changes: { atNs: number; parameter: string; value: number }[];
   readonly #joinsNs: number;
+  /** Start of the command's slot in its round. */
+  readonly #slotNs: number;
   readonly #periodNs: number;
   readonly #endNs: number;
   readonly #commandDelay: number;
@@ -93,6 +95,7 @@ export class Run {
     this.#endNs = endNs;
     this.#commandDelay = timing.commandDelay;
     this.#joinsNs = toNs(loop.start.networkJoinsAtS);
+    this.#slotNs = timing.ns.slots.find(({ message }) => message === "command")?.start ?? 0;
     this.#lagged = loop.actuator.lagS > 0;
     const start = loop.start.state ?? new Array<number>(n).fill(0);
     this.#logic = new LoopLogic(scenario, design, loop.start.estimate ?? start, { linear: false });
@@ -326,7 +329,7 @@ export class Run {
     const j = this.#nextAct++;
     const travels = j + this.#commandDelay;
     // The last command may be due in a round that the run does not have; then it needs no slot, and is not lost.
-    const change = this.#logic.act(raw.deliveries.command[travels] !== 0, travels * this.#periodNs >= this.#joinsNs);
+    const change = this.#logic.act(raw.deliveries.command[travels] !== 0, travels * this.#periodNs + this.#slotNs >= this.#joinsNs);
     const { silence } = this.#loop.actuator;
     if (change === "begins" && silence) {
       raw.silentReactions++;

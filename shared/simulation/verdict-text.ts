@@ -2,7 +2,6 @@
 import { createPlant } from "#shared/plants/registry.ts";
 import type { Limit, Scenario } from "#shared/scenario/schema.ts";
 import { percentText, plusMinusText, quantityText, withUnit } from "#shared/scenario/show.ts";
-import { disturbances } from "./limits.ts";
 import type { LimitVerdict, RunResult, Verdict } from "./result.ts";
 
 const WORDS = ["no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve"];
@@ -42,34 +41,24 @@ export function limitLabel(limit: Limit, scenario: Scenario): string {
   return `${name} ${rule}`;
 }
 
-/** How long settling could be watched, s: until something new began or the run ended. */
-function watchedS(scenario: Scenario, limit: Extract<Limit, { type: "settle" }>, endedAtS: number): number {
-  const next = disturbances(scenario).find((t) => t > limit.afterS) ?? endedAtS;
-  return Math.max(0, Math.min(next, endedAtS) - limit.afterS);
-}
-
 /** Outside its band for as long as it could be watched: then the figure is no settling time. */
-export function neverSettled(scenario: Scenario, verdict: LimitVerdict, endedAtS: number): boolean {
-  const limit = scenario.limits[verdict.index];
-  // The last grid point lies up to a tenth of a round before the next disturbance.
-  return limit?.type === "settle" && verdict.value > watchedS(scenario, limit, endedAtS) - scenario.round.periodS / 5;
+export function neverSettled(limit: Limit | undefined, verdict: LimitVerdict): boolean {
+  return limit?.type === "settle" && verdict.settlingS === null;
 }
 
 /** "the angle passes 12° at 4.29 s" */
-function crossing(scenario: Scenario, verdict: LimitVerdict, endedAtS: number): string {
+function crossing(scenario: Scenario, verdict: LimitVerdict): string {
   const limit = scenario.limits[verdict.index];
   if (limit.type === "saturation") return `the input is saturated for ${percentText(verdict.value)} of the time, ${percentText(limit.below)} allowed`;
   const { label, unit } = signalOf(scenario, limit.signal);
   const name = label.toLowerCase();
   switch (limit.type) {
     case "within": {
-      const bound = limit.hi !== null && (limit.lo === null || verdict.value > limit.hi) ? limit.hi : limit.lo;
+      const bound = verdict.crossedBound === "hi" ? limit.hi : limit.lo;
       return `the ${name} passes ${quantityText(bound ?? 0, unit)}${verdict.crossedAtS === null ? "" : ` at ${seconds(verdict.crossedAtS)}`}`;
     }
     case "settle":
-      if (neverSettled(scenario, verdict, endedAtS)) {
-        return `the ${name} has not settled after ${seconds(watchedS(scenario, limit, endedAtS))}, ${seconds(limit.withinS)} allowed`;
-      }
+      if (neverSettled(limit, verdict)) return `the ${name} has not settled after ${seconds(verdict.value)}, ${seconds(limit.withinS)} allowed`;
       return `the ${name} needs ${seconds(verdict.value)} to settle, ${seconds(limit.withinS)} allowed`;
     case "rms":
       return `the RMS of the ${name} is ${quantityText(verdict.value, unit)}, ${quantityText(limit.below, unit)} allowed`;
@@ -99,7 +88,7 @@ export function verdictSentence(
     .sort((a, b) => (a.crossedAtS ?? result.endedAtS) - (b.crossedAtS ?? result.endedAtS));
   if (result.ended === "track-end") {
     const [before] = crossed.filter(({ crossedAtS }) => crossedAtS !== null && crossedAtS < result.endedAtS);
-    const first = before ? ` First, ${crossing(scenario, before, result.endedAtS)}.` : "";
+    const first = before ? ` First, ${crossing(scenario, before)}.` : "";
     return {
       word,
       sentence: `The ${result.events.find(({ kind }) => kind === "track-end")?.text ?? "end of the track"} is reached at ${seconds(result.endedAtS)}.${first}`,
@@ -109,7 +98,7 @@ export function verdictSentence(
   if (crossed.length > 0) {
     const rest =
       count === 1 ? "" : `; ${crossed.length === count ? `all ${inWords(count)}` : `${inWords(crossed.length)} of ${inWords(count)}`} limits crossed`;
-    return { word, sentence: `${capital(crossing(scenario, crossed[0], result.endedAtS))}${rest}.` };
+    return { word, sentence: `${capital(crossing(scenario, crossed[0]))}${rest}.` };
   }
   const most = limits.reduce((a, b) => (b.used > a.used ? b : a));
   const kept = count === 1 ? "The limit is kept" : count === 2 ? "Both limits kept" : `All ${inWords(count)} limits kept`;

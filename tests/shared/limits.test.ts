@@ -47,6 +47,27 @@ describe("a limit", () => {
     expect(verdict.used).toBeCloseTo(0.8, 12);
   });
 
+  it("on settling is crossed when the signal is outside as the next disturbance comes, however early that is", () => {
+    const result = ran(
+      scalar((s) => {
+        s.loops[0].references = [{ signal: "x1", profile: { type: "steps", points: [{ atS: 0.5, value: 0 }] } }];
+        s.limits = [{ type: "settle", signal: "x1", band: 0.2, withinS: 2, afterS: 0 }];
+      }),
+    );
+    expect(result.limits[0]).toMatchObject({ state: "crosses", value: 0.5, settlingS: null });
+  });
+
+  it("tells which bound was crossed first, even when the other one is crossed further", () => {
+    const result = ran(
+      scalar((s) => {
+        s.loops[0].feedforward = [{ signal: "u1", profile: { type: "steps", points: [{ atS: 0, value: -8 }] } }];
+        s.limits = [{ type: "within", signal: "x1", lo: -0.1, hi: 0.9 }];
+      }),
+    );
+    expect(result.limits[0]).toMatchObject({ crossedAtS: 0, crossedBound: "hi" });
+    expect(result.limits[0].value).toBeLessThan(-7);
+  });
+
   it("on RMS is the root of the mean square", () => {
     const result = decay([{ type: "rms", signal: "x1", below: 1 }]);
     const x = column(result, "x1");

@@ -75,8 +75,7 @@ export function LimitStrip({ scenario, result }: LimitStripProps) {
                 {name} <span className="second">{rule}</span>
               </p>
               <p className="limit-value">
-                <Mark state={verdict.state} size={14} />{" "}
-                <b>{neverSettled(scenario, verdict, result.endedAtS) ? "not settled" : verdictValue(limit, verdict)}</b>{" "}
+                <Mark state={verdict.state} size={14} /> <b>{neverSettled(limit, verdict) ? "not settled" : verdictValue(limit, verdict)}</b>{" "}
                 <span className="second">{whenText(limit, verdict)}</span>
               </p>
               <UsedBar verdict={verdict} />

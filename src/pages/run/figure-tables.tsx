@@ -49,7 +49,7 @@ export function LimitTable({ scenario, result }: OfRun) {
                   <td className="nw">
                     <Mark state={verdict.state} size={13} quiet /> {MARK_WORDS[verdict.state]}
                   </td>
-                  <td className="r nw strong">{neverSettled(scenario, verdict, result.endedAtS) ? "not settled" : verdictValue(limit, verdict)}</td>
+                  <td className="r nw strong">{neverSettled(limit, verdict) ? "not settled" : verdictValue(limit, verdict)}</td>
                   <td className="r nw">{verdict.used > 10 ? "over 10 times" : percentText(verdict.used, 0)}</td>
                   <td className="r nw">{verdict.crossedAtS === null ? <span className="muted">never</span> : formatTime(verdict.crossedAtS, 3)}</td>
                 </tr>

@@ -122,6 +122,7 @@ export function madeRun(making: Making = {}): MadeRun {
         used: [0.74, 0.7, 0.92, 0.6, 0][index] ?? 0,
         atS: index < 2 ? 4.12 : null,
         crossedAtS: null,
+        crossedBound: null,
         settlingS: null,
       })),
       verdict: "holds",
