@@ -88,14 +88,16 @@ export function useStackHand({ cursor, layout, t, hand, onSelect }: StackHandInp
 
   const onKeyDown = (event: KeyboardEvent<HTMLElement>) => {
     if (event.ctrlKey || event.metaKey || event.altKey) return;
-    const rounds = event.shiftKey ? 10 : 1;
+    const rounds = event.shiftKey || event.key.startsWith("Page") ? 10 : 1;
     const at = cursor.timeS / layout.periodS;
     switch (event.key) {
       case "ArrowRight":
+      case "PageUp":
         cursor.setPlaying(false);
         cursor.moveTo((Math.floor(at + 1e-6) + rounds) * layout.periodS);
         break;
       case "ArrowLeft":
+      case "PageDown":
         cursor.setPlaying(false);
         cursor.moveTo((Math.ceil(at - 1e-6) - rounds) * layout.periodS);
         break;
