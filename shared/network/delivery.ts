@@ -51,15 +51,18 @@ export function drawDeliveries(scenario: Scenario, timing: RoundTiming, rounds: 
     const forced = overlays(message, slot, timing.ns.period, rounds, outages, toNs(loop.start.networkJoinsAtS));
     for (let k = 0; k < rounds; k++) {
       const u = uniform();
-      let lost: boolean;
-      if (process.type === "given") lost = given(process[message], process.then, k) === 0;
-      else if (channel && bad) lost = u < (bad[k] ? channel.lossInBad : channel.lossInGood);
-      else lost = process.type === "bernoulli" && u < process[message];
-      if (lost || u < forced[k]) delivered[k] = 0;
+      let p = 0;
+      if (process.type === "given") p = 1 - given(process[message], process.then, k);
+      else if (channel && bad) p = bad[k] ? channel.lossInBad : channel.lossInGood;
+      else if (process.type === "bernoulli") p = process[message];
+      if (u < either(p, forced[k])) delivered[k] = 0;
     }
   }
   return result;
 }
+
+/** Probability that at least one of two independent causes loses a message. */
+const either = (p: number, q: number): number => p + (1 - p) * q;
 
 function given(sequence: readonly (0 | 1)[], then: "error" | "delivered" | "repeat", k: number): 0 | 1 {
   if (k < sequence.length) return sequence[k];
@@ -84,7 +87,7 @@ function overlays(
     if (until <= from) continue;
     const first = Math.max(0, Math.floor((from - slot.end) / period));
     for (let k = first; k < rounds && k * period + slot.start < until; k++) {
-      if (k * period + slot.end > from) forced[k] = Math.max(forced[k], outage.lossProbability);
+      if (k * period + slot.end > from) forced[k] = either(forced[k], outage.lossProbability);
     }
   }
   return forced;

@@ -176,6 +176,19 @@ it("Bernoulli losses are as frequent as said and unrelated from round to round",
   expect(Math.abs(cross)).toBeLessThan(SE * Math.sqrt((0.1 * 0.9 * 0.35 * 0.65) / ROUNDS));
 });
 
+it("jamming loses by itself, on top of what the process loses: 1 - (1 - p)(1 - q), and never less", () => {
+  const process = { type: "bernoulli", measurement: 0.2, command: 0.2 } as const;
+  const jammed = scenario(process, 20_000);
+  jammed.losses.outages = [{ fromS: 0, untilS: 400, messages: ["command"], lossProbability: 0.3 }];
+  const { measurementDelivered, commandDelivered } = run(jammed, 1).rounds;
+  const before = losses(process, 20_000);
+  const law = 1 - 0.8 * 0.7;
+  const lost = Array.from(commandDelivered, (bit) => 1 - bit);
+  expect(Math.abs(mean(lost) - law)).toBeLessThan(SE * Math.sqrt((law * (1 - law)) / lost.length));
+  expect(before.command.every((bit, k) => bit <= lost[k])).toBe(true);
+  expect(Array.from(measurementDelivered, (bit) => 1 - bit)).toEqual(before.measurement);
+});
+
 it("one shared stream of random numbers loses the likelier message whenever it loses the other", () => {
   const { measurement, command } = losses({ type: "bernoulli", measurement: 0.1, command: 0.35 }, 5000, 3, "shared");
   expect(measurement.some((bit) => bit === 1)).toBe(true);
