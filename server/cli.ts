@@ -7,6 +7,7 @@
 import { readFileSync, writeFileSync } from "node:fs";
 import { parseArgs } from "node:util";
 import { z } from "zod";
+import { parseJson } from "#shared/api/json.ts";
 import { roundTiming } from "#shared/network/round.ts";
 import type { Issue } from "#shared/scenario/issues.ts";
 import { parseScenario } from "#shared/scenario/parse.ts";
@@ -42,11 +43,9 @@ function readScenario(file: string): unknown {
   } catch (cause) {
     throw new Refused(`${file} cannot be read: ${cause instanceof Error ? cause.message : String(cause)}`);
   }
-  try {
-    return JSON.parse(text);
-  } catch (cause) {
-    throw new Refused(`${file} is not JSON: ${cause instanceof Error ? cause.message : String(cause)}. NaN and Infinity are not numbers of JSON.`);
-  }
+  const parsed = parseJson(text);
+  if (!parsed.ok) throw new Refused(`${file}: ${parsed.message}`);
+  return parsed.value;
 }
 
 const listed = (issues: readonly Issue[]): string =>
@@ -124,6 +123,8 @@ function main(): unknown {
     },
   });
   const [command, file, ...rest] = positionals;
+  const misplaced = command === "run" ? [] : ["seed", "series", "rounds", "explicit"].filter((name) => name in values);
+  if (misplaced.length > 0) throw new Refused(`--${misplaced.join(", --")}: only for run.\n${USAGE}`);
   if (values.help) return USAGE;
   if (rest.length > 0) throw new Refused(`${rest.join(" ")}: one file at a time.\n${USAGE}`);
   if (command === "schema" && !file) return jsonSchema();

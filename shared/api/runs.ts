@@ -20,7 +20,7 @@ const limitVerdictSchema = z.strictObject({
   used: z.number(),
   atS: z.number().nullable(),
   crossedAtS: z.number().nullable(),
-  crossedBound: z.enum(["lo", "hi"]).nullable(),
+  crossedBound: z.enum(["lo", "hi"]).nullable().default(null),
   settlingS: z.number().nullable(),
 }) satisfies z.ZodType<LimitVerdict>;
 

@@ -93,6 +93,9 @@ function controllerModel(a: Float64Array, b: Float64Array, n: number, m: number,
   return { n, m, period, between, rest, start: hold(instants.sampleNs / 1e9) };
 }
 
+/** Growth over one round beyond this makes every number meaningless in double precision. */
+const GROWTH = 1e12;
+
 /** Largest modulus among the eigenvalues is clearly above 1: the powers of A grow without bound. */
 function grows(a: Float64Array, n: number): boolean {
   let power = a;
@@ -122,6 +125,13 @@ export function designLoop(scenario: Scenario, ns: { period: number; sample: num
   const restS = (latencyNs - wholePeriods * ns.period) / 1e9;
   const instants: LoopInstants = { periodNs: ns.period, sampleNs: ns.sample, latencyNs, periodS, wholePeriods, restS };
   const model = controllerModel(a, b, n, m, instants);
+  if (![model.period, model.rest, model.start].every(({ phi, gamma }) => [...phi, ...gamma].every((value) => Math.abs(value) < GROWTH))) {
+    fail(
+      "round.periodS",
+      "Within one round the machine's motion grows beyond what can be computed with. Shorten the period, or look at the machine's matrices.",
+    );
+    return { design: null, issues };
+  }
   const { c, d } = measuredRows(loop);
   const p = loop.sensor.signals.length;
 

@@ -1,10 +1,11 @@
 /** Rules that span several fields of a scenario. The shape and the single ranges are in schema.ts. */
 import { designLoop, type LoopDesign } from "#shared/control/design.ts";
 import { quantumOf } from "#shared/control/encoding.ts";
-import { type RoundTiming, roundTiming } from "#shared/network/round.ts";
+import { type RoundTiming, roundTiming, toNs } from "#shared/network/round.ts";
 import type { Plant } from "#shared/plants/plant.ts";
 import { createPlant } from "#shared/plants/registry.ts";
 import { plantSchema } from "#shared/plants/schema.ts";
+import { POINTS_PER_ROUND } from "#shared/simulation/recorder.ts";
 import type { Issue } from "./issues.ts";
 import { schemaAt } from "./parse.ts";
 import { permittedRange, quantityMeta } from "./quantity.ts";
@@ -12,6 +13,9 @@ import type { Encoding, Loop, Scenario } from "./schema.ts";
 
 /** Most rounds of one run; keeps a run within the memory of a browser tab. */
 export const MAX_ROUNDS = 200_000;
+
+/** Most numbers in the recorded series of one run: 160 MB. */
+const MAX_VALUES = 20_000_000;
 
 export interface Checked {
   issues: Issue[];
@@ -228,6 +232,15 @@ function checkLoop(report: Report, scenario: Scenario, loop: Loop, plant: Plant)
     checkProfile(report, `${at}.feedforward[${i}].profile`, profile);
   });
   const rounds = roundsOf(scenario);
+  const columns = plant.outputs.length + m + loop.references.length;
+  if (rounds <= MAX_ROUNDS && rounds * POINTS_PER_ROUND * columns > MAX_VALUES) {
+    const most = Math.floor(MAX_VALUES / (POINTS_PER_ROUND * columns));
+    report.add(
+      "out-of-range",
+      "run.durationS",
+      `${rounds} rounds of ${columns} signals are more than a run can record; at most ${most} rounds, ${(most * scenario.round.periodS).toFixed(1)} s.`,
+    );
+  }
   if (rounds > MAX_ROUNDS) {
     report.add(
       "out-of-range",
@@ -342,11 +355,11 @@ function checkLimits(report: Report, scenario: Scenario, plant: Plant): void {
     }
     const end = scenario.run.durationS;
     if (limit.type === "settle") {
-      if (limit.afterS + limit.withinS > end) {
+      if (toNs(limit.afterS) + toNs(limit.withinS) > toNs(end)) {
         report.add(
           "out-of-range",
           `${path}.withinS`,
-          `It may settle until ${limit.afterS + limit.withinS} s, but the run ends at ${end} s. Lengthen the run, or shorten the time.`,
+          `It may settle until ${(limit.afterS + limit.withinS).toFixed(3)} s, but the run ends at ${end} s. Lengthen the run, or shorten the time.`,
         );
       }
       return;

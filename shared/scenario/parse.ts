@@ -20,6 +20,9 @@ const show = (value: unknown): string => {
   return text === undefined ? String(value) : text.length > 80 ? `${text.slice(0, 77)}...` : text;
 };
 
+/** "an object": what a schema expects, with its article. */
+const oneOf = (expected: string): string => `${/^[aeiou]/.test(expected) ? "an" : "a"} ${expected}`;
+
 type Def = {
   type: string;
   innerType?: z.ZodType;
@@ -105,8 +108,8 @@ export function describeIssues(schema: z.ZodType, error: z.ZodError, input: unkn
           path,
           message:
             value === undefined
-              ? `${path || "The file"} is missing (expected: ${issue.expected}).`
-              : `${path || "The file"} has to be ${issue.expected}, found ${show(value)}.`,
+              ? `${path || "The file"} is missing; ${oneOf(issue.expected)} is expected.`
+              : `${path || "The file"} has to be ${oneOf(issue.expected)}, found ${show(value)}.`,
         },
       ];
     }

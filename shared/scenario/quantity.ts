@@ -10,9 +10,10 @@ export interface QuantityMeta {
   integer: boolean;
 }
 
-const format = (value: number): string => (Math.abs(value) >= 1e5 || (value !== 0 && Math.abs(value) < 1e-3) ? value.toExponential() : String(value));
+const format = (value: number): string =>
+  Math.abs(value) >= 1e5 || (value !== 0 && Math.abs(value) < 1e-3) ? value.toExponential().replace("e+", "e") : String(value);
 
-/** "0.01 to 100000 kg" */
+/** "0.01 to 1e5 kg" */
 export const permittedRange = (meta: QuantityMeta): string => `${format(meta.min)} to ${format(meta.max)}${meta.unit ? ` ${meta.unit}` : ""}`;
 
 function quantityOf(meta: QuantityMeta) {

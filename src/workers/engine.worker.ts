@@ -1,7 +1,7 @@
 import { expose } from "comlink";
 import { digestRun } from "#shared/simulation/digest.ts";
-import { prepareRun, simulate } from "#shared/simulation/simulate.ts";
-import type { EngineWorker, WorkerOutcome } from "./contract.ts";
+import { prepareRun } from "#shared/simulation/simulate.ts";
+import type { EngineProgress, EngineWorker, WorkerOutcome } from "./contract.ts";
 
 /** Rounds between two looks at the clock, and how long a stretch may last before messages are heard again. */
 const ROUNDS = 50;
@@ -26,6 +26,26 @@ const turn = (): Promise<void> =>
     port2.postMessage(null);
   });
 
+/** Simulates so that messages are heard in between; ends as cancelled when it is no longer wanted. */
+async function inStretches(
+  scenario: unknown,
+  seed: number | null,
+  wanted: () => boolean,
+  onProgress?: (progress: EngineProgress) => void,
+): Promise<WorkerOutcome> {
+  const prepared = prepareRun(scenario, seed);
+  if (!prepared.ok) return prepared;
+  const { run } = prepared;
+  for (let since = performance.now(); !run.advance(ROUNDS); ) {
+    if (performance.now() - since < STRETCH_MS) continue;
+    onProgress?.({ round: run.round, rounds: run.rounds });
+    await turn();
+    if (!wanted()) return { ok: false, cancelled: true };
+    since = performance.now();
+  }
+  return { ok: true, result: run.result() };
+}
+
 /** A first run is many times slower than a later one; without this the first edits would lag behind the hand. */
 async function warmUp(mine: number, scenario: unknown, seed: number | null): Promise<void> {
   while (runs < WARM_RUNS) {
@@ -41,25 +61,15 @@ async function warmUp(mine: number, scenario: unknown, seed: number | null): Pro
 const engine: EngineWorker = {
   async run(scenario, seed, onProgress): Promise<WorkerOutcome> {
     const mine = ++newest;
-    const prepared = prepareRun(scenario, seed);
-    if (!prepared.ok) return prepared;
-    const { run } = prepared;
-    for (let since = performance.now(); !run.advance(ROUNDS); ) {
-      if (performance.now() - since < STRETCH_MS) continue;
-      onProgress?.({ round: run.round, rounds: run.rounds });
-      await turn();
-      if (mine !== newest) return { ok: false, cancelled: true };
-      since = performance.now();
-    }
-    const result = run.result();
-    void warmUp(mine, scenario, seed);
-    return { ok: true, result };
+    const outcome = await inStretches(scenario, seed, () => mine === newest, onProgress);
+    if (outcome.ok) void warmUp(mine, scenario, seed);
+    return outcome;
   },
   cancel() {
     newest++;
   },
   async digest(scenario, seed) {
-    const outcome = simulate(scenario, seed);
+    const outcome = await inStretches(scenario, seed, () => true);
     return outcome.ok ? digestRun(outcome.result) : null;
   },
 };

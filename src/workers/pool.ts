@@ -20,12 +20,16 @@ export function createEngine(): EngineClient {
   const remote: Remote<EngineWorker> = wrap<EngineWorker>(worker);
   const open = new Set<(error: EngineBroken | null) => void>();
   let disposed = false;
+  /** Set for good when the worker could not start or broke: calls to it would never be answered. */
+  let broken: EngineBroken | null = null;
   worker.addEventListener("error", (event) => {
-    for (const settle of open) settle(new EngineBroken(event.message || "the engine's worker could not start"));
+    broken = new EngineBroken(event.message || "the engine's worker could not start");
+    for (const settle of [...open]) settle(broken);
   });
 
   function guarded<T>(call: Promise<T>, onDispose: T): Promise<T> {
     if (disposed) return Promise.resolve(onDispose);
+    if (broken) return Promise.reject(broken);
     return new Promise<T>((resolve, reject) => {
       const settle = (error: EngineBroken | null) => {
         open.delete(settle);

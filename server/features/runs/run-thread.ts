@@ -7,16 +7,25 @@ import type { Answered, Asked, Computed } from "./simulator.ts";
 
 const TURN_MS = 8;
 const ROUNDS_AT_ONCE = 4;
+/** Computing time after which a run is given up: a stiff machine could otherwise hold the thread for hours. */
+const LIMIT_MS = 60_000;
 
 async function compute({ scenario, seed }: Asked): Promise<Computed> {
   const prepared = prepareRun(scenario, seed);
   if (!prepared.ok) return prepared;
+  const { run } = prepared;
+  let spent = 0;
   for (let done = false; !done; ) {
-    const until = performance.now() + TURN_MS;
-    while (!done && performance.now() < until) done = prepared.run.advance(ROUNDS_AT_ONCE);
+    const from = performance.now();
+    while (!done && performance.now() < from + TURN_MS) done = run.advance(ROUNDS_AT_ONCE);
+    spent += performance.now() - from;
+    if (!done && spent > LIMIT_MS) {
+      const message = `The server gives a run ${LIMIT_MS / 1000} s of computing; this one had reached round ${run.round} of ${run.rounds}. Shorten the run, or allow larger tolerances.`;
+      return { ok: false, issues: [{ code: "takes-too-long", path: "run.durationS", message }] };
+    }
     await setImmediate();
   }
-  return { ok: true, record: await recordOf(scenario, prepared.run.result()) };
+  return { ok: true, record: await recordOf(scenario, run.result()) };
 }
 
 const port = parentPort;
