@@ -53,14 +53,16 @@ export function useSaving({ teamId, scenarioId, control, scenario, keepCopy, onS
     save.mutate(
       { baseRevision, scenario, note },
       {
-        onSuccess: ({ latest }) => {
-          control.rebase(toBase(latest));
+        onSuccess: () => {
+          // What was sent, not the latest: a colleague may have saved on top of it by now, and the next save has to say so.
+          const saved = { revision: baseRevision + 1, scenario };
+          control.rebase(saved);
           setConflict(null);
           onSaved();
-          const title = `What changed from revision ${before.revision} to ${latest.number}`;
+          const title = `What changed from revision ${before.revision} to ${saved.revision}`;
           toast({
-            text: `Saved as revision ${latest.number}.`,
-            action: { word: "Show what changed", onPress: () => onShowChanges(title, describeChanges(before.scenario, latest.scenario)) },
+            text: `Saved as revision ${saved.revision}.`,
+            action: { word: "Show what changed", onPress: () => onShowChanges(title, describeChanges(before.scenario, saved.scenario)) },
           });
         },
         onError: async (cause) => {

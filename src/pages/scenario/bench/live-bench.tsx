@@ -169,7 +169,7 @@ function Head({ bench, timing, issues, lastGood, stale, onFirstIssue }: HeadProp
       meta={
         <>
           {basis}
-          <span title="From asking the engine to its answer">run in {withUnit(significant(run.elapsedMs, 2), "ms")}</span>
+          <span title="From asking the engine to its answer">run in {elapsedText(run.elapsedMs)}</span>
         </>
       }
     />
@@ -208,4 +208,5 @@ function StaleWords({ run, lastGood, missingS }: { run: BenchRun | null; lastGoo
   );
 }
 
+const elapsedText = (ms: number): string => (ms < 1000 ? withUnit(significant(ms, 2), "ms") : withUnit(significant(ms / 1000, 2), "s"));
 const countOf = (count: number): string => (count === 1 ? "One field" : counted(count, "field"));

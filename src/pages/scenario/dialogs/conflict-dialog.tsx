@@ -79,7 +79,8 @@ export function ConflictDialog({ base, mine, theirs, busy, error, onResolve, onC
     <Dialog
       open
       broad
-      onOpenChange={onClose}
+      // What is being saved takes the draft's place afterwards: nothing may be edited meanwhile.
+      onOpenChange={() => !busy && onClose()}
       title={`${theirs.author.name} saved revision ${theirs.number} in the meantime`}
       text={
         <>

@@ -36,7 +36,8 @@ export function SaveDialog({ number, base, changes, busy, error, onSave, onClose
   return (
     <Dialog
       open
-      onOpenChange={onClose}
+      // What is being saved takes the draft's place afterwards: nothing may be edited meanwhile.
+      onOpenChange={() => !busy && onClose()}
       title={`Save revision ${number}`}
       text="A revision never changes afterwards. Runs and reviews refer to it by number."
       actions={
