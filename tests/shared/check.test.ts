@@ -45,7 +45,7 @@ describe("a bad value is named with field, value and permitted range", () => {
     ["an unknown plant", "loops[0].plant.type", "boat", /"boat"; permitted: "pendulum-on-cart", "state-space"/],
     ["a missing section", "radio", undefined, /missing/],
     ["a wrong choice", "loops[0].controller.placement", "moon", /permitted: "sensor", "apart", "actuator"/],
-    ["a list for an object", "round", [], /has to be object/],
+    ["a list for an object", "round", [], /has to be an object/],
   ])("%s", (_what, path, value, message) => {
     const issue = issuesOf(withField(path, value)).find((candidate) => candidate.path === path);
     expect(issue?.message).toMatch(message);

@@ -13,6 +13,7 @@ export interface LimitStripProps {
 
 /** "8.84°", "1.38 s", "0.0 %" */
 export function verdictValue(limit: Limit, verdict: LimitVerdict): string {
+  if (verdict.value === Number.MAX_VALUE) return "diverged";
   if (limit.type === "saturation") return percentText(verdict.value);
   const { unit, factor } = shownUnit(verdict.unit);
   const shown = verdict.value * factor;
