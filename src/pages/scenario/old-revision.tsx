@@ -76,7 +76,7 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
             </span>
           </h1>
         </div>
-        <div className="acts">
+        <div className="acts flex-wrap!">
           <Button onClick={() => downloadJson(`${scenario.name} revision ${detail.number}`, scenario)}>Export as JSON</Button>
           <Button onClick={() => navigate(here, { state: { restore: { revision: detail.number, scenario } } })}>Restore as a draft</Button>
           <LinkButton kind="go" to={here}>
