@@ -66,7 +66,7 @@ export const toNs = (seconds: number): number => Math.round(seconds * 1e9);
 
 /** A value that is not encoded travels as a 32-bit number. */
 const bitsOf = (encoding: Encoding | null): number => encoding?.bits ?? 32;
-const ms = (ns: number): string => `${(ns / 1e6).toFixed(2)} ms`;
+const ms = (ns: number): string => (Math.abs(ns) < 1e5 && ns !== 0 ? `${(ns / 1e3).toFixed(0)} µs` : `${(ns / 1e6).toFixed(2)} ms`);
 /** Rounded up: who enters this period gets a round that fits. */
 const msAtLeast = (ns: number): string => ms(Math.ceil(ns / 1e4) * 1e4);
 
