@@ -61,7 +61,7 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
   return (
     <div className="workshop" data-view={view}>
       <DocumentTitle>{`${scenario.name}, revision ${detail.number}`}</DocumentTitle>
-      <div className="title">
+      <div className="title flex-wrap!">
         <div>
           <p className="trail">
             <Link to={paths.scenarios(team.id)}>Scenarios</Link> / {plantTitle(scenario.loops[0].plant)}
@@ -76,7 +76,7 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
             </span>
           </h1>
         </div>
-        <div className="acts flex-wrap!">
+        <div className="acts flex-wrap! max-md:ml-0!">
           <Button onClick={() => downloadJson(`${scenario.name} revision ${detail.number}`, scenario)}>Export as JSON</Button>
           <Button onClick={() => navigate(here, { state: { restore: { revision: detail.number, scenario } } })}>Restore as a draft</Button>
           <LinkButton kind="go" to={here}>
