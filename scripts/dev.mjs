@@ -7,7 +7,7 @@ import { command } from "./lib/system.mjs";
 await command(async () => {
   await ensurePackages();
   const url = await openDatabase();
-  const watched = ["node_modules/tsx/dist/cli.mjs", "watch", "--clear-screen=false", "server/index.ts", "--dev"];
+  const watched = ["node_modules/tsx/dist/cli.mjs", "watch", "--clear-screen=false", "--exclude=**/node_modules/**", "server/index.ts", "--dev"];
   const { address, ended } = await startServer(watched, { DATABASE_URL: url, NODE_ENV: "development" });
   await announce(address);
   await ended;
