@@ -198,7 +198,7 @@ function paintTitle(ctx: Ctx, frame: Frame, lane: PlotLane): void {
     x += ctx.measureText(text).width;
   };
   add(label, FONT.strong(palette));
-  if (isLetter(symbol)) {
+  if (isLetter(lane.signal)) {
     x += 4;
     add(symbol, FONT.symbol(palette));
   }
@@ -206,14 +206,15 @@ function paintTitle(ctx: Ctx, frame: Frame, lane: PlotLane): void {
 }
 
 /** A letter of the field, accents counted apart; a name that only repeats the label is not shown. */
-const isLetter = (symbol: string): boolean => symbol !== "" && symbol.length <= 3;
+const isLetter = ({ label, symbol }: PlotLane["signal"]): boolean => symbol !== "" && symbol.length <= 3 && symbol !== label;
 
 /** Width of a plot's title, so that the value at the cursor keeps clear of it. */
-export function titleWidth(ctx: Ctx, palette: Pick<Palette, "face">, { label, symbol, unit }: PlotLane["signal"]): number {
+export function titleWidth(ctx: Ctx, palette: Pick<Palette, "face">, signal: PlotLane["signal"]): number {
+  const { label, symbol, unit } = signal;
   ctx.font = FONT.strong(palette);
   let width = ctx.measureText(label).width;
   ctx.font = FONT.title(palette);
-  if (isLetter(symbol)) width += 4 + ctx.measureText(symbol).width;
+  if (isLetter(signal)) width += 4 + ctx.measureText(symbol).width;
   return width + (unit === "" ? 0 : ctx.measureText(`, ${unit}`).width);
 }
 

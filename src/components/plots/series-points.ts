@@ -19,16 +19,20 @@ export function nearestIndex(t: ArrayLike<number>, timeS: number): number {
   return next !== undefined && next - timeS < timeS - (t[at] as number) ? at + 1 : at;
 }
 
-/** Value at an instant: straight between two points, or (stair) the last point's. NaN where nothing was recorded. */
+/**
+ * Value at an instant: straight between two points, or (stair) the last point's. A run may end between two points, so the last
+ * value stands for one step more; NaN beyond that, where nothing was recorded.
+ */
 export function valueAt(t: ArrayLike<number>, values: ArrayLike<number>, timeS: number, stair = false): number {
-  if (t.length === 0 || timeS > (t[t.length - 1] as number) + 1e-9) return Number.NaN;
+  const step = t.length > 1 ? (t[1] as number) - (t[0] as number) : 0;
+  if (t.length === 0 || timeS > (t[t.length - 1] as number) + step + 1e-9) return Number.NaN;
   const at = indexAt(t, timeS);
   const here = values[at] as number;
   const next = values[at + 1];
   if (stair || next === undefined) return here;
   const from = t[at] as number;
-  const step = (t[at + 1] as number) - from;
-  return step > 0 ? here + ((next - here) * Math.max(0, timeS - from)) / step : here;
+  const width = (t[at + 1] as number) - from;
+  return width > 0 ? here + ((next - here) * Math.max(0, timeS - from)) / width : here;
 }
 
 export interface Extremes {

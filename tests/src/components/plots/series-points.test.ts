@@ -11,8 +11,11 @@ describe("reading a series at an instant", () => {
     expect(valueAt(t, v, 3, true)).toBe(20);
     expect(valueAt(t, v, 4)).toBe(-20);
   });
+  it("holds the last value for one step, since a run may end between two points", () => {
+    expect(valueAt(t, v, 4.9)).toBe(-20);
+  });
   it("tells nothing where nothing was recorded", () => {
-    expect(valueAt(t, v, 4.1)).toBeNaN();
+    expect(valueAt(t, v, 5.1)).toBeNaN();
     expect(valueAt(new Float64Array(0), new Float64Array(0), 0)).toBeNaN();
   });
   it("finds the point before and the point nearest", () => {
