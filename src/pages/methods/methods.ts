@@ -188,7 +188,7 @@ export const METHODS: readonly MethodGroup[] = [
       },
       {
         title: "The same run everywhere",
-        text: "The same revision, seed and engine give the same run bit for bit in every browser, worker and server: the engine uses only arithmetic that is exact everywhere, and brings its own elementary functions. The digest of a run is a SHA-256 over all of its numbers.",
+        text: "The same revision, seed and engine give the same run bit for bit in every browser, worker and server: the engine uses only arithmetic that is exact everywhere, and brings its own elementary functions. The digest of a run is a SHA-256 over its series and rounds, from which figures, events and verdicts follow.",
         source: "IEEE Std 754-2019; FIPS PUB 180-4",
       },
     ],

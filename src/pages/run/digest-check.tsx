@@ -30,7 +30,7 @@ export function DigestCheck({ run, scenario, engine }: { run: RunDetail; scenari
     <section className="run-part" aria-labelledby="run-digest">
       <div className="hrow">
         <h2 id="run-digest">Same bits</h2>
-        <span className="rt">SHA-256 over every number of the run</span>
+        <span className="rt">SHA-256 over series and rounds</span>
       </div>
       <p className="digest">{run.digest}</p>
       <div className="digest-row" aria-live="polite">
