@@ -7,7 +7,9 @@ import type { LimitVerdict, RunResult, Verdict } from "./result.ts";
 const WORDS = ["no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve"];
 const inWords = (count: number): string => WORDS[count] ?? String(count);
 const seconds = (value: number): string => withUnit(value < 10 ? value.toFixed(2) : value.toFixed(1), "s");
-const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
+/** Names such as x1 and u2 are symbols: no article, and no capital at the head of a sentence. */
+const SYMBOL = /^[a-z]\d+\b/;
+const capital = (text: string): string => (SYMBOL.test(text) ? text : text.charAt(0).toUpperCase() + text.slice(1));
 
 export const VERDICT_WORDS: Record<Verdict, string> = { holds: "Holds", near: "Near", crosses: "Crosses", "not-decided": "Not decided" };
 
@@ -15,6 +17,8 @@ function signalOf(scenario: Scenario, name: string): { label: string; unit: stri
   const plant = createPlant(scenario.loops[0].plant);
   return [...plant.outputs, ...plant.inputs].find((signal) => signal.name === name) ?? { label: name, unit: "" };
 }
+
+const said = (label: string): string => (SYMBOL.test(label) ? label : `the ${label.toLowerCase()}`);
 
 /** "Angle" and "within ±12°", for labels that set the first part in bold. */
 export function limitParts(limit: Limit, scenario: Scenario): { name: string; rule: string } {
@@ -51,17 +55,17 @@ function crossing(scenario: Scenario, verdict: LimitVerdict): string {
   const limit = scenario.limits[verdict.index];
   if (limit.type === "saturation") return `the input is saturated for ${percentText(verdict.value)} of the time, ${percentText(limit.below)} allowed`;
   const { label, unit } = signalOf(scenario, limit.signal);
-  const name = label.toLowerCase();
+  const name = said(label);
   switch (limit.type) {
     case "within": {
       const bound = verdict.crossedBound === "hi" ? limit.hi : limit.lo;
-      return `the ${name} passes ${quantityText(bound ?? 0, unit)}${verdict.crossedAtS === null ? "" : ` at ${seconds(verdict.crossedAtS)}`}`;
+      return `${name} passes ${quantityText(bound ?? 0, unit)}${verdict.crossedAtS === null ? "" : ` at ${seconds(verdict.crossedAtS)}`}`;
     }
     case "settle":
-      if (neverSettled(limit, verdict)) return `the ${name} has not settled after ${seconds(verdict.value)}, ${seconds(limit.withinS)} allowed`;
-      return `the ${name} needs ${seconds(verdict.value)} to settle, ${seconds(limit.withinS)} allowed`;
+      if (neverSettled(limit, verdict)) return `${name} has not settled after ${seconds(verdict.value)}, ${seconds(limit.withinS)} allowed`;
+      return `${name} needs ${seconds(verdict.value)} to settle, ${seconds(limit.withinS)} allowed`;
     case "rms":
-      return `the RMS of the ${name} is ${quantityText(verdict.value, unit)}, ${quantityText(limit.below, unit)} allowed`;
+      return `the RMS of ${name} is ${quantityText(verdict.value, unit)}, ${quantityText(limit.below, unit)} allowed`;
   }
 }
 
@@ -69,9 +73,9 @@ function using(scenario: Scenario, verdict: LimitVerdict): string {
   const limit = scenario.limits[verdict.index];
   const share = percentText(Math.round(verdict.used * 100) / 100);
   if (limit.type === "saturation") return `saturation uses ${share} of what is allowed`;
-  const name = signalOf(scenario, limit.signal).label.toLowerCase();
-  if (limit.type === "settle") return `settling of the ${name} uses ${share} of its time`;
-  return `the ${limit.type === "rms" ? `RMS of the ${name}` : name} uses ${share} of its limit`;
+  const name = said(signalOf(scenario, limit.signal).label);
+  if (limit.type === "settle") return `settling of ${name} uses ${share} of its time`;
+  return `${limit.type === "rms" ? `the RMS of ${name}` : name} uses ${share} of its limit`;
 }
 
 /** Word and sentence for a verdict line: "Holds" and "All five limits kept; the angle uses 74 % of its limit." */

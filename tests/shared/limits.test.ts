@@ -115,9 +115,9 @@ describe("the verdict in words", () => {
       });
       return verdictSentence(scenario, ran(scenario)).sentence.replaceAll(/[\u2009\u2060]/g, "");
     };
-    expect(told(8)).toBe("The x1 needs 2.30s to settle, 1.00s allowed.");
-    expect(told(2)).toBe("The x1 has not settled after 2.00s, 1.00s allowed.");
-    expect(told(8, [1.5])).toBe("The x1 has not settled after 1.50s, 1.00s allowed.");
+    expect(told(8)).toBe("x1 needs 2.30s to settle, 1.00s allowed.");
+    expect(told(2)).toBe("x1 has not settled after 2.00s, 1.00s allowed.");
+    expect(told(8, [1.5])).toBe("x1 has not settled after 1.50s, 1.00s allowed.");
   });
 
   it("labels limits in the units that people read", () => {
