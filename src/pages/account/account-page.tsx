@@ -24,45 +24,47 @@ export function AccountPage() {
           <Button onClick={leave}>Sign out</Button>
         </div>
       </div>
-      <div className="max-w-[640px] border-t-rule border-t-ink pt-4">
-        <h2 className="h2">Teams</h2>
-        <div className="scroll-x">
-          <table className="t">
-            <thead>
-              <tr>
-                <th scope="col">Team</th>
-                <th scope="col">Your roles</th>
-              </tr>
-            </thead>
-            <tbody>
-              {memberships.map(({ team, roles }) => (
-                <tr key={team.id}>
-                  <td>
-                    <Link to={paths.scenarios(team.id)}>{team.name}</Link>
-                  </td>
-                  <td>
-                    {listed(roles)} <Link to={paths.members(team.id)}>what that allows</Link>
-                  </td>
-                </tr>
-              ))}
-              {memberships.length === 0 && (
+      <div className="border-t-rule border-t-ink pt-4">
+        <div className="max-w-[640px]">
+          <h2 className="h2">Teams</h2>
+          <div className="scroll-x">
+            <table className="t">
+              <thead>
                 <tr>
-                  <td colSpan={2} className="second">
-                    You are in no team yet. An administrator of a team has to add you.
-                  </td>
+                  <th scope="col">Team</th>
+                  <th scope="col">Your roles</th>
                 </tr>
-              )}
-            </tbody>
-          </table>
+              </thead>
+              <tbody>
+                {memberships.map(({ team, roles }) => (
+                  <tr key={team.id}>
+                    <td>
+                      <Link to={paths.scenarios(team.id)}>{team.name}</Link>
+                    </td>
+                    <td>
+                      {listed(roles)} <Link to={paths.members(team.id)}>what that allows</Link>
+                    </td>
+                  </tr>
+                ))}
+                {memberships.length === 0 && (
+                  <tr>
+                    <td colSpan={2} className="second">
+                      You are in no team yet. An administrator of a team has to add you.
+                    </td>
+                  </tr>
+                )}
+              </tbody>
+            </table>
+          </div>
+          <h2 className="h2 mt-8 mb-2">Light and dark</h2>
+          <Choice
+            label="Light and dark"
+            options={THEMES.map((value) => ({ value, word: value === "system" ? "as the system" : value }))}
+            value={theme}
+            onChoose={setTheme}
+          />
+          <p className="note muted mt-2">Kept in this browser. Print is always light.</p>
         </div>
-        <h2 className="h2 mt-8 mb-2">Light and dark</h2>
-        <Choice
-          label="Light and dark"
-          options={THEMES.map((value) => ({ value, word: value === "system" ? "as the system" : value }))}
-          value={theme}
-          onChoose={setTheme}
-        />
-        <p className="note muted mt-2">Kept in this browser. Print is always light.</p>
       </div>
     </>
   );
