@@ -93,8 +93,8 @@ function controllerModel(a: Float64Array, b: Float64Array, n: number, m: number,
   return { n, m, period, between, rest, start: hold(instants.sampleNs / 1e9) };
 }
 
-/** Growth over one round beyond this makes every number meaningless in double precision. */
-const GROWTH = 1e12;
+/** Growth over one round beyond this would overflow as soon as it is multiplied by anything. */
+const GROWTH = 1e100;
 
 /** Largest modulus among the eigenvalues is clearly above 1: the powers of A grow without bound. */
 function grows(a: Float64Array, n: number): boolean {
