@@ -40,6 +40,18 @@ const PARTS = {
   browser: { title: "Browser", needs: [ensurePostgres, ensureChromium], run: (filters) => vitest("browser", ["browser"], filters) },
 };
 
+/** A part whose needs cannot be had has failed; the others still run. */
+async function runPart({ needs = [], run: runIt }, filters) {
+  try {
+    for (const install of needs) await install();
+    return await runIt(filters);
+  } catch (error) {
+    if (!(error instanceof Trouble)) throw error;
+    process.stdout.write(`${error.message}\n`);
+    return { passed: 0, failed: 1 };
+  }
+}
+
 function chosen(args) {
   const only = args.filter((arg) => arg.startsWith("--only=")).flatMap((arg) => arg.slice("--only=".length).split(","));
   const unknown = only.find((part) => !(part in PARTS));
@@ -50,12 +62,11 @@ function chosen(args) {
 await command(async () => {
   const { parts, filters } = chosen(process.argv.slice(2));
   await ensurePackages();
-  for (const install of new Set(parts.flatMap((part) => PARTS[part].needs ?? []))) await install();
   const sums = [];
   for (const part of parts) {
     process.stdout.write(`\n${PARTS[part].title}\n`);
     const began = Date.now();
-    sums.push({ part, ...(await PARTS[part].run(filters)), took: seconds(began) });
+    sums.push({ part, ...(await runPart(PARTS[part], filters)), took: seconds(began) });
   }
   const total = (kind) => sums.reduce((sum, line) => sum + (line[kind] ?? 0), 0);
   process.stdout.write("\n");
