@@ -1,5 +1,5 @@
 import { Dialog as Radix } from "radix-ui";
-import { type ReactNode, useRef } from "react";
+import { type ReactNode, useLayoutEffect, useRef } from "react";
 import { Button } from "./button.tsx";
 
 export interface DialogProps {
@@ -17,10 +17,22 @@ export interface DialogProps {
   above?: boolean;
 }
 
+/** An entry of a menu is gone when its dialog closes; the button of the menu stays. */
+function lasting(element: Element | null): Element | null {
+  const button = element?.closest("[role=menu]")?.getAttribute("aria-labelledby");
+  return button ? document.getElementById(button) : element;
+}
+
 export function Dialog({ open, onOpenChange, title, text, children, actions, cancel = "Cancel", broad, above }: DialogProps) {
   const shut = above ? (event: Event) => event.preventDefault() : undefined;
   // A press that begins on a text inside and ends on the veil (selecting words) closes nothing.
   const veil = useRef<HTMLDivElement>(null);
+  // Dialogs are opened by state, not by a trigger inside them, so that the way back has to be remembered here: before the
+  // portal fills, since a field in it may take the focus at once.
+  const before = useRef<Element | null>(null);
+  useLayoutEffect(() => {
+    if (open) before.current = lasting(document.activeElement);
+  }, [open]);
   return (
     <Radix.Root open={open} onOpenChange={onOpenChange}>
       <Radix.Portal>
@@ -28,6 +40,11 @@ export function Dialog({ open, onOpenChange, title, text, children, actions, can
           <Radix.Content
             className={`dialog ${broad ? "broad" : ""}`}
             aria-describedby={undefined}
+            onCloseAutoFocus={(event) => {
+              event.preventDefault();
+              const back = before.current?.isConnected ? before.current : document.getElementById("main");
+              if (back instanceof HTMLElement) back.focus({ preventScroll: true });
+            }}
             onEscapeKeyDown={shut}
             onInteractOutside={shut}
             onPointerDownOutside={(event) => {
