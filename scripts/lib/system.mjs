@@ -1,5 +1,6 @@
 /** What every command needs: a sentence for the person, and running other programs. Plain Node, since nothing may be installed yet. */
 import { spawn } from "node:child_process";
+import { once } from "node:events";
 import { dirname } from "node:path";
 import { fileURLToPath } from "node:url";
 
@@ -66,6 +67,7 @@ export function onClose(close) {
 function close() {
   closing ??= (async () => {
     for (const child of children) child.kill();
+    await Promise.all([...children].map((child) => once(child, "close")));
     while (closers.length > 0) {
       await Promise.resolve(closers.pop()()).catch((error) => say("stop", error.message));
     }

@@ -1,6 +1,7 @@
 /** Throw-away PostgreSQL for tests: a cluster per process, or the one that `npm test` started, and a migrated database per test file. */
-import { execFile } from "node:child_process";
+import { execFile, execFileSync } from "node:child_process";
 import { randomBytes } from "node:crypto";
+import { rmSync } from "node:fs";
 import { chown, mkdtemp, readdir, rm } from "node:fs/promises";
 import { createServer } from "node:net";
 import { join } from "node:path";
@@ -33,9 +34,25 @@ async function programs(): Promise<string> {
 }
 
 /** PostgreSQL refuses to run as root; root hands over to the account that Debian's package made. */
-async function asPostgres(file: string, args: string[]): Promise<void> {
-  if (process.getuid?.() === 0) await run("runuser", ["-u", "postgres", "--", file, ...args]);
-  else await run(file, args);
+const asPostgres = (file: string, args: string[]): [string, string[]] =>
+  process.getuid?.() === 0 ? ["runuser", ["-u", "postgres", "--", file, ...args]] : [file, args];
+
+/** Runs `undo` when this process ends before its time, by a signal too; gives back how to forget it. */
+function whenBrokenOff(undo: () => void): () => void {
+  const signals = ["SIGINT", "SIGTERM", "SIGHUP"] as const;
+  const onSignal = (signal: NodeJS.Signals) => {
+    forget();
+    undo();
+    // Without this listener the signal does what it is for.
+    process.kill(process.pid, signal);
+  };
+  const forget = () => {
+    for (const signal of signals) process.off(signal, onSignal);
+    process.off("exit", undo);
+  };
+  for (const signal of signals) process.on(signal, onSignal);
+  process.on("exit", undo);
+  return forget;
 }
 
 async function freePort(): Promise<number> {
@@ -56,17 +73,27 @@ export async function startTestCluster(): Promise<TestCluster> {
   }
   const data = join(directory, "data");
   const port = await freePort();
-  await asPostgres(join(bin, "initdb"), ["-D", data, "-U", "postgres", "--auth=trust", "--encoding=UTF8", "--locale=C", "--no-sync"]);
+  await run(...asPostgres(join(bin, "initdb"), ["-D", data, "-U", "postgres", "--auth=trust", "--encoding=UTF8", "--locale=C", "--no-sync"]));
   const options = `-c listen_addresses=127.0.0.1 -p ${port} -k ${directory} -c fsync=off -c full_page_writes=off -c max_connections=200`;
   const control = (...args: string[]) => asPostgres(join(bin, "pg_ctl"), ["-D", data, "-w", "-l", join(directory, "log"), ...args]);
-  const start = () => control("-o", options, "start");
-  const halt = () => control("-m", "immediate", "stop");
+  const start = async () => void (await run(...control("-o", options, "start")));
+  const stopping = control("-m", "immediate", "stop");
+  const halt = async () => void (await run(...stopping));
+  const forget = whenBrokenOff(() => {
+    try {
+      execFileSync(...stopping, { stdio: "ignore" });
+    } catch {
+      // It did not run.
+    }
+    rmSync(directory, { recursive: true, force: true });
+  });
   await start();
   return {
     url: `postgres://postgres@127.0.0.1:${port}/postgres`,
     halt,
     start,
     async remove() {
+      forget();
       await halt().catch(() => undefined);
       await rm(directory, { recursive: true, force: true });
     },
