@@ -75,6 +75,10 @@ async function look(holdfast: Holdfast, { colorScheme, width, also }: Look): Pro
     found.push(...(await findings(page)).map((line) => `${stop.name}: ${line}`));
     for (const wide of [width, ...also]) {
       await page.setViewportSize({ width: wide, height });
+      // The pictures follow the new width in the frames after it; what has not by then does not.
+      await page
+        .waitForFunction(() => document.documentElement.scrollWidth <= document.documentElement.clientWidth, null, { timeout: 2000 })
+        .catch(() => {});
       found.push(...(await overflow(page)).map((line) => `${stop.name}, ${wide} px wide: ${line}`));
     }
     await page.setViewportSize({ width, height });
