@@ -5,7 +5,9 @@
  */
 import { z } from "zod";
 import { plantSchema } from "#shared/plants/schema.ts";
+import { floorSchema, nodeId } from "./floor-schema.ts";
 import { count, quantity } from "./quantity.ts";
+import { radioSchema, rhythm, roundSchema, slotCopies } from "./round-schema.ts";
 
 const MAX_SEQUENCE = 200_000;
 
@@ -48,6 +50,8 @@ export const sensorSchema = z.strictObject({
     ])
     .default({ type: "gaussian" }),
   busTransferS: quantity("bus transfer, sensor to node", "s", 0, 1).default(0),
+  /** Slots of a round in which the measurement is sent; one that arrives suffices. */
+  copies: slotCopies,
 });
 
 export const lawSchema = z.discriminatedUnion("type", [
@@ -150,6 +154,8 @@ export const actuatorSchema = z.strictObject({
   lagS: quantity("first-order lag", "s", 0, 10).default(0),
   deadTimeS: quantity("dead time", "s", 0, 10).default(0),
   busTransferS: quantity("bus transfer, node to drive", "s", 0, 1).default(0),
+  /** Slots of a round in which the command is sent; one that arrives suffices. */
+  copies: slotCopies,
   onLoss: onLossSchema.default({ policy: "hold" }),
   silence: silenceSchema.nullable().default(null),
 });
@@ -200,47 +206,24 @@ export const loopSchema = z.strictObject({
       networkJoinsAtS: instant("network joins at").default(0),
     })
     .default({ state: null, estimate: null, networkJoinsAtS: 0 }),
+  /** On which nodes of the floor it runs; null: no floor is needed. */
+  nodes: z.strictObject({ sensor: nodeId, controller: nodeId, actuator: nodeId }).nullable().default(null),
   timing: z
     .strictObject({
+      /** In which rounds the loop samples: firstRound, then every everyRounds-th. */
+      ...rhythm,
       sampleAtS: quantity("sampling instant in the round", "s", 0, 10).default(0),
       /** Does the command travel in the round of its computing (d = 0) or in the next (d = 1)? */
       commandTravels: z.enum(["same-round", "next-round"]).default("same-round"),
       /** Latency tau from sampling to acting; null: the command acts at the next round boundary after its slot. */
       actAfterSampleS: quantity("latency from sampling to acting", "s", 0, 20).nullable().default(null),
     })
-    .default({ sampleAtS: 0, commandTravels: "same-round", actAfterSampleS: null }),
+    .default({ everyRounds: 1, firstRound: 0, sampleAtS: 0, commandTravels: "same-round", actAfterSampleS: null }),
   sensor: sensorSchema,
   controller: controllerSchema,
   actuator: actuatorSchema,
   references: driven,
   feedforward: driven,
-});
-
-// ---------------------------------------------------------------- radio and round
-
-export const PHYS = ["ieee802154", "le-1m", "le-2m", "le-coded-s2", "le-coded-s8"] as const;
-
-export const radioSchema = z.strictObject({
-  phy: z.enum(PHYS),
-  headerBytes: count("header", "B", 0, 64).default(4),
-  /** Between two steps of a flood; null: the standard's own turnaround. */
-  turnaroundS: quantity("turnaround", "s", 0, 0.01).nullable().default(null),
-});
-
-export const roundSchema = z.strictObject({
-  periodS: quantity("round period", "s", 0.001, 10),
-  hops: count("hop bound", "", 1, 20).default(3),
-  transmissions: count("transmissions per node", "", 1, 10).default(2),
-  relay: z.enum(["alternating", "back-to-back"]).default("alternating"),
-  slackSteps: count("slack", "steps", 0, 20).default(0),
-  wakeUpS: quantity("wake-up before a slot", "s", 0, 0.05).default(0.0002),
-  gapS: quantity("gap after a slot", "s", 0, 0.05).default(0.0002),
-  clockPpm: quantity("clock tolerance", "ppm", 0, 500).default(40),
-  /** The beacon's slot opens the round; null: no beacon slot. */
-  beacon: z
-    .strictObject({ payloadBytes: count("beacon payload", "B", 0, 255) })
-    .nullable()
-    .default({ payloadBytes: 4 }),
 });
 
 // ---------------------------------------------------------------- losses
@@ -253,6 +236,12 @@ const gilbertElliott = z.strictObject({
   lossInBad: probability("loss while bad").default(1),
 });
 
+/** A recorded link as run lengths: packets delivered, then lost, then delivered, and so on. */
+const replayedLink = z.strictObject({
+  link: z.string().max(120).default(""),
+  runs: z.array(count("packets", "", 0, 10_000_000)).max(MAX_SEQUENCE),
+});
+
 export const lossProcessSchema = z.discriminatedUnion("type", [
   z.strictObject({ type: z.literal("none") }),
   z.strictObject({ type: z.literal("bernoulli"), measurement: probability("measurement lost"), command: probability("command lost") }),
@@ -263,6 +252,20 @@ export const lossProcessSchema = z.discriminatedUnion("type", [
     type: z.literal("given"),
     measurement: z.array(bit).max(MAX_SEQUENCE),
     command: z.array(bit).max(MAX_SEQUENCE),
+    then: z.enum(["error", "delivered", "repeat"]).default("error"),
+  }),
+  /** Floods over the floor decide, drawn step by step. */
+  z.strictObject({ type: z.literal("flood") }),
+  z.strictObject({
+    /** What was received on a floor, packet after packet, one packet a round. */
+    type: z.literal("replay"),
+    /** The reception log it was taken from. */
+    log: z
+      .strictObject({ id: z.uuid(), name: z.string().max(120) })
+      .nullable()
+      .default(null),
+    measurement: replayedLink,
+    command: replayedLink,
     then: z.enum(["error", "delivered", "repeat"]).default("error"),
   }),
 ]);
@@ -359,6 +362,8 @@ export const scenarioSchema = z.strictObject({
     relativeTolerance: quantity("relative tolerance", "", 1e-13, 1e-3).default(1e-8),
   }),
   loops: z.array(loopSchema).length(1),
+  /** The plan with its nodes; null: none is needed, unless floods decide what is delivered. */
+  floor: floorSchema.nullable().default(null),
   radio: radioSchema,
   round: roundSchema,
   losses: lossesSchema,
@@ -378,4 +383,4 @@ export type Push = z.infer<typeof pushSchema>;
 export type Limit = z.infer<typeof limitSchema>;
 export type LossProcess = z.infer<typeof lossProcessSchema>;
 export type Message = (typeof MESSAGES)[number];
-export type Phy = (typeof PHYS)[number];
+export { PHYS, type Phy } from "./round-schema.ts";

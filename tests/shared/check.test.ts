@@ -59,7 +59,7 @@ describe("a bad value is named with field, value and permitted range", () => {
 describe("rules across fields", () => {
   it.each<[string, (scenario: Scenario) => void, string, string]>([
     ["a round that does not fit", (s) => (s.round.periodS = 0.01), "round.periodS", "round-does-not-fit"],
-    ["a payload that the packet cannot carry", (s) => (s.round.beacon = { payloadBytes: 200 }), "radio.phy", "payload-too-long"],
+    ["a payload that the packet cannot carry", (s) => (s.round.beacon = { payloadBytes: 200, needed: false }), "radio.phy", "payload-too-long"],
     ["a state that nobody measures, without a filter", (s) => s.loops[0].sensor.signals.pop(), "loops[0].controller.estimator.type", "not-possible"],
     [
       "an encoding without zero",
