@@ -34,9 +34,7 @@ export const columnMappingSchema = z
          */
         kind: z.enum(["sequence", "round"]).default("sequence"),
         /** The counter returns to 0 after wrapsAt - 1: 256 for 8 bits, 65 536, 4 294 967 296; null: it never does. */
-        wrapsAt: count("numbers before it wraps", "", 4, 2 ** 48)
-          .nullable()
-          .default(null),
+        wrapsAt: count("numbers before it wraps", "", 4, 281_474_976_710_656).nullable().default(null),
       })
       .nullable()
       .default(null),
