@@ -36,3 +36,7 @@ export type Delivery = z.infer<typeof deliverySchema>;
 
 /** What a revision's author says about it. */
 export const noteSchema = z.string().trim().max(500).default("");
+
+/** A scenario that names a reception log or shows a picture, and the saved revisions in which it does. */
+export const useSchema = z.strictObject({ id: z.uuid(), name: z.string(), archived: z.boolean(), revisions: z.array(z.int().positive()).min(1) });
+export type Use = z.infer<typeof useSchema>;

@@ -1,5 +1,6 @@
 /** How every route says no: one body, a literal code for programs, a message for people. */
 import { z } from "zod";
+import { useSchema } from "./common.ts";
 
 const issueSchema = z.strictObject({
   code: z.string(),
@@ -27,10 +28,14 @@ const ERROR_CODES = [
   "revision-conflict",
   "scenario-archived",
   "scenario-not-archived",
+  "in-use",
   // 413, 415, 422, 429
   "too-large",
   "not-json-type",
+  "type-not-taken",
   "scenario-invalid",
+  "log-invalid",
+  "picture-invalid",
   "too-many-attempts",
   // 500, 503
   "internal",
@@ -50,7 +55,7 @@ export const errorBodySchema = z.strictObject({
   error: z.strictObject({
     code: z.enum(ERROR_CODES),
     message: z.string(),
-    /** scenario-invalid, request-invalid: one entry per bad field. */
+    /** scenario-invalid, request-invalid, log-invalid: one entry per bad field. */
     issues: z.array(issueSchema).optional(),
     /** revision-conflict: what is newest now. */
     latest: newerRevisionSchema.optional(),
@@ -60,6 +65,8 @@ export const errorBodySchema = z.strictObject({
     size: z.strictObject({ bytes: z.int().nullable(), permittedBytes: z.int() }).optional(),
     /** too-many-attempts. */
     retryAfterS: z.int().optional(),
+    /** in-use: what keeps it. */
+    uses: z.array(useSchema).optional(),
     /** scenario-deleted. */
     deleted: z.strictObject({ name: z.string(), by: z.string(), at: z.iso.datetime() }).optional(),
     /** internal: to be found in the server's log. */

@@ -20,12 +20,13 @@ const administrators = { trainee: "no", engineer: "no", reviewer: "no", administ
 
 const MATRIX = {
   "open-scenarios": { text: "open scenarios and runs of the team", ...everybody },
+  "open-logs": { text: "open reception logs of the team", ...everybody },
   "read-members": { text: "see who belongs to the team", ...everybody },
   "attempt-exercises": { text: "attempt exercises", ...everybody },
   "edit-scenarios": { text: "create and edit scenarios", ...makers },
   "make-runs": { text: "keep runs", ...makers },
   "edit-campaigns": { text: "create and edit campaigns", ...makers },
-  "edit-logs": { text: "upload and edit logs", ...makers },
+  "edit-logs": { text: "upload and edit reception logs", ...makers },
   "ask-for-review": { text: "ask for a review", ...staff },
   "decide-review": { text: "decide a review", trainee: "no", engineer: "no", reviewer: "not-own-revision", administrator: "no" },
   "set-exercises": { text: "set exercises", ...staff },

@@ -16,6 +16,13 @@ const ACTIVITIES = [
   "scenario-deleted",
   "revision-saved",
   "run-kept",
+  "log-uploaded",
+  "log-renamed",
+  "log-deleted",
+  "log-deletion-refused",
+  "picture-uploaded",
+  "picture-deleted",
+  "picture-deletion-refused",
 ] as const;
 export type ActivityKind = (typeof ACTIVITIES)[number];
 

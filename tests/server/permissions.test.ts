@@ -4,6 +4,7 @@ import { ACTIONS, type Action, may, ROLES, type Role, rolesThatMay } from "#shar
 /** The product's role matrix, written out once more by hand: T E R A. */
 const TABLE: Record<Action, string> = {
   "open-scenarios": "yes yes yes yes",
+  "open-logs": "yes yes yes yes",
   "read-members": "yes yes yes yes",
   "attempt-exercises": "yes yes yes yes",
   "edit-scenarios": "no yes yes yes",

@@ -18,6 +18,13 @@ const DID: Record<ActivityKind, string> = {
   "scenario-deleted": "deleted",
   "revision-saved": "saved",
   "run-kept": "kept a run of",
+  "log-uploaded": "uploaded the reception log",
+  "log-renamed": "renamed to",
+  "log-deleted": "deleted the reception log",
+  "log-deletion-refused": "wanted to delete the reception log in use",
+  "picture-uploaded": "uploaded the picture",
+  "picture-deleted": "deleted the picture",
+  "picture-deletion-refused": "wanted to delete the picture in use",
 };
 
 /** "saved revision 4 of Balancer rig 1" */
