@@ -1,6 +1,6 @@
 /** /api/teams/:teamId/scenarios: the table, one scenario, its archive and copy. */
 import { z } from "zod";
-import type { RoundTiming } from "#shared/network/round.ts";
+import type { LoopTiming, RoundTiming, Slot } from "#shared/network/round.ts";
 import type { PlantSpec } from "#shared/plants/schema.ts";
 import { scenarioSchema } from "#shared/scenario/schema.ts";
 import { deliverySchema, noteSchema, pageOf, pageQuery, personSchema, verdictSchema, verdictStateSchema } from "./common.ts";
@@ -24,28 +24,32 @@ const plantSummarySchema = z.strictObject({
   rest: z.enum(["upright", "hanging"]).nullable(),
 });
 
-/** What the small round ribbon needs of RoundTiming, under the same names. */
-export const roundSummarySchema = z.strictObject({
+const slotSchema = z.strictObject({
+  id: z.string(),
+  message: z.enum(["beacon", "measurement", "command", "other"]),
+  loop: z.string().nullable(),
+  label: z.string(),
+  copy: z.int(),
+  everyRounds: z.int(),
+  firstRound: z.int(),
+  from: z.int().nullable(),
+  to: z.array(z.int()).nullable(),
+  payloadBytes: z.number(),
+  airtimeS: z.number(),
+  stepS: z.number(),
+  steps: z.number(),
+  startS: z.number(),
+  floodStartS: z.number(),
+  floodEndS: z.number(),
+  endS: z.number(),
+}) satisfies z.ZodType<Slot>;
+
+const loopTimingSchema = z.strictObject({
+  loop: z.string(),
+  name: z.string(),
+  everyRounds: z.int(),
+  firstRound: z.int(),
   periodS: z.number(),
-  hops: z.number(),
-  slots: z.array(
-    z.strictObject({
-      message: z.enum(["beacon", "measurement", "command"]),
-      label: z.string(),
-      payloadBytes: z.number(),
-      airtimeS: z.number(),
-      stepS: z.number(),
-      steps: z.number(),
-      startS: z.number(),
-      floodStartS: z.number(),
-      floodEndS: z.number(),
-      endS: z.number(),
-    }),
-  ),
-  guardS: z.number(),
-  reserveS: z.number(),
-  fits: z.boolean(),
-  shortestPeriodS: z.number(),
   sampleAtS: z.number(),
   computeFromS: z.number(),
   computeUntilS: z.number(),
@@ -54,6 +58,21 @@ export const roundSummarySchema = z.strictObject({
   earliestActS: z.number(),
   latestActS: z.number(),
   latencyS: z.number(),
+}) satisfies z.ZodType<LoopTiming>;
+
+/**
+ * What the small round ribbon needs of RoundTiming, under the same names. It is kept with each scenario: whoever changes
+ * it, or what goes into it, raises SUMMARY_VERSION in server/features/scenarios/summary.ts, and kept ones are made anew.
+ */
+export const roundSummarySchema = z.strictObject({
+  periodS: z.number(),
+  hops: z.number(),
+  slots: z.array(slotSchema),
+  loops: z.array(loopTimingSchema),
+  guardS: z.number(),
+  reserveS: z.number(),
+  fits: z.boolean(),
+  shortestPeriodS: z.number(),
 }) satisfies z.ZodType<Omit<RoundTiming, "ns" | "savings" | "issues">>;
 export type RoundSummary = z.infer<typeof roundSummarySchema>;
 
