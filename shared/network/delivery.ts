@@ -6,15 +6,19 @@
 import { type Uniform, uniformStream } from "#shared/math/random.ts";
 import type { LossProcess, Message, Scenario } from "#shared/scenario/schema.ts";
 import { MESSAGES } from "#shared/scenario/schema.ts";
-import { type RoundTiming, toNs } from "./round.ts";
+import { type LoopDemand, loopDemands } from "./demand.ts";
+import { Outages } from "./outages.ts";
+import type { RoundTiming } from "./round.ts";
+import { toNs } from "./schedule.ts";
 
 export interface Deliveries {
-  /** 1 = delivered; one entry per round. All 1 for a message that the placement does not need. */
+  /** 1 = delivered; one entry per round of the network, whether the loop's message has a slot in it or not. */
   measurement: Uint8Array;
   command: Uint8Array;
 }
 
 type GilbertElliott = Extract<LossProcess, { type: "gilbert-elliott-shared" }>["channel"];
+type Replay = Extract<LossProcess, { type: "replay" }>;
 
 /** Stationary probability of the bad state, goodToBad / (goodToBad + badToGood); 0 for a channel that never moves. */
 function badShare({ goodToBad, badToGood }: GilbertElliott): number {
@@ -33,32 +37,76 @@ function channelStates(channel: GilbertElliott, uniform: Uniform, rounds: number
   return bad;
 }
 
-/** Draws every delivery of a run. Streams carry the loop's id and the message's name. */
+/** Probability that the process loses the message in round k, before outages and jamming. */
+type LossOf = (k: number) => number;
+
+function processOf(message: Message, loopId: string, scenario: Scenario, rounds: number, seed: number, sharedBad: Uint8Array | null): LossOf {
+  const { process } = scenario.losses;
+  switch (process.type) {
+    case "none":
+    case "flood":
+      return () => 0;
+    case "bernoulli":
+      return () => process[message];
+    case "given":
+      return (k) => 1 - given(process[message], process.then, k);
+    case "replay": {
+      const bits = replayed(process, message, rounds);
+      return (k) => 1 - bits[k];
+    }
+    case "gilbert-elliott":
+    case "gilbert-elliott-shared": {
+      const channel = process.type === "gilbert-elliott" ? process[message] : process.channel;
+      const bad = sharedBad ?? channelStates(channel, uniformStream(seed, `channel/${loopId}/${message}`), rounds);
+      return (k) => (bad[k] ? channel.lossInBad : channel.lossInGood);
+    }
+  }
+}
+
+/** Draws every delivery of the scenario's own loop. Streams carry the loop's id and the message's name. */
 export function drawDeliveries(scenario: Scenario, timing: RoundTiming, rounds: number, seed: number): Deliveries {
   const loop = scenario.loops[0];
-  const { process, streams, outages } = scenario.losses;
-  const result: Deliveries = { measurement: new Uint8Array(rounds).fill(1), command: new Uint8Array(rounds).fill(1) };
+  const [demand] = loopDemands(scenario);
+  const { process, streams } = scenario.losses;
+  const result: Deliveries = {
+    measurement: new Uint8Array(rounds).fill(1),
+    command: new Uint8Array(rounds).fill(1),
+  };
   const sharedBad = process.type === "gilbert-elliott-shared" ? channelStates(process.channel, uniformStream(seed, "channel/shared"), rounds) : null;
+  const outages = new Outages(scenario, timing);
 
   for (const message of MESSAGES) {
-    const slot = timing.ns.slots.find((candidate) => candidate.message === message);
-    if (!slot) continue;
     const delivered = result[message];
-    const uniform = uniformStream(seed, streams === "shared" ? "loss/shared" : `loss/${loop.id}/${message}`);
-    const own = process.type === "gilbert-elliott" ? process[message] : null;
-    const bad = own ? channelStates(own, uniformStream(seed, `channel/${loop.id}/${message}`), rounds) : sharedBad;
-    const channel = own ?? (process.type === "gilbert-elliott-shared" ? process.channel : null);
-    const forced = overlays(message, slot, timing.ns.period, rounds, outages, toNs(loop.start.networkJoinsAtS));
-    for (let k = 0; k < rounds; k++) {
-      const u = uniform();
-      let p = 0;
-      if (process.type === "given") p = 1 - given(process[message], process.then, k);
-      else if (channel && bad) p = bad[k] ? channel.lossInBad : channel.lossInGood;
-      else if (process.type === "bernoulli") p = process[message];
-      if (u < either(p, forced[k])) delivered[k] = 0;
+    const slots = timing.slots.map((slot, index) => ({ slot, index })).filter(({ slot }) => slot.message === message && slot.loop === loop.id);
+    if (slots.length === 0) {
+      withoutSlot(message, delivered, demand, timing, outages);
+      continue;
+    }
+    const lossOf = processOf(message, loop.id, scenario, rounds, seed, sharedBad);
+    delivered.fill(0);
+    for (const { slot, index } of slots) {
+      const ns = timing.ns.slots[index];
+      const copy = slot.copy > 1 ? `/${slot.copy}` : "";
+      const uniform = uniformStream(seed, streams === "shared" ? "loss/shared" : `loss/${loop.id}/${message}${copy}`);
+      const forced = overlays(message, ns, timing.ns.period, rounds, scenario.losses.outages, toNs(loop.start.networkJoinsAtS));
+      for (let k = 0; k < rounds; k++) {
+        const u = uniform();
+        const arrives = outages.travels(slot, ns, k);
+        if (arrives && u >= either(lossOf(k), forced[k])) delivered[k] = 1;
+      }
     }
   }
   return result;
+}
+
+/** A controller in the same node hears and is heard without radio, unless that node is down. */
+function withoutSlot(message: Message, delivered: Uint8Array, demand: LoopDemand, timing: RoundTiming, outages: Outages): void {
+  if (!demand.nodes) return;
+  const { sampleAtS, actAtS, commandDelay } = timing.loops[0];
+  // The command of the round before, or of this one, acts commandDelay rounds before actAtS is counted from.
+  const at = message === "measurement" ? toNs(sampleAtS) : toNs(actAtS) - commandDelay * timing.ns.period;
+  const node = message === "measurement" ? demand.nodes.sensor : demand.nodes.actuator;
+  for (let k = 0; k < delivered.length; k++) if (outages.down(node, k * timing.ns.period + at, k * timing.ns.period + at)) delivered[k] = 0;
 }
 
 /** Probability that at least one of two independent causes loses a message. */
@@ -67,6 +115,25 @@ const either = (p: number, q: number): number => p + (1 - p) * q;
 function given(sequence: readonly (0 | 1)[], then: "error" | "delivered" | "repeat", k: number): 0 | 1 {
   if (k < sequence.length) return sequence[k];
   return then === "repeat" && sequence.length > 0 ? sequence[k % sequence.length] : 1;
+}
+
+/** Run lengths (delivered, lost, delivered, ...) as one entry per round, 1 = delivered. */
+export function replayed({ then, ...process }: Pick<Replay, "measurement" | "command" | "then">, message: Message, rounds: number): Uint8Array {
+  const bits = new Uint8Array(rounds).fill(1);
+  const { runs } = process[message];
+  let k = 0;
+  do {
+    let value = 1;
+    const before = k;
+    for (const run of runs) {
+      const until = Math.min(rounds, k + run);
+      if (value === 0) bits.fill(0, k, until);
+      k = until;
+      value = 1 - value;
+    }
+    if (k === before) break;
+  } while (then === "repeat" && k < rounds);
+  return bits;
 }
 
 /** Probability with which outages and a late network lose the message in each round, whatever the process says. */

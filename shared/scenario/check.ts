@@ -1,14 +1,19 @@
 /** Rules that span several fields of a scenario. The shape and the single ranges are in schema.ts. */
 import { designLoop, type LoopDesign } from "#shared/control/design.ts";
 import { quantumOf } from "#shared/control/encoding.ts";
-import { type RoundTiming, roundTiming, toNs } from "#shared/network/round.ts";
+import { type RoundTiming, roundTiming } from "#shared/network/round.ts";
+import { toNs } from "#shared/network/schedule.ts";
 import type { Plant } from "#shared/plants/plant.ts";
 import { createPlant } from "#shared/plants/registry.ts";
 import { plantSchema } from "#shared/plants/schema.ts";
 import { POINTS_PER_ROUND } from "#shared/simulation/recorder.ts";
+import { checkFloor } from "./check-floor.ts";
+import { checkSequences } from "./check-losses.ts";
 import type { Issue } from "./issues.ts";
 import { schemaAt } from "./parse.ts";
 import { permittedRange, quantityMeta } from "./quantity.ts";
+import { Report } from "./report.ts";
+import { roundsOf } from "./rounds.ts";
 import type { Encoding, Loop, Scenario } from "./schema.ts";
 
 /** Most rounds of one run; keeps a run within the memory of a browser tab. */
@@ -24,26 +29,6 @@ export interface Checked {
   design: LoopDesign | null;
 }
 
-export const roundsOf = (scenario: Scenario): number =>
-  Math.ceil(Math.round(scenario.run.durationS * 1e9) / Math.round(scenario.round.periodS * 1e9));
-
-class Report {
-  readonly issues: Issue[] = [];
-  add(code: string, path: string, message: string): void {
-    this.issues.push({ code, path, message });
-  }
-  length(path: string, what: string, found: number, wanted: number, because: string): boolean {
-    if (found !== wanted) this.add("wrong-length", path, `${what}: ${found} given, ${wanted} needed, ${because}.`);
-    return found === wanted;
-  }
-  known(path: string, name: string, names: readonly string[], what: string): void {
-    if (!names.includes(name)) this.add("unknown-name", path, `"${name}" is not ${what}; permitted: ${names.length ? names.join(", ") : "none"}.`);
-  }
-  ordered(path: string, from: number, until: number | null): void {
-    if (until !== null && until <= from) this.add("out-of-order", path, `It ends at ${until} s but begins at ${from} s; the end has to be later.`);
-  }
-}
-
 /** Every rule across fields; an empty list means that the scenario runs. */
 export function checkScenario(scenario: Scenario): Checked {
   const report = new Report();
@@ -53,13 +38,14 @@ export function checkScenario(scenario: Scenario): Checked {
 
   const plant = createPlant(loop.plant);
   checkLoop(report, scenario, loop, plant);
+  checkFloor(report, scenario, timing);
   checkSequences(report, scenario, timing);
   checkEvents(report, scenario, plant);
   checkLimits(report, scenario, plant);
   const issues = [...report.issues, ...timing.issues];
   // A design needs consistent sizes and instants; without them its complaints would only repeat what was said.
   if (issues.length > 0) return { issues, timing, design: null };
-  return { timing, ...designLoop(scenario, timing.ns) };
+  return { timing, ...designLoop(scenario, timing.ns.loops[0]) };
 }
 
 function checkStateSpace(report: Report, loop: Loop): boolean {
@@ -261,54 +247,6 @@ function checkProfile(report: Report, path: string, profile: Loop["references"][
         `Point ${i + 1} is at ${point.atS} s, not later than the point before it (${before.atS} s).`,
       );
   });
-}
-
-function checkSequences(report: Report, scenario: Scenario, timing: RoundTiming): void {
-  const loop = scenario.loops[0];
-  const rounds = roundsOf(scenario);
-  const { process, outages } = scenario.losses;
-  if (process.type === "given") {
-    for (const message of ["measurement", "command"] as const) {
-      const needed = timing.slots.some((slot) => slot.message === message);
-      const length = process[message].length;
-      if (needed && length === 0)
-        report.add(
-          "sequence-too-short",
-          `losses.process.${message}`,
-          `No deliveries are given for the ${message}; ${rounds} are needed, one a round.`,
-        );
-      else if (needed && process.then === "error" && length < rounds) {
-        report.add(
-          "sequence-too-short",
-          `losses.process.${message}`,
-          `${length} deliveries are given for ${rounds} rounds. Give one for every round, or say what follows: "then": "delivered" or "repeat".`,
-        );
-      }
-    }
-  }
-  outages.forEach((outage, i) => {
-    report.ordered(`losses.outages[${i}].untilS`, outage.fromS, outage.untilS);
-  });
-  const { noise, signals } = loop.sensor;
-  if (noise.type === "given") {
-    if (noise.then === "error" && noise.values.length < rounds) {
-      report.add(
-        "sequence-too-short",
-        "loops[0].sensor.noise.values",
-        `${noise.values.length} rows of sensor noise are given for ${rounds} rounds. Give one for every round, or say what follows: "then": "zero" or "repeat".`,
-      );
-    }
-    const wrong = noise.values.findIndex((row) => row.length !== signals.length);
-    if (wrong >= 0) {
-      report.length(
-        `loops[0].sensor.noise.values[${wrong}]`,
-        `Row ${wrong + 1} of the sensor noise`,
-        noise.values[wrong].length,
-        signals.length,
-        "one number for each measured signal",
-      );
-    }
-  }
 }
 
 function checkEvents(report: Report, scenario: Scenario, plant: Plant): void {

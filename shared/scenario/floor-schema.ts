@@ -9,6 +9,8 @@ export const MAX_NODES = 120;
 const HALL_M = 2000;
 
 const instant = (label: string) => quantity(label, "s", 0, 3600);
+/** Id of something that the team keeps: a picture, a reception log. */
+export const storedId = z.string().regex(/^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/, "an id such as 0f8fad5b-d9cb-469f-a165-70867728950e");
 export const nodeId = count("node number", "", 1, 999);
 const xM = quantity("across", "m", 0, HALL_M);
 const yM = quantity("down", "m", 0, HALL_M);
@@ -149,7 +151,7 @@ export const floorSchema = z.strictObject({
   /** An uploaded picture under the plan: where its upper left corner lies and how large one pixel is. */
   picture: z
     .strictObject({
-      id: z.uuid(),
+      id: storedId,
       xM: quantity("picture, across", "m", -HALL_M, HALL_M).default(0),
       yM: quantity("picture, down", "m", -HALL_M, HALL_M).default(0),
       metresPerPixel: quantity("size of a pixel", "m", 1e-5, 100),

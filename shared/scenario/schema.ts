@@ -5,7 +5,7 @@
  */
 import { z } from "zod";
 import { plantSchema } from "#shared/plants/schema.ts";
-import { floorSchema, nodeId } from "./floor-schema.ts";
+import { floorSchema, nodeId, storedId } from "./floor-schema.ts";
 import { count, quantity } from "./quantity.ts";
 import { radioSchema, rhythm, roundSchema, slotCopies } from "./round-schema.ts";
 
@@ -261,7 +261,7 @@ export const lossProcessSchema = z.discriminatedUnion("type", [
     type: z.literal("replay"),
     /** The reception log it was taken from. */
     log: z
-      .strictObject({ id: z.uuid(), name: z.string().max(120) })
+      .strictObject({ id: storedId, name: z.string().max(120) })
       .nullable()
       .default(null),
     measurement: replayedLink,

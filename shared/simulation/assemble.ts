@@ -1,6 +1,6 @@
 /** From a finished simulation to the result that people and programs read. */
 import { profileAt } from "#shared/control/profile.ts";
-import { toNs } from "#shared/network/round.ts";
+import { toNs } from "#shared/network/schedule.ts";
 import type { Output } from "#shared/plants/plant.ts";
 import { messageFigures, signalFigures } from "./figures.ts";
 import { judge, overallVerdict } from "./limits.ts";
@@ -48,6 +48,13 @@ function traces(raw: Raw): Trace[] {
 /** A view of part of a buffer as an array of its own, so that sending a result does not send what lies behind it. */
 const whole = (view: Float64Array): Float64Array => (view.byteLength === view.buffer.byteLength ? view : view.slice());
 
+/** Entries first, first + every, ... of values; 1 beyond their end, where a run has no such round any more. */
+function everyNth(values: Uint8Array, first: number, every: number, count: number): Uint8Array {
+  const picked = new Uint8Array(count).fill(1);
+  for (let k = 0; k < count && first + k * every < values.length; k++) picked[k] = values[first + k * every];
+  return picked;
+}
+
 export function assemble(raw: Raw): RunResult {
   const { plant, recorder, scenario, timing, seed, deliveries, design } = raw;
   const loop = scenario.loops[0];
@@ -66,7 +73,14 @@ export function assemble(raw: Raw): RunResult {
   const values = [...all.map((trace) => trace.grid), ...referenced.map(({ reference }) => Float64Array.from(t, (at) => reference?.(toNs(at)) ?? 0))];
   const { m } = plant;
   const sampled = raw.sampled;
-  const estimateWidth = raw.estimate.length / raw.rounds;
+  const estimateWidth = raw.samplings > 0 ? raw.estimate.length / raw.samplings : 0;
+  const [own] = timing.loops;
+  // A loop that runs every round counts its commands by the round in which they travel; a slower one by the round in which they were computed.
+  const commandDelay = own.everyRounds === 1 ? own.commandDelay : 0;
+  const delivered = {
+    measurement: everyNth(deliveries.measurement, own.firstRound, own.everyRounds, sampled),
+    command: everyNth(deliveries.command, own.firstRound + own.commandDelay - commandDelay, own.everyRounds, sampled),
+  };
   const events = [...raw.events, ...scriptedEvents(raw)];
   const limits = scenario.limits.map((limit, index) => judge(limit, index, raw, all));
   for (const verdict of limits) {
@@ -74,7 +88,7 @@ export function assemble(raw: Raw): RunResult {
       events.push({ atS: verdict.crossedAtS, kind: "limit-crossed", text: `${limitLabel(scenario.limits[verdict.index], scenario)}: crossed` });
   }
   events.sort((a, b) => a.atS - b.atS);
-  const hasSlot = (message: "measurement" | "command") => timing.slots.some((slot) => slot.message === message);
+  const hasSlot = (message: "measurement" | "command") => timing.slots.some((slot) => slot.message === message && slot.loop === loop.id);
   return {
     engine: ENGINE_VERSION,
     seed,
@@ -84,16 +98,16 @@ export function assemble(raw: Raw): RunResult {
     series: { t: whole(t), columns, values: values.map(whole) },
     rounds: {
       count: sampled,
-      periodS: timing.periodS,
-      sampleAtS: timing.sampleAtS,
-      latencyS: timing.latencyS,
-      commandDelay: timing.commandDelay,
+      periodS: own.periodS,
+      sampleAtS: own.firstRound * timing.periodS + own.sampleAtS,
+      latencyS: own.latencyS,
+      commandDelay,
       measured: loop.sensor.signals.map(({ signal }) => {
         const output = plant.outputs.find(({ name }) => name === signal);
         return { name: signal, unit: output?.unit ?? "", symbol: output?.symbol ?? signal, label: output?.label ?? signal };
       }),
-      measurementDelivered: deliveries.measurement.slice(0, sampled),
-      commandDelivered: deliveries.command.slice(0, sampled),
+      measurementDelivered: delivered.measurement,
+      commandDelivered: delivered.command,
       hasMeasurementSlot: hasSlot("measurement"),
       hasCommandSlot: hasSlot("command"),
       measurement: raw.measurement.slice(0, sampled * design.p),
@@ -107,7 +121,7 @@ export function assemble(raw: Raw): RunResult {
       signals: all.map((trace) => signalFigures(trace, t)),
       messages: (["measurement", "command"] as const)
         .filter(hasSlot)
-        .map((message) => messageFigures(message, deliveries[message].subarray(message === "command" ? timing.commandDelay : 0, sampled))),
+        .map((message) => messageFigures(message, delivered[message].subarray(message === "command" ? commandDelay : 0, sampled))),
       saturatedShare: raw.endedNs > 0 ? raw.saturatedNs / raw.endedNs : 0,
       silentReactions: raw.silentReactions,
       cost: loop.controller.law.type === "lqr" && sampled > 0 ? raw.costSum / sampled : null,

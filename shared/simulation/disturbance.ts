@@ -1,6 +1,6 @@
 import { sin } from "#shared/math/elementary.ts";
 import { normalStream, uniformStream } from "#shared/math/random.ts";
-import { toNs } from "#shared/network/round.ts";
+import { toNs } from "#shared/network/schedule.ts";
 import type { Push, Scenario } from "#shared/scenario/schema.ts";
 
 export interface Impulse {

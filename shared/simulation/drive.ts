@@ -3,7 +3,7 @@
  * and is integrated with the plant; this class keeps the input before the lag, constant or a ramp between events.
  */
 import { quantumOf } from "#shared/control/encoding.ts";
-import { toNs } from "#shared/network/round.ts";
+import { toNs } from "#shared/network/schedule.ts";
 import type { Loop } from "#shared/scenario/schema.ts";
 
 /** How the drive goes to a new input: at its own rate, along the silence ramp, or at once because power is off. */

@@ -1,4 +1,4 @@
-import { toNs } from "#shared/network/round.ts";
+import { toNs } from "#shared/network/schedule.ts";
 import type { Push, Scenario } from "#shared/scenario/schema.ts";
 import { noiseValues } from "./disturbance.ts";
 import type { RunResult } from "./result.ts";
@@ -10,14 +10,28 @@ import type { RunResult } from "./result.ts";
 export function explicitScenario(scenario: Scenario, result: RunResult): Scenario {
   const { rounds, seed } = result;
   const p = rounds.measured.length;
-  const bits = (delivered: Uint8Array) => Array.from(delivered, (value): 0 | 1 => (value === 1 ? 1 : 0));
   const [loop] = scenario.loops;
+  const { everyRounds, firstRound, commandTravels } = loop.timing;
+  const later = everyRounds > 1 && commandTravels === "next-round" ? 1 : 0;
+  /** Given sequences count rounds of the network; between those in which the loop has a slot, nothing can be lost. */
+  const bits = (delivered: Uint8Array, first: number): (0 | 1)[] => {
+    const sequence = new Array<0 | 1>(first + delivered.length * everyRounds).fill(1);
+    delivered.forEach((value, k) => {
+      sequence[first + k * everyRounds] = value === 1 ? 1 : 0;
+    });
+    return sequence;
+  };
   const noise = Array.from({ length: rounds.count }, (_, k) => Array.from(rounds.noise.subarray(k * p, (k + 1) * p)));
   return {
     ...scenario,
     loops: [{ ...loop, sensor: { ...loop.sensor, noise: { type: "given", values: noise, then: "zero" } } }],
     losses: {
-      process: { type: "given", measurement: bits(rounds.measurementDelivered), command: bits(rounds.commandDelivered), then: "delivered" },
+      process: {
+        type: "given",
+        measurement: bits(rounds.measurementDelivered, firstRound),
+        command: bits(rounds.commandDelivered, firstRound + later),
+        then: "delivered",
+      },
       streams: "own",
       outages: [],
     },

@@ -1,4 +1,4 @@
-import { toNs } from "#shared/network/round.ts";
+import { toNs } from "#shared/network/schedule.ts";
 import type { Trace } from "./assemble.ts";
 import type { MessageFigures, SignalFigures } from "./result.ts";
 

@@ -1,5 +1,5 @@
 /** Acceptance limits: decisive figure, first crossing, settling. */
-import { toNs } from "#shared/network/round.ts";
+import { toNs } from "#shared/network/schedule.ts";
 import type { Limit, Scenario } from "#shared/scenario/schema.ts";
 import type { Trace } from "./assemble.ts";
 import type { LimitState, LimitVerdict, RunResult, Verdict } from "./result.ts";

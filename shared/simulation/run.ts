@@ -4,17 +4,18 @@
  */
 import type { LoopDesign } from "#shared/control/design.ts";
 import { LoopLogic } from "#shared/control/loop.ts";
-import { normalStream, uniformStream } from "#shared/math/random.ts";
 import { type Deliveries, drawDeliveries } from "#shared/network/delivery.ts";
-import { type RoundTiming, toNs } from "#shared/network/round.ts";
+import type { RoundTiming } from "#shared/network/round.ts";
+import { toNs } from "#shared/network/schedule.ts";
 import type { Plant } from "#shared/plants/plant.ts";
 import { createPlant } from "#shared/plants/registry.ts";
-import { roundsOf } from "#shared/scenario/check.ts";
+import { roundsOf, samplingsOf } from "#shared/scenario/rounds.ts";
 import type { Loop, Scenario } from "#shared/scenario/schema.ts";
 import { assemble } from "./assemble.ts";
 import { Disturbance } from "./disturbance.ts";
 import { Drive } from "./drive.ts";
 import { Integrator } from "./integrator.ts";
+import { drawNoise } from "./noise.ts";
 import { POINTS_PER_ROUND, Recorder, Rows } from "./recorder.ts";
 import type { RunEvent, RunResult } from "./result.ts";
 
@@ -30,9 +31,12 @@ export interface Raw {
   plant: Plant;
   seed: number;
   rounds: number;
+  /** How often the loop samples: once a round, or less often. */
+  samplings: number;
   recorder: Recorder;
   /** Rows of t, x (n), u (m) at events off the grid, and just before impulses. */
   extra: Rows;
+  /** By round of the network. */
   deliveries: Deliveries;
   measurement: Float64Array;
   noise: Float64Array;
@@ -66,7 +70,12 @@ export class Run {
   readonly #joinsNs: number;
   /** Start of the command's slot in its round. */
   readonly #slotNs: number;
-  readonly #periodNs: number;
+  /** The network's round, and the loop's own instants. */
+  readonly #roundNs: number;
+  readonly #ns: RoundTiming["ns"]["loops"][number];
+  readonly #samplings: number;
+  readonly #everyRounds: number;
+  readonly #firstRound: number;
   readonly #endNs: number;
   readonly #commandDelay: number;
   readonly #weights: { states: readonly number[]; inputs: readonly number[] } | null;
@@ -91,11 +100,17 @@ export class Run {
     this.rounds = rounds;
     this.#loop = loop;
     this.#plant = plant;
-    this.#periodNs = timing.ns.period;
+    const { everyRounds, firstRound, commandDelay } = timing.loops[0];
+    const samplings = samplingsOf(rounds, timing.loops[0]);
+    this.#roundNs = timing.ns.period;
+    this.#ns = timing.ns.loops[0];
+    this.#samplings = samplings;
+    this.#everyRounds = everyRounds;
+    this.#firstRound = firstRound;
     this.#endNs = endNs;
-    this.#commandDelay = timing.commandDelay;
+    this.#commandDelay = commandDelay;
     this.#joinsNs = toNs(loop.start.networkJoinsAtS);
-    this.#slotNs = timing.ns.slots.find(({ message }) => message === "command")?.start ?? 0;
+    this.#slotNs = timing.ns.slots.find(({ id }) => id === `${loop.id}/command`)?.start ?? 0;
     this.#lagged = loop.actuator.lagS > 0;
     const start = loop.start.state ?? new Array<number>(n).fill(0);
     this.#logic = new LoopLogic(scenario, design, loop.start.estimate ?? start, { linear: false });
@@ -115,7 +130,7 @@ export class Run {
     this.#integrator.y.set(start);
     const { law } = loop.controller;
     this.#weights = law.type === "lqr" ? { states: law.stateWeights, inputs: law.inputWeights } : null;
-    this.#noise = drawNoise(loop, rounds, p, seed);
+    this.#noise = drawNoise(loop, samplings, p, seed);
     this.#raw = {
       scenario,
       timing,
@@ -123,13 +138,14 @@ export class Run {
       plant,
       seed,
       rounds,
+      samplings,
       recorder: new Recorder(n, m, timing.ns.period, endNs),
       extra: new Rows(1 + n + m),
       deliveries: drawDeliveries(scenario, timing, rounds, seed),
-      measurement: new Float64Array(rounds * p),
+      measurement: new Float64Array(samplings * p),
       noise: this.#noise,
-      estimate: new Float64Array(rounds * this.#logic.controller.estimate.length),
-      command: new Float64Array(rounds * m),
+      estimate: new Float64Array(samplings * this.#logic.controller.estimate.length),
+      command: new Float64Array(samplings * m),
       sampled: 0,
       saturatedNs: 0,
       costSum: 0,
@@ -141,14 +157,14 @@ export class Run {
     this.#onStep = this.#observer();
   }
 
-  /** Rounds sampled so far. */
+  /** Rounds begun so far. */
   get round(): number {
-    return this.#nextSample;
+    return Math.min(this.rounds, this.#firstRound + this.#nextSample * this.#everyRounds);
   }
 
   /** Simulates about this many further rounds, up to the next event; true when the run is over. */
   advance(rounds: number): boolean {
-    const until = Math.min(this.#endNs, this.#nowNs + rounds * this.#periodNs);
+    const until = Math.min(this.#endNs, this.#nowNs + rounds * this.#roundNs);
     while (!this.#done && this.#nowNs < until) this.#segment();
     if (!this.#done && this.#nowNs >= this.#endNs) {
       this.#done = true;
@@ -213,8 +229,8 @@ export class Run {
   #segment(): void {
     if (this.#nowNs === 0 && this.#nextSample === 0) this.#events();
     if (this.#done) return;
-    const sampleNs = this.#nextSample < this.rounds ? this.#nextSample * this.#periodNs + this.#raw.timing.ns.sample : NEVER;
-    const actNs = this.#nextAct * this.#periodNs + this.#raw.timing.ns.act;
+    const sampleNs = this.#nextSample < this.#samplings ? this.#nextSample * this.#ns.period + this.#ns.sample : NEVER;
+    const actNs = this.#nextAct * this.#ns.period + this.#ns.act;
     const changeNs = this.#nextChange < this.#changes.length ? this.#changes[this.#nextChange].atNs : NEVER;
     const impulseNs = this.#nextImpulse < this.#disturbance.impulses.length ? this.#disturbance.impulses[this.#nextImpulse].atNs : NEVER;
     const pushNs = this.#disturbance.nextBreak(this.#nowNs);
@@ -294,7 +310,6 @@ export class Run {
   /** Events at #nowNs, in the order that the model gives. */
   #events(): void {
     const now = this.#nowNs;
-    const raw = this.#raw;
     const { y } = this.#integrator;
     let eventful = this.#drive.nextNs <= now;
     if (eventful || this.#drive.sloping) this.#drive.advance(now);
@@ -313,23 +328,23 @@ export class Run {
       this.#nextImpulse++;
       eventful = true;
     }
-    if (this.#nextAct * this.#periodNs + raw.timing.ns.act === now) {
+    if (this.#nextAct * this.#ns.period + this.#ns.act === now) {
       this.#act(now);
       eventful = true;
     }
-    if (this.#nextSample < this.rounds && this.#nextSample * this.#periodNs + raw.timing.ns.sample === now) {
+    if (this.#nextSample < this.#samplings && this.#nextSample * this.#ns.period + this.#ns.sample === now) {
       this.#sample(now);
       eventful = true;
     }
-    if (eventful && (now * POINTS_PER_ROUND) % this.#periodNs !== 0) this.#observe(now, y);
+    if (eventful && (now * POINTS_PER_ROUND) % this.#roundNs !== 0) this.#observe(now, y);
   }
 
   #act(now: number): void {
     const raw = this.#raw;
     const j = this.#nextAct++;
-    const travels = j + this.#commandDelay;
+    const travels = this.#firstRound + j * this.#everyRounds + this.#commandDelay;
     // The last command may be due in a round that the run does not have; then it needs no slot, and is not lost.
-    const change = this.#logic.act(raw.deliveries.command[travels] !== 0, travels * this.#periodNs + this.#slotNs >= this.#joinsNs);
+    const change = this.#logic.act(raw.deliveries.command[travels] !== 0, travels * this.#roundNs + this.#slotNs >= this.#joinsNs);
     const { silence } = this.#loop.actuator;
     if (change === "begins" && silence) {
       raw.silentReactions++;
@@ -362,7 +377,11 @@ export class Run {
     }
     this.#logic.measure(y, u, this.#noise, k * p);
     // While the drive reacts to silence, what is in force is what the drive does, not what a command asked for.
-    this.#logic.compute(k, raw.deliveries.measurement[k] === 1, this.#logic.actuator.silent ? this.#drive.value : this.#logic.actuator.inForce);
+    this.#logic.compute(
+      k,
+      raw.deliveries.measurement[this.#firstRound + k * this.#everyRounds] === 1,
+      this.#logic.actuator.silent ? this.#drive.value : this.#logic.actuator.inForce,
+    );
     const { estimate, plan } = this.#logic.controller;
     if (!allFinite(estimate) || !allFinite(plan)) {
       this.#loseEstimate(now);
@@ -404,20 +423,4 @@ export class Run {
 function allFinite(values: Float64Array): boolean {
   for (let i = 0; i < values.length; i++) if (!Number.isFinite(values[i])) return false;
   return true;
-}
-
-/** Sensor noise, rounds x p: one normal value per component and round is always drawn, in component order, or taken as given. */
-function drawNoise(loop: Loop, rounds: number, p: number, seed: number): Float64Array {
-  const values = new Float64Array(rounds * p);
-  const { noise, signals } = loop.sensor;
-  if (noise.type === "given") {
-    for (let k = 0; k < rounds; k++) {
-      const row = k < noise.values.length ? noise.values[k] : noise.then === "repeat" ? noise.values[k % noise.values.length] : null;
-      if (row) values.set(row, k * p);
-    }
-  } else if (signals.some(({ noiseStd }) => noiseStd > 0)) {
-    const normal = normalStream(uniformStream(seed, `noise/${loop.id}`));
-    for (let i = 0; i < values.length; i++) values[i] = signals[i % p].noiseStd * normal();
-  }
-  return values;
 }

@@ -24,7 +24,7 @@ export function jumpModel(input: ScenarioInput, from: "sampling" | "acting" = "s
   const scenario = scenarioSchema.parse(input);
   const timing = roundTiming(scenario);
   if (timing.issues.length > 0) throw new Error(timing.issues[0].message);
-  const { design, issues } = designLoop(scenario, timing.ns);
+  const { design, issues } = designLoop(scenario, timing.ns.loops[0]);
   if (!design) throw new Error(issues[0].message);
   const { n, m } = design.model;
   const { restS } = design.instants;

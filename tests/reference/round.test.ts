@@ -1,7 +1,8 @@
 /** Airtime and step counts against the standards and published figures (checks.md 1 to 3). */
 import { describe, expect, it } from "vitest";
 import { phyTiming } from "#shared/network/phy.ts";
-import { floodSteps, roundTiming } from "#shared/network/round.ts";
+import { roundTiming } from "#shared/network/round.ts";
+import { floodSteps } from "#shared/network/schedule.ts";
 import { type Phy, type ScenarioInput, scenarioSchema } from "#shared/scenario/schema.ts";
 
 const US = 1000;

@@ -1,5 +1,5 @@
 /** The round ribbon: one round to scale between two posts. Everything comes from the round's timing. Pixels and seconds. */
-import type { RoundTiming, Slot } from "#shared/network/round.ts";
+import type { LoopTiming, RoundTiming, Slot } from "#shared/network/round.ts";
 
 /** What the picture needs of a timing; lists carry no more than this. */
 export type RoundPicture = Omit<RoundTiming, "ns" | "savings" | "issues">;
@@ -30,7 +30,7 @@ export interface RibbonScale {
 /** The longest instant that has to be shown. */
 export function ribbonScale(timing: RoundPicture, left: number, right: number): RibbonScale {
   const slotsEnd = timing.slots[timing.slots.length - 1]?.endS ?? 0;
-  const endS = Math.max(timing.periodS, slotsEnd + timing.guardS, timing.actAtS, timing.computeUntilS);
+  const endS = Math.max(timing.periodS, slotsEnd + timing.guardS, ...timing.loops.flatMap((loop) => [loop.actAtS, loop.computeUntilS]));
   const xOf = (seconds: number) => left + (seconds / endS) * (right - left);
   return { left, right, endS, post: xOf(timing.periodS), xOf };
 }
@@ -72,22 +72,22 @@ export interface LanePart {
 }
 
 /** From sampling to acting, without a gap. A command that travels in the next round does so one period later. */
-export function laneParts(timing: RoundPicture): LanePart[] {
-  const of = (message: Slot["message"]) => timing.slots.find((slot) => slot.message === message);
+export function laneParts(timing: RoundPicture, loop: LoopTiming): LanePart[] {
+  const of = (message: Slot["message"]) => timing.slots.find((slot) => slot.message === message && slot.loop === loop.loop);
   const measurement = of("measurement");
   const command = of("command");
-  const later = timing.commandDelay * timing.periodS;
+  const later = loop.commandDelay * timing.periodS;
   const parts: LanePart[] = [];
-  let at = timing.sampleAtS;
+  let at = loop.sampleAtS;
   const add = (kind: LanePart["kind"], fromS: number, untilS: number, words: string) => {
     if (fromS > at + 1e-9) parts.push({ kind: "wait", fromS: at, untilS: fromS, words: "waits" });
     if (untilS > fromS) parts.push({ kind, fromS, untilS, words });
     at = Math.max(at, untilS);
   };
   if (measurement) add("way", measurement.startS, measurement.endS, "measurement on its way");
-  add("computes", timing.computeFromS, timing.computeUntilS, "computes");
+  add("computes", loop.computeFromS, loop.computeUntilS, "computes");
   if (command) add("way", command.startS + later, command.endS + later, "command on its way");
-  if (timing.actAtS > at + 1e-9) parts.push({ kind: "wait", fromS: at, untilS: timing.actAtS, words: "waits" });
+  if (loop.actAtS > at + 1e-9) parts.push({ kind: "wait", fromS: at, untilS: loop.actAtS, words: "waits" });
   return parts;
 }
 
@@ -137,8 +137,10 @@ export function ribbonText(timing: RoundPicture): string {
   const fit = timing.fits ? `${ms(timing.reserveS)} reserve` : `too long by ${ms(-timing.reserveS)}`;
   return [
     `One round of ${ms(timing.periodS)}: ${slots.length > 0 ? slots.join(", ") : "no slots"}`,
-    `samples at ${ms(timing.sampleAtS)}, computes from ${ms(timing.computeFromS)} to ${ms(timing.computeUntilS)}, acts at ${ms(timing.actAtS)}`,
-    `latency ${ms(timing.latencyS)}`,
+    ...timing.loops.map(
+      (loop) =>
+        `${timing.loops.length > 1 ? `${loop.name} ` : ""}samples at ${ms(loop.sampleAtS)}, computes from ${ms(loop.computeFromS)} to ${ms(loop.computeUntilS)}, acts at ${ms(loop.actAtS)}, latency ${ms(loop.latencyS)}`,
+    ),
     fit,
   ].join("; ");
 }

@@ -18,8 +18,9 @@ interface Word extends Placed {
 /** The loop below the round: samples, on its way, computes, waits, acts, and the latency's bracket. */
 export function RibbonLane({ timing, scale, y, width, measure }: RibbonLaneProps) {
   const { xOf } = scale;
-  const parts = laneParts(timing);
-  const [samples, acts] = [xOf(timing.sampleAtS), xOf(timing.actAtS)];
+  const [own] = timing.loops;
+  const parts = laneParts(timing, own);
+  const [samples, acts] = [xOf(own.sampleAtS), xOf(own.actAtS)];
   const placer = new WordPlacer(0, width);
   placer.reserve(samples, y, 4);
   placer.reserve(acts, y - 4, 5);
@@ -54,8 +55,8 @@ export function RibbonLane({ timing, scale, y, width, measure }: RibbonLaneProps
     }
   }
   const ms = (seconds: number) => withUnit(fixed(seconds * 1000, 2), "ms");
-  const latency = ms(timing.latencyS);
-  const tooEarly = timing.earliestActS > timing.actAtS + 1e-9;
+  const latency = ms(own.latencyS);
+  const tooEarly = own.earliestActS > own.actAtS + 1e-9;
   const long = ", the same in every round";
   const lead = `latency τ = ${latency}`;
   const whole = measure(lead, "strong") + measure(long, "strong") < width - 8;
@@ -80,7 +81,7 @@ export function RibbonLane({ timing, scale, y, width, measure }: RibbonLaneProps
       ))}
       {tooEarly ? (
         <text x={width} y={y + 36} className="txc" textAnchor="end">
-          would have to act at {ms(timing.actAtS)}, the command is there at {ms(timing.earliestActS)}
+          would have to act at {ms(own.actAtS)}, the command is there at {ms(own.earliestActS)}
         </text>
       ) : (
         <>

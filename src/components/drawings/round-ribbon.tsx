@@ -55,7 +55,7 @@ function Ribbon({ timing, width }: RoundRibbonProps & { width: number }) {
   const clip = useId();
   const measure = measureWith(pageFace());
   const wide = width >= 480;
-  const actsLater = timing.actAtS > timing.periodS + 1e-9;
+  const actsLater = timing.loops[0].actAtS > timing.periodS + 1e-9;
   const right = width - (wide && !actsLater && timing.fits ? 34 : 12);
   const scale = ribbonScale(timing, 12, right);
   const slotsEnd = timing.slots.at(-1)?.endS ?? 0;

@@ -12,11 +12,12 @@ const BASE = 17;
 /** For tables: the same marks as the large ribbon, no text. */
 export function SmallRibbon({ timing, width = 176 }: SmallRibbonProps) {
   const clip = useId();
+  const [own] = timing.loops;
   const scale = ribbonScale(timing, 5, width - 5);
   const stairs = timing.slots.map((slot) => stairOf(slot, timing.hops, scale, BASE, 12.2));
   const slotsEnd = scale.xOf((timing.slots.at(-1)?.endS ?? 0) + timing.guardS);
-  const [samples, acts] = [scale.xOf(timing.sampleAtS), scale.xOf(timing.actAtS)];
-  const computes = laneParts(timing).find(({ kind }) => kind === "computes");
+  const [samples, acts] = [scale.xOf(own.sampleAtS), scale.xOf(own.actAtS)];
+  const computes = laneParts(timing, own).find(({ kind }) => kind === "computes");
   const computeWidth = computes ? Math.max(3, scale.xOf(computes.untilS) - scale.xOf(computes.fromS)) : 0;
   return (
     <svg className="small-ribbon" width={width} height="26" viewBox={`0 0 ${width} 26`} role="img" aria-label={ribbonText(timing)}>
@@ -26,12 +27,12 @@ export function SmallRibbon({ timing, width = 176 }: SmallRibbonProps) {
       {timing.reserveS > 0 && <rect x={slotsEnd} y="3" width={Math.max(0, scale.post - slotsEnd)} height="14" className="stipS" />}
       <path d={`M5 17.5H${scale.right}`} className="ink" />
       {stairs.map(({ slot, path }) => (
-        <path key={slot.message} d={path} className="swell" />
+        <path key={slot.id} d={path} className="swell" />
       ))}
       {!timing.fits && (
         <g clipPath={`url(#${clip})`}>
           {stairs.map(({ slot, path }) => (
-            <path key={slot.message} d={path} className="swell over" />
+            <path key={slot.id} d={path} className="swell over" />
           ))}
         </g>
       )}

@@ -87,9 +87,9 @@ export function madeRun(making: Making = {}): MadeRun {
       rounds: {
         count,
         periodS,
-        sampleAtS: timing.sampleAtS,
-        latencyS: timing.latencyS,
-        commandDelay: timing.commandDelay,
+        sampleAtS: timing.loops[0].sampleAtS,
+        latencyS: timing.loops[0].latencyS,
+        commandDelay: timing.loops[0].commandDelay,
         measured: [
           { name: "position", unit: "m", symbol: "x", label: "Position" },
           { name: "angle", unit: "rad", symbol: "θ", label: "Angle" },

@@ -24,7 +24,7 @@ interface Gains {
 function presentGains(good: Scenario | null): Gains | null {
   const law = good?.loops[0].controller.law;
   if (!good || !law || law.type === "pid") return null;
-  const { design } = designLoop(good, roundTiming(good).ns);
+  const { design } = designLoop(good, roundTiming(good).ns.loops[0]);
   const feedback = design?.feedback;
   if (!design || !feedback) return null;
   const { n, m } = design.model;

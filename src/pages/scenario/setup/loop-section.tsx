@@ -52,7 +52,7 @@ export function LoopSection({ timing }: { timing: RoundTiming | null }) {
       <Part title="Silence" sum={describeSilence(json)} owns={[at("actuator.silence")]}>
         <SilenceFields />
       </Part>
-      <Part title="Timing" sum={describeTiming(timing?.latencyS ?? null)} owns={[at("timing")]}>
+      <Part title="Timing" sum={describeTiming(timing?.loops[0].latencyS ?? null)} owns={[at("timing")]}>
         <TimingPart timing={timing} />
       </Part>
     </SetupSection>

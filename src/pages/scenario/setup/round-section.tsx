@@ -1,4 +1,5 @@
-import type { RoundTiming, Saving } from "#shared/network/round.ts";
+import type { RoundTiming } from "#shared/network/round.ts";
+import type { Saving } from "#shared/network/savings.ts";
 import { RoundRibbon } from "#src/components/drawings/round-ribbon.tsx";
 import { Button } from "#src/components/ui/button.tsx";
 import { counted, msText } from "#src/lib/format.ts";
@@ -41,7 +42,7 @@ export function RoundSection({ timing }: { timing: RoundTiming | null }) {
       <NumberAt path={["round", "wakeUpS"]} />
       <NumberAt path={["round", "gapS"]} />
       <NumberAt path={["round", "clockPpm"]} />
-      <SwitchAt path={["round", "beacon"]} off="none" on="opens the round" first={() => ({ payloadBytes: 4 })} />
+      <SwitchAt path={["round", "beacon"]} off="none" on="opens the round" first={() => ({ payloadBytes: 4, needed: false })} />
       {getAt(json, ["round", "beacon"]) !== null && <NumberAt path={["round", "beacon", "payloadBytes"]} />}
     </SetupSection>
   );
@@ -56,9 +57,9 @@ function Savings({ timing }: { timing: RoundTiming }) {
       <p className="sub3">What would make room ({msText(missing)} are missing)</p>
       <ul>
         {timing.savings.map((saving) => {
-          const applied = applySaving(draft.json, saving, timing);
+          const applied = applySaving(draft.json, saving);
           return (
-            <li key={saving.change}>
+            <li key={saving.text}>
               <span>
                 {words(saving, draft.json)}
                 <span className="second">
@@ -98,5 +99,7 @@ function words({ change, text }: Saving, json: unknown): string {
       return wordOf(PHY, PHY.find(({ word }) => word === text)?.value ?? text);
     case "period":
       return `A longer period`;
+    default:
+      return `${text.charAt(0).toUpperCase()}${text.slice(1)}`;
   }
 }

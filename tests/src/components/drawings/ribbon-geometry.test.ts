@@ -18,9 +18,9 @@ describe("the loop below the round", () => {
     for (const placement of ["sensor", "apart", "actuator"] as const) {
       for (const travels of ["same-round", "next-round"] as const) {
         const timing = roundTiming(withPlacement(placement, travels));
-        const parts = laneParts(timing);
-        expect(parts[0]?.fromS, `${placement}, ${travels}`).toBeCloseTo(timing.sampleAtS, 9);
-        expect(parts.at(-1)?.untilS, `${placement}, ${travels}`).toBeCloseTo(timing.actAtS, 9);
+        const parts = laneParts(timing, timing.loops[0]);
+        expect(parts[0]?.fromS, `${placement}, ${travels}`).toBeCloseTo(timing.loops[0].sampleAtS, 9);
+        expect(parts.at(-1)?.untilS, `${placement}, ${travels}`).toBeCloseTo(timing.loops[0].actAtS, 9);
         for (const [i, part] of parts.entries()) if (i > 0) expect(part.fromS).toBeCloseTo(parts[i - 1]?.untilS ?? Number.NaN, 9);
         expect(parts.filter(({ kind }) => kind === "computes")).toHaveLength(1);
         expect(parts.filter(({ kind }) => kind === "way")).toHaveLength(placement === "apart" ? 2 : 1);

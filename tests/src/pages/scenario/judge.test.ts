@@ -47,7 +47,7 @@ describe("judging a draft", () => {
     const enough = timing?.savings.filter(({ savesS }) => savesS >= -timing.reserveS - 1e-9) ?? [];
     expect(enough.length).toBeGreaterThan(0);
     for (const saving of enough) {
-      const applied = applySaving(json, saving, timing as NonNullable<typeof timing>);
+      const applied = applySaving(json, saving);
       expect(judge(cleanDraft(applied)).timing?.fits, saving.change).toBe(true);
     }
   });

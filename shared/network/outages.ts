@@ -1,0 +1,41 @@
+/** Nodes out of service (model 2): a radio that is off neither sends, relays nor hears; here for processes that know no floods. */
+import type { Scenario } from "#shared/scenario/schema.ts";
+import type { RoundTiming, Slot } from "./round.ts";
+import { toNs } from "./schedule.ts";
+
+const NEVER = Number.POSITIVE_INFINITY;
+
+export class Outages {
+  readonly #spans: Map<number, { from: number; until: number }[]>;
+  /** The slot whose loss silences everybody, and its sender; null: no beacon is needed. */
+  readonly #beacon: { host: number; start: number; end: number } | null;
+  readonly #period: number;
+
+  constructor(scenario: Scenario, timing: RoundTiming) {
+    this.#period = timing.ns.period;
+    this.#spans = new Map();
+    for (const { id, outages } of scenario.floor?.nodes ?? []) {
+      const spans = outages.map(({ fromS, untilS }) => ({ from: toNs(fromS), until: untilS === null ? NEVER : toNs(untilS) }));
+      if (spans.length > 0) this.#spans.set(id, spans);
+    }
+    const index = timing.slots.findIndex(({ message }) => message === "beacon");
+    const host = index < 0 ? null : timing.slots[index].from;
+    this.#beacon = scenario.round.beacon?.needed && host !== null ? { host, ...timing.ns.slots[index] } : null;
+  }
+
+  /** Is the node down at any instant of [fromNs, untilNs)? An instant alone: fromNs = untilNs. */
+  down(node: number | null | undefined, fromNs: number, untilNs: number): boolean {
+    const spans = this.#spans.get(node ?? -1);
+    if (!spans) return false;
+    return spans.some(({ from, until }) => from < until && until > fromNs && (from < untilNs || from === fromNs));
+  }
+
+  /** Are sender and receivers of the slot in service in round k, and did the beacon's host speak when it is needed? */
+  travels(slot: Slot, ns: { start: number; end: number }, k: number): boolean {
+    if (this.#spans.size === 0) return true;
+    const begin = k * this.#period;
+    if (this.#beacon && this.down(this.#beacon.host, begin + this.#beacon.start, begin + this.#beacon.end)) return false;
+    if (this.down(slot.from, begin + ns.start, begin + ns.end)) return false;
+    return !slot.to?.some((node) => this.down(node, begin + ns.start, begin + ns.end));
+  }
+}
