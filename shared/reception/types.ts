@@ -33,7 +33,10 @@ export const columnMappingSchema = z
          * round: one counter for all, so a link that begins late or falls silent has lost the rounds that others saw.
          */
         kind: z.enum(["sequence", "round"]).default("sequence"),
-        /** The counter returns to 0 after wrapsAt - 1: 256 for 8 bits, 65 536, 4 294 967 296; null: it never does. */
+        /**
+         * The counter returns to 0 after wrapsAt - 1: 256 for 8 bits, 65 536, 4 294 967 296. null: wraps of 8, 16 and 32 bits are
+         * recognised by themselves.
+         */
         wrapsAt: count("numbers before it wraps", "", 4, 281_474_976_710_656).nullable().default(null),
       })
       .nullable()
@@ -46,6 +49,8 @@ export const columnMappingSchema = z
     receiver: columnSchema.nullable().default(null),
     /** 1/0, true/false, yes/no, ok/lost, received/lost. null: every row is a received packet, missing numbers are lost. */
     received: columnSchema.nullable().default(null),
+    /** What a 1, true or yes of that column says: received, or (a column "lost") lost. */
+    receivedMarks: z.enum(["received", "lost"]).default("received"),
     rssi: columnSchema.nullable().default(null),
     /** Time from packet to packet; null: the median of the time column. */
     periodS: quantity("packet interval", "s", 1e-6, 86_400).nullable().default(null),
