@@ -6,8 +6,6 @@ export interface PhyTiming {
   label: string;
   /** Largest header + payload, bytes. */
   maxBytes: number;
-  /** First and last channel: IEEE 802.15.4 numbers, or RF channels of Bluetooth LE. */
-  channels: { lo: number; hi: number };
   /** Default turnaround between two steps, ns. */
   turnaroundNs: number;
   airtimeNs(bytes: number): number;
@@ -23,7 +21,6 @@ const ieee802154: PhyTiming = {
   phy: "ieee802154",
   label: "IEEE 802.15.4, 2.4 GHz",
   maxBytes: 125,
-  channels: { lo: 11, hi: 26 },
   turnaroundNs: 192 * US,
   airtimeNs: (bytes) => (6 + bytes + 2) * 32 * US,
 };
@@ -37,7 +34,6 @@ const le = (phy: Phy, label: string, airtimeUs: (bytes: number) => number): PhyT
   phy,
   label,
   maxBytes: 255,
-  channels: { lo: 0, hi: 39 },
   turnaroundNs: 150 * US,
   airtimeNs: (bytes) => airtimeUs(bytes) * US,
 });

@@ -1,5 +1,5 @@
 /** Rules of floor, radio and round across fields: who stands where, who sends to whom, which channels there are. */
-import { phyTiming } from "#shared/network/phy.ts";
+import { channelRange } from "#shared/network/channels.ts";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Floor } from "./floor-schema.ts";
 import type { Report } from "./report.ts";
@@ -66,11 +66,11 @@ function checkRound(report: Report, { loops, round }: Scenario): void {
 }
 
 function checkRadio(report: Report, { radio }: Scenario): void {
-  const { lo, hi } = phyTiming(radio.phy).channels;
+  const { first, last } = channelRange(radio.phy);
   const { list } = radio.channels;
   list.forEach((channel, i) => {
     const path = `radio.channels.list[${i}]`;
-    if (channel < lo || channel > hi) report.add("out-of-range", path, `Channel ${channel} does not exist; this radio has ${lo} to ${hi}.`);
+    if (channel < first || channel > last) report.add("out-of-range", path, `Channel ${channel} does not exist; this radio has ${first} to ${last}.`);
     else if (list.indexOf(channel) !== i) report.add("duplicate-name", path, `Channel ${channel} is listed twice.`);
   });
   if (radio.reception.type === "table") {

@@ -35,9 +35,9 @@ const pendulum: ScenarioInput = {
       sensor: {
         signals: [
           { signal: "position", noiseStd: 0.0005, encoding: { bits: 16, lo: -1, hi: 1 } },
-          { signal: "angle", noiseStd: 0.0008, encoding: { bits: 16, lo: -1.6, hi: 1.6 } },
+          { signal: "angle", noiseStd: 0.0008726646259971648, encoding: { bits: 16, lo: -1.5707963267948966, hi: 1.5707963267948966 } },
           { signal: "velocity", noiseStd: 0.004, encoding: { bits: 16, lo: -8, hi: 8 } },
-          { signal: "angularVelocity", noiseStd: 0.006, encoding: { bits: 16, lo: -16, hi: 16 } },
+          { signal: "angularVelocity", noiseStd: 0.006, encoding: { bits: 16, lo: -15.707963267948966, hi: 15.707963267948966 } },
         ],
       },
       controller: { placement: "apart", computeS: 0.0015, law: { type: "lqr", stateWeights: [90, 60, 1, 1], inputWeights: [0.12] } },
@@ -61,10 +61,10 @@ const pendulum: ScenarioInput = {
   losses: { process: { type: "bernoulli", measurement: 0.05, command: 0.05 }, outages: [{ fromS: 6.5, untilS: 6.6 }] },
   pushes: [{ type: "impulse", channel: "cart", atS: 4, size: 0.5 }],
   limits: [
-    { type: "within", signal: "angle", lo: -0.2094, hi: 0.2094 },
+    { type: "within", signal: "angle", lo: -0.20943951023931953, hi: 0.20943951023931953 },
     { type: "within", signal: "position", lo: -0.3, hi: 0.3 },
     { type: "settle", signal: "position", band: 0.03, withinS: 1.8, afterS: 4 },
-    { type: "rms", signal: "angle", below: 0.05 },
+    { type: "rms", signal: "angle", below: 0.05235987755982988 },
     { type: "saturation", below: 0.02 },
   ],
 };
@@ -94,7 +94,7 @@ const crane: ScenarioInput = {
       sensor: {
         signals: [
           { signal: "position", noiseStd: 0.002, encoding: { bits: 16, lo: -8, hi: 8 } },
-          { signal: "angle", noiseStd: 0.002, encoding: { bits: 14, lo: -1, hi: 1 } },
+          { signal: "angle", noiseStd: 0.0017453292519943296, encoding: { bits: 14, lo: -1.0471975511965976, hi: 1.0471975511965976 } },
         ],
       },
       controller: {
@@ -137,7 +137,7 @@ const crane: ScenarioInput = {
   losses: { process: { type: "bernoulli", measurement: 0.02, command: 0.02 } },
   pushes: [{ type: "step", channel: "cart", fromS: 12, untilS: 13, size: 80 }],
   limits: [
-    { type: "within", signal: "angle", lo: -0.15, hi: 0.15 },
+    { type: "within", signal: "angle", lo: -0.15707963267948966, hi: 0.15707963267948966 },
     { type: "within", signal: "position", lo: -0.5, hi: 3.2 },
     { type: "settle", signal: "position", band: 0.1, withinS: 5, afterS: 6 },
     { type: "saturation", below: 0.05 },

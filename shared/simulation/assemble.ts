@@ -124,6 +124,7 @@ export function assemble(raw: Raw): RunResult {
         .map((message) => messageFigures(message, delivered[message].subarray(message === "command" ? commandDelay : 0, sampled))),
       saturatedShare: raw.endedNs > 0 ? raw.saturatedNs / raw.endedNs : 0,
       silentReactions: raw.silentReactions,
+      nodes: [],
       cost: loop.controller.law.type === "lqr" && sampled > 0 ? raw.costSum / sampled : null,
     },
     limits,

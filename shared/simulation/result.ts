@@ -98,12 +98,24 @@ export interface MessageFigures {
   lost: number;
   longestLoss: number;
 }
+/** What a node of the floor spent over the run. */
+export interface NodeFigures {
+  node: number;
+  name: string;
+  radioOnS: number;
+  /** Coulomb. */
+  chargeC: number;
+  /** At this rate; null: it draws nothing. */
+  batteryDays: number | null;
+}
 export interface Figures {
   signals: SignalFigures[];
   messages: MessageFigures[];
   /** Share of the time in which an input of the plant is at its lowest or largest value. */
   saturatedShare: number;
   silentReactions: number;
+  /** Empty unless floods were simulated. */
+  nodes: NodeFigures[];
   /** Mean over rounds of x'Qx + u'Ru at sampling instants; null unless the law has weights. */
   cost: number | null;
 }

@@ -126,7 +126,7 @@ describe("the verdict in words", () => {
       "Angle within ±12°",
       "Position within ±0.3m",
       "Position settles in 1.8s to ±30mm",
-      "Angle RMS below 2.86°",
+      "Angle RMS below 3°",
       "Saturated below 2%",
     ]);
   });
