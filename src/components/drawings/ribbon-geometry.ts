@@ -4,13 +4,44 @@ import type { LoopTiming, RoundTiming, Slot } from "#shared/network/round.ts";
 /** What the picture needs of a timing; lists carry no more than this. */
 export type RoundPicture = Omit<RoundTiming, "ns" | "savings" | "issues">;
 
+/** Share of the nodes that have a slot's message after each of its steps, by the slot's id. */
+export type ReachedShares = Readonly<Record<string, readonly number[]>>;
+
+/** Where slots end, the last of them: their order in the table is not that of their ends. */
+export const slotsEndS = (timing: RoundPicture): number => Math.max(0, ...timing.slots.map(({ endS }) => endS));
+
+/** "0, 2, 4 …": the rounds in which something occurs; "" when it does in every one. */
+export function roundsText({ everyRounds, firstRound }: { everyRounds: number; firstRound: number }): string {
+  if (everyRounds === 1) return "";
+  return `${[0, 1, 2].map((k) => firstRound + k * everyRounds).join(", ")} …`;
+}
+
+/**
+ * Slots of different rounds may share a place. Line of each slot, from 0: the lowest on which nothing is in its way; what
+ * occurs in every round lies lowest.
+ */
+export function linesOf(slots: readonly Slot[]): number[] {
+  const lines = new Array<number>(slots.length).fill(0);
+  const laid: number[] = [];
+  const inOrder = slots.map((_, index) => index).sort((a, b) => slots[a].everyRounds - slots[b].everyRounds || slots[a].startS - slots[b].startS);
+  for (const index of inOrder) {
+    const { startS, endS } = slots[index];
+    const taken = new Set(
+      laid.filter((other) => slots[other].endS > startS + 1e-9 && slots[other].startS < endS - 1e-9).map((other) => lines[other]),
+    );
+    while (taken.has(lines[index])) lines[index]++;
+    laid.push(index);
+  }
+  return lines;
+}
+
 export interface Stair {
   slot: Slot;
-  /** Outline, from the base up one stair per hop, along, and down again; closed. */
+  /** Outline, from the base up one stair per step, along, and down again; closed. */
   path: string;
   /** Divisions between steps, with the height of the stair before each. */
   divisions: { x: number; top: number }[];
-  /** Middle and height of the tread on which the wave stands after each of the first H steps. */
+  /** Middle and height of the tread on which the wave stands after each of the first H steps; none where shares are known. */
   treads: { x: number; top: number; hop: number }[];
   wake: { from: number; until: number };
   left: number;
@@ -27,10 +58,14 @@ export interface RibbonScale {
   xOf(seconds: number): number;
 }
 
-/** The longest instant that has to be shown. */
-export function ribbonScale(timing: RoundPicture, left: number, right: number): RibbonScale {
-  const slotsEnd = timing.slots[timing.slots.length - 1]?.endS ?? 0;
-  const endS = Math.max(timing.periodS, slotsEnd + timing.guardS, ...timing.loops.flatMap((loop) => [loop.actAtS, loop.computeUntilS]));
+/** All that happens has to be shown, and at least what lies before untilS. */
+export function ribbonScale(timing: RoundPicture, left: number, right: number, untilS = 0): RibbonScale {
+  const endS = Math.max(
+    untilS,
+    timing.periodS,
+    slotsEndS(timing) + timing.guardS,
+    ...timing.loops.flatMap((loop) => [loop.actAtS, loop.computeUntilS]),
+  );
   const xOf = (seconds: number) => left + (seconds / endS) * (right - left);
   return { left, right, endS, post: xOf(timing.periodS), xOf };
 }
@@ -40,9 +75,18 @@ export const waveShare = (step: number, hops: number): number => Math.min(step, 
 
 const round = (value: number): string => String(Math.round(value * 100) / 100);
 
-export function stairOf(slot: Slot, hops: number, scale: RibbonScale, base: number, height: number, shiftS = 0): Stair {
+export interface StairPlace {
+  base: number;
+  height: number;
+  /** Drawn so much later: in the round that follows. */
+  shiftS?: number;
+  /** Share of the nodes reached after each step; left out: the hop that the wave has reached. */
+  shares?: readonly number[];
+}
+
+export function stairOf(slot: Slot, hops: number, scale: RibbonScale, { base, height, shiftS = 0, shares }: StairPlace): Stair {
   const x = (seconds: number) => scale.xOf(seconds + shiftS);
-  const topOf = (step: number) => base - height * waveShare(step, Math.min(hops, slot.steps));
+  const topOf = (step: number) => base - height * (shares ? (shares[step - 1] ?? shares.at(-1) ?? 0) : waveShare(step, Math.min(hops, slot.steps)));
   let path = `M${round(x(slot.floodStartS))} ${round(base)}`;
   const divisions: Stair["divisions"] = [];
   const treads: Stair["treads"] = [];
@@ -51,7 +95,7 @@ export function stairOf(slot: Slot, hops: number, scale: RibbonScale, base: numb
     const until = x(slot.floodStartS + step * slot.stepS);
     path += `V${round(topOf(step))}H${round(until)}`;
     if (step > 1) divisions.push({ x: from, top: topOf(step - 1) });
-    if (step <= hops) treads.push({ x: (from + until) / 2, top: topOf(step), hop: step });
+    if (step <= hops && !shares) treads.push({ x: (from + until) / 2, top: topOf(step), hop: step });
   }
   return {
     slot,
@@ -73,9 +117,8 @@ export interface LanePart {
 
 /** From sampling to acting, without a gap. A command that travels in the next round does so one period later. */
 export function laneParts(timing: RoundPicture, loop: LoopTiming): LanePart[] {
-  const of = (message: Slot["message"]) => timing.slots.find((slot) => slot.message === message && slot.loop === loop.loop);
-  const measurement = of("measurement");
-  const command = of("command");
+  const of = (message: Slot["message"]) =>
+    timing.slots.filter((slot) => slot.message === message && slot.loop === loop.loop).sort((a, b) => a.startS - b.startS);
   const later = loop.commandDelay * timing.periodS;
   const parts: LanePart[] = [];
   let at = loop.sampleAtS;
@@ -84,9 +127,9 @@ export function laneParts(timing: RoundPicture, loop: LoopTiming): LanePart[] {
     if (untilS > fromS) parts.push({ kind, fromS, untilS, words });
     at = Math.max(at, untilS);
   };
-  if (measurement) add("way", measurement.startS, measurement.endS, "measurement on its way");
+  for (const { startS, endS } of of("measurement")) add("way", startS, endS, "measurement on its way");
   add("computes", loop.computeFromS, loop.computeUntilS, "computes");
-  if (command) add("way", command.startS + later, command.endS + later, "command on its way");
+  for (const { startS, endS } of of("command")) add("way", startS + later, endS + later, "command on its way");
   if (loop.actAtS > at + 1e-9) parts.push({ kind: "wait", fromS: at, untilS: loop.actAtS, words: "waits" });
   return parts;
 }
@@ -130,16 +173,23 @@ export class WordPlacer {
   }
 }
 
+/** "Measurement", "Measurement, second slot"; with the loop's name where there are several. */
+export function slotName(timing: RoundPicture, { label, loop, copy }: Slot): string {
+  const whose = timing.loops.length > 1 ? timing.loops.find((one) => one.loop === loop)?.name : undefined;
+  return [label, ...(copy > 1 ? ["second slot"] : []), ...(whose ? [whose] : [])].join(", ");
+}
+
 /** What the picture shows, in words. */
 export function ribbonText(timing: RoundPicture): string {
   const ms = (seconds: number) => `${Number((seconds * 1000).toPrecision(4))} ms`;
-  const slots = timing.slots.map(({ label, startS, endS }) => `${label} from ${ms(startS)} to ${ms(endS)}`);
+  const inRounds = (of: { everyRounds: number; firstRound: number }) => (of.everyRounds > 1 ? ` in rounds ${roundsText(of)}` : "");
+  const slots = timing.slots.map((slot) => `${slotName(timing, slot)} from ${ms(slot.startS)} to ${ms(slot.endS)}${inRounds(slot)}`);
   const fit = timing.fits ? `${ms(timing.reserveS)} reserve` : `too long by ${ms(-timing.reserveS)}`;
   return [
     `One round of ${ms(timing.periodS)}: ${slots.length > 0 ? slots.join(", ") : "no slots"}`,
     ...timing.loops.map(
       (loop) =>
-        `${timing.loops.length > 1 ? `${loop.name} ` : ""}samples at ${ms(loop.sampleAtS)}, computes from ${ms(loop.computeFromS)} to ${ms(loop.computeUntilS)}, acts at ${ms(loop.actAtS)}, latency ${ms(loop.latencyS)}`,
+        `${timing.loops.length > 1 ? `${loop.name} ` : ""}samples at ${ms(loop.sampleAtS)}${inRounds(loop)}, computes from ${ms(loop.computeFromS)} to ${ms(loop.computeUntilS)}, acts at ${ms(loop.actAtS)}, latency ${ms(loop.latencyS)}`,
     ),
     fit,
   ].join("; ");

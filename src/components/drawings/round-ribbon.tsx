@@ -4,15 +4,40 @@ import { measureWith, pageFace, useWidth } from "#src/components/plots/measure.t
 import { leastLabelPx } from "#src/components/plots/paint-stack.ts";
 import { neatScale } from "#src/components/plots/time-scale.ts";
 import { fixed, withUnit } from "#src/lib/format.ts";
-import { type RoundPicture, ribbonScale, ribbonText, type Stair, stairOf } from "./ribbon-geometry.ts";
+import {
+  linesOf,
+  type ReachedShares,
+  type RoundPicture,
+  ribbonScale,
+  ribbonText,
+  roundsText,
+  type Stair,
+  slotName,
+  slotsEndS,
+  stairOf,
+} from "./ribbon-geometry.ts";
 import { RibbonLane } from "./ribbon-lane.tsx";
+import { lanesLayout, RibbonLanes } from "./ribbon-lanes.tsx";
 
 export interface RoundRibbonProps {
   timing: RoundPicture;
+  /** Share of the nodes that have the message after each step, where floods were drawn; else stairs show the hop bound. */
+  reachedShare?: ReachedShares;
+  /** Id of the slot that is looked at. */
+  selected?: string | null;
+  /** A press on a slot. Keys reach the same in the table of slots. */
+  onSelect?: (slotId: string) => void;
+  /** A table of the slots stands below: numbers in the picture are those of its rows. */
+  tabled?: boolean;
+  /** End of the drawn time, s, to draw several rounds on one scale. */
+  untilS?: number;
 }
 
 const ms = (seconds: number) => withUnit(fixed(seconds * 1000, 2), "ms");
+/** Height of the stairs: of one line, and of each where slots of different rounds share a place. */
 const STAIRS = 44;
+const STAIRS_OF_MANY = 27;
+const LINE_GAP = 11;
 
 interface Head {
   name: string;
@@ -41,48 +66,70 @@ export function placeHeads(items: Omit<Head, "row">[], widthOf: (head: Omit<Head
 }
 
 /** One round to scale: the slots of its floods as stairs, reserve, and below it the loop from sampling to acting. */
-export function RoundRibbon({ timing }: RoundRibbonProps) {
+export function RoundRibbon(props: RoundRibbonProps) {
   const host = useRef<HTMLDivElement>(null);
   const width = Math.max(300, useWidth(host) || 640);
   return (
     <div ref={host} className="ribbon">
-      <Ribbon timing={timing} width={width} />
+      <Ribbon {...props} width={width} />
     </div>
   );
 }
 
-function Ribbon({ timing, width }: RoundRibbonProps & { width: number }) {
+function Ribbon({ timing, reachedShare, selected, onSelect, tabled, untilS, width }: RoundRibbonProps & { width: number }) {
   const clip = useId();
   const measure = measureWith(pageFace());
   const wide = width >= 480;
-  const actsLater = timing.loops[0].actAtS > timing.periodS + 1e-9;
-  const right = width - (wide && !actsLater && timing.fits ? 34 : 12);
-  const scale = ribbonScale(timing, 12, right);
-  const slotsEnd = timing.slots.at(-1)?.endS ?? 0;
+  const several = timing.loops.length > 1;
+  const lanes = several ? lanesLayout(timing, width, measure) : null;
+  const actsLater = timing.loops.some(({ actAtS }) => actAtS > timing.periodS + 1e-9);
+  const left = 12 + (lanes?.nameWidth ?? 0);
+  const nextShown = timing.fits && !actsLater && wide;
+  const right = width - (lanes ? lanes.figureWidth + 18 : nextShown ? 34 : 12);
+  const scale = ribbonScale(timing, left, right, untilS);
+  const slotsEnd = slotsEndS(timing);
+  const lines = linesOf(timing.slots);
+  const lineCount = Math.max(0, ...lines) + 1;
 
-  const items: Omit<Head, "row">[] = timing.slots.map(({ label, payloadBytes, startS, endS }) => ({
-    name: label,
-    detail: `${withUnit(String(payloadBytes), "B")} · ${ms(endS - startS)}`,
-    x: scale.xOf(startS) + 2,
+  const items: Omit<Head, "row">[] = timing.slots.map((slot) => ({
+    name: slotName(timing, slot),
+    detail: [
+      ...(slot.everyRounds > 1 ? [`rounds ${roundsText(slot)}`] : []),
+      withUnit(String(slot.payloadBytes), "B"),
+      ms(slot.endS - slot.startS),
+    ].join(" · "),
+    x: scale.xOf(slot.startS) + 2,
     anchor: "start",
-    coral: endS > timing.periodS + 1e-12,
+    coral: slot.endS > timing.periodS + 1e-12,
   }));
   const reserve: Omit<Head, "row"> = timing.fits
     ? { name: "Reserve", detail: ms(timing.reserveS), x: scale.post - 2, anchor: "end", coral: false }
-    : { name: "Too long", detail: `by ${ms(-timing.reserveS)}`, x: right, anchor: "end", coral: true };
+    : { name: "Too long", detail: `by ${ms(-timing.reserveS)}`, x: scale.right, anchor: "end", coral: true };
   const widthOf = ({ name, detail }: Omit<Head, "row">) => Math.max(measure(name, "strong"), measure(detail, "axis"));
-  const heads = placeHeads([...items, reserve], widthOf, 12, width);
+  const heads = lineCount > 1 ? null : placeHeads([...items, reserve], widthOf, 12, width);
   const rows = heads ? Math.max(...heads.map(({ row }) => row)) + 1 : 0;
-  const top = heads ? 6 + rows * 34 : 24;
-  const base = top + STAIRS + 10;
+  const stairsHeight = lineCount > 1 ? STAIRS_OF_MANY : STAIRS;
+  const top = heads ? 6 + rows * 34 : lineCount > 1 ? 8 : 24;
+  const area = lineCount > 1 ? lineCount * (stairsHeight + LINE_GAP) + 6 : STAIRS + 10;
+  const base = top + area;
+  const baseOf = (line: number) => base - line * (stairsHeight + LINE_GAP);
 
-  const stairs = timing.slots.map((slot) => stairOf(slot, timing.hops, scale, base, STAIRS));
-  const next = actsLater ? timing.slots.map((slot) => stairOf(slot, timing.hops, scale, base, STAIRS, timing.periodS)) : [];
-  const neat = neatScale(0, scale.endS, (scale.endS * leastLabelPx(right - 12)) / (right - 12), "ms", 1000, timing.periodS);
+  const placeOf = (index: number) => ({
+    base: baseOf(lines[index] ?? 0),
+    height: stairsHeight,
+    shares: reachedShare?.[timing.slots[index]?.id ?? ""],
+  });
+  const stairs = timing.slots.map((slot, i) => stairOf(slot, timing.hops, scale, placeOf(i)));
+  const next = actsLater
+    ? timing.slots.map((slot, i) => stairOf(slot, timing.hops, scale, { ...placeOf(i), shiftS: timing.periodS })).filter((_, i) => lines[i] === 0)
+    : [];
+  const axis = scale.right - left;
+  const neat = neatScale(0, scale.endS, (scale.endS * leastLabelPx(axis)) / axis, "ms", 1000, timing.periodS);
   const inLabels = neat.labels.filter(({ at }) => scale.xOf(at) <= width - 2);
+  const height = base + (lanes ? 40 + lanes.height : 98);
   return (
     <>
-      <svg width={width} height={base + 98} viewBox={`0 0 ${width} ${base + 98}`} role="img" aria-label={ribbonText(timing)}>
+      <svg width={width} height={height} viewBox={`0 0 ${width} ${height}`} role="img" aria-label={ribbonText(timing)}>
         <clipPath id={clip}>
           <rect x={scale.post} y="0" width={Math.max(0, width - scale.post)} height={base} />
         </clipPath>
@@ -91,7 +138,7 @@ function Ribbon({ timing, width }: RoundRibbonProps & { width: number }) {
             x={scale.xOf(slotsEnd + timing.guardS)}
             y={top}
             width={Math.max(0, scale.post - scale.xOf(slotsEnd + timing.guardS))}
-            height={STAIRS + 10}
+            height={area}
             className="stip"
           />
         )}
@@ -99,9 +146,13 @@ function Ribbon({ timing, width }: RoundRibbonProps & { width: number }) {
           x={scale.xOf(slotsEnd)}
           y={top}
           width={Math.max(0, scale.xOf(slotsEnd + timing.guardS) - scale.xOf(slotsEnd))}
-          height={STAIRS + 10}
+          height={area}
           className="guard"
         />
+        {Array.from({ length: lineCount - 1 }, (_, line) => (
+          // biome-ignore lint/suspicious/noArrayIndexKey: lines have no other name than their place
+          <path key={line} d={`M${left} ${baseOf(line + 1) + 0.5}H${scale.post}`} className="hair2" />
+        ))}
         {heads?.map(
           ({ name, x, anchor, row }) =>
             row < rows - 1 && <path key={name} d={`M${anchor === "start" ? x - 1.5 : x + 1.5} ${37 + row * 34}V${top + 4}`} className="lead" />,
@@ -117,43 +168,58 @@ function Ribbon({ timing, width }: RoundRibbonProps & { width: number }) {
           </g>
         ))}
         {stairs.map((stair, index) => (
-          <StairShape key={stair.slot.message} stair={stair} base={base} number={heads ? null : index + 1} top={top} />
+          <StairShape
+            key={stair.slot.id}
+            stair={stair}
+            base={baseOf(lines[index] ?? 0)}
+            height={stairsHeight}
+            number={heads ? null : index + 1}
+            selected={stair.slot.id === selected}
+            onSelect={onSelect}
+            known={reachedShare?.[stair.slot.id] !== undefined}
+          />
         ))}
         {next.map(({ slot, path }) => (
-          <path key={slot.message} d={path} className={slot.message === "command" ? "swell ghost" : "swelln"} />
+          <path key={slot.id} d={path} className={slot.message === "command" ? "swell ghost" : "swelln"} />
         ))}
         {!timing.fits && (
           <g clipPath={`url(#${clip})`}>
             {stairs.map((stair) => (
-              <path key={stair.slot.message} d={stair.path} className="swell over" />
+              <path key={stair.slot.id} d={stair.path} className="swell over" />
             ))}
           </g>
         )}
-        <path d={`M12 ${base + 0.5}H${actsLater ? right : scale.post}`} className="ink" />
-        {!timing.fits && <path d={`M${scale.post} ${base + 0.5}H${right}`} className="lim" />}
-        {timing.fits && !actsLater && wide && <NextRound timing={timing} post={scale.post} base={base} xOf={scale.xOf} width={width} />}
-        <rect x="12" y={base + 8} width={right - 12} height="5" className="neat" />
+        <path d={`M${left} ${base + 0.5}H${actsLater ? scale.right : scale.post}`} className="ink" />
+        {!timing.fits && <path d={`M${scale.post} ${base + 0.5}H${scale.right}`} className="lim" />}
+        {nextShown && untilS === undefined && (
+          <NextRound timing={timing} post={scale.post} base={base} xOf={scale.xOf} width={lanes ? right + 30 : width} />
+        )}
+        <rect x={left} y={base + 8} width={axis} height="5" className="neat" />
         {neat.inked.map(({ from, until }) => (
           <rect key={from} x={scale.xOf(from)} y={base + 8} width={scale.xOf(until) - scale.xOf(from)} height="5" className="neatf" />
         ))}
         {inLabels.map(({ at, text }, index) => (
           <text
             key={at}
-            x={Math.min(scale.xOf(at) + (index === inLabels.length - 1 && scale.xOf(at) > right - 16 ? 3 : 0), width)}
+            x={Math.min(scale.xOf(at) + (index === inLabels.length - 1 && scale.xOf(at) > scale.right - 16 ? 3 : 0), width)}
             y={base + 27}
             className="ax"
-            textAnchor={at === 0 ? "start" : scale.xOf(at) > right - 16 ? "end" : "middle"}
+            textAnchor={at === 0 ? "start" : scale.xOf(at) > scale.right - 16 ? "end" : "middle"}
           >
             {text}
           </text>
         ))}
         <path
-          d={`M12 ${top - 6}V${base + 13}M${scale.post} ${top - 6}V${base + 13}${actsLater ? `M${scale.xOf(2 * timing.periodS)} ${top - 6}V${base + 13}` : ""}`}
+          d={`M${left} ${top - 6}V${base + 13}M${scale.post} ${top - 6}V${base + 13}${actsLater ? `M${scale.xOf(2 * timing.periodS)} ${top - 6}V${base + 13}` : ""}`}
           className="post"
         />
-        <RibbonLane timing={timing} scale={scale} y={base + 52} width={width} measure={measure} />
+        {lanes ? (
+          <RibbonLanes timing={timing} scale={scale} layout={lanes} y={base + 42} width={width} measure={measure} />
+        ) : (
+          <RibbonLane timing={timing} scale={scale} y={base + 52} width={width} measure={measure} />
+        )}
       </svg>
-      {!heads && (
+      {!heads && !tabled && (
         <ol className="ribbon-key">
           {items.map(({ name, detail, coral }) => (
             <li key={name}>
@@ -169,12 +235,35 @@ function Ribbon({ timing, width }: RoundRibbonProps & { width: number }) {
   );
 }
 
-function StairShape({ stair, base, top, number }: { stair: Stair; base: number; top: number; number: number | null }) {
-  const { path, divisions, treads, wake, left, right } = stair;
+/** What the heights of the stairs stand for, in one sentence. `floods`: of how many floods the shares are. */
+export function stairsNote(reachedShare: ReachedShares | undefined, floods?: number): string {
+  return reachedShare
+    ? `Stairs: the share of nodes that have the message after each step${floods === undefined ? "" : `, over ${floods} floods`}; the dotted line is all of them.`
+    : "Stairs: the hop that the flood has reached after each step, at the latest, on a line of nodes without loss.";
+}
+
+interface StairShapeProps {
+  stair: Stair;
+  base: number;
+  height: number;
+  number: number | null;
+  selected: boolean;
+  onSelect?: (slotId: string) => void;
+  /** Its shares were computed: all nodes is a line that it may stay below. */
+  known: boolean;
+}
+
+function StairShape({ stair, base, height, number, selected, onSelect, known }: StairShapeProps) {
+  const { slot, path, divisions, treads, wake, left, right } = stair;
   const tread = treads.length > 1 ? (treads[1]?.x ?? 0) - (treads[0]?.x ?? 0) : 0;
   return (
-    <g>
-      <path d={path} className="swell" />
+    // biome-ignore lint/a11y/noStaticElementInteractions: a picture; the table of slots below it does the same by key
+    <g onClick={onSelect && (() => onSelect(slot.id))} className={onSelect ? "stair pressed" : "stair"}>
+      {(selected || onSelect) && (
+        <rect x={left} y={base - height - 8} width={Math.max(1, right - left)} height={height + 8} className={selected ? "slot-on" : "slot-any"} />
+      )}
+      {known && <path d={`M${left} ${base - height}H${right}`} className="lead" />}
+      <path d={path} className={slot.everyRounds > 1 ? "swell some" : "swell"} />
       <path d={divisions.map(({ x, top: from }) => `M${x.toFixed(1)} ${from.toFixed(1)}V${base}`).join("")} className="swells" />
       {tread >= 11 &&
         treads.map(({ x, top: at, hop }) => (
@@ -183,15 +272,14 @@ function StairShape({ stair, base, top, number }: { stair: Stair; base: number; 
           </text>
         ))}
       <path d={`M${wake.from.toFixed(1)} ${base + 0.5}H${wake.until.toFixed(1)}`} className="wake" />
-      {number !== null && (
-        <text x={(left + right) / 2} y={top - 8} className="txb" textAnchor="middle">
+      {number !== null && right - left >= (number > 9 ? 14 : 8) && (
+        <text x={(left + right) / 2} y={base - height - 3} className="txb halo2" textAnchor="middle">
           {number}
         </text>
       )}
     </g>
   );
 }
-
 /** The beginning of the round that follows. */
 function NextRound({ timing, post, base, xOf, width }: { timing: RoundPicture; post: number; base: number; xOf(s: number): number; width: number }) {
   const first = timing.slots[0];

@@ -1,33 +1,37 @@
 import "./drawings.css";
 import { useId } from "react";
-import { laneParts, type RoundPicture, ribbonScale, ribbonText, stairOf } from "./ribbon-geometry.ts";
+import { laneParts, linesOf, type RoundPicture, ribbonScale, ribbonText, slotsEndS, stairOf } from "./ribbon-geometry.ts";
 
 export interface SmallRibbonProps {
   timing: RoundPicture;
   width?: number;
 }
 
-const BASE = 17;
+const STAIRS = 12.2;
 
-/** For tables: the same marks as the large ribbon, no text. */
+/** For tables: the same marks as the large ribbon, no text. Several loops lie below it as lines from sampling to acting. */
 export function SmallRibbon({ timing, width = 176 }: SmallRibbonProps) {
   const clip = useId();
-  const [own] = timing.loops;
+  const { loops, slots } = timing;
+  const several = loops.length > 1;
   const scale = ribbonScale(timing, 5, width - 5);
-  const stairs = timing.slots.map((slot) => stairOf(slot, timing.hops, scale, BASE, 12.2));
-  const slotsEnd = scale.xOf((timing.slots.at(-1)?.endS ?? 0) + timing.guardS);
-  const [samples, acts] = [scale.xOf(own.sampleAtS), scale.xOf(own.actAtS)];
-  const computes = laneParts(timing, own).find(({ kind }) => kind === "computes");
-  const computeWidth = computes ? Math.max(3, scale.xOf(computes.untilS) - scale.xOf(computes.fromS)) : 0;
+  const lines = linesOf(slots);
+  const count = Math.max(0, ...lines) + 1;
+  const base = several ? 15 : 17;
+  const each = several ? 12.2 / count : STAIRS / count;
+  const stairs = slots.map((slot, i) => stairOf(slot, timing.hops, scale, { base: base - lines[i] * each, height: each - (count > 1 ? 1.2 : 0) }));
+  const slotsEnd = scale.xOf(slotsEndS(timing) + timing.guardS);
+  const pitch = Math.max(1.5, Math.min(3, 14 / loops.length));
+  const height = several ? Math.max(26, base + 5 + loops.length * pitch) : 26;
   return (
-    <svg className="small-ribbon" width={width} height="26" viewBox={`0 0 ${width} 26`} role="img" aria-label={ribbonText(timing)}>
+    <svg className="small-ribbon" width={width} height={height} viewBox={`0 0 ${width} ${height}`} role="img" aria-label={ribbonText(timing)}>
       <clipPath id={clip}>
-        <rect x={scale.post} y="0" width={Math.max(0, width - scale.post)} height="26" />
+        <rect x={scale.post} y="0" width={Math.max(0, width - scale.post)} height={base + 9} />
       </clipPath>
-      {timing.reserveS > 0 && <rect x={slotsEnd} y="3" width={Math.max(0, scale.post - slotsEnd)} height="14" className="stipS" />}
-      <path d={`M5 17.5H${scale.right}`} className="ink" />
+      {timing.reserveS > 0 && <rect x={slotsEnd} y="3" width={Math.max(0, scale.post - slotsEnd)} height={base - 3} className="stipS" />}
+      <path d={`M5 ${base + 0.5}H${scale.right}`} className="ink" />
       {stairs.map(({ slot, path }) => (
-        <path key={slot.id} d={path} className="swell" />
+        <path key={slot.id} d={path} className={slot.everyRounds > 1 ? "swell some" : "swell"} />
       ))}
       {!timing.fits && (
         <g clipPath={`url(#${clip})`}>
@@ -36,11 +40,39 @@ export function SmallRibbon({ timing, width = 176 }: SmallRibbonProps) {
           ))}
         </g>
       )}
-      {computes && <rect x={scale.xOf(computes.fromS)} y="11" width={computeWidth} height="6" className="comp" />}
-      <path d={`M5 1.5V18M${scale.post} 1.5V18`} className="post" />
+      <path d={`M5 1.5V${base + 1}M${scale.post} 1.5V${base + 1}`} className="post" />
+      {several ? (
+        loops.map((loop, i) => {
+          const y = base + 4 + i * pitch;
+          const [samples, acts] = [scale.xOf(loop.sampleAtS), scale.xOf(loop.actAtS)];
+          const tall = Math.min(1.2, pitch / 2);
+          return (
+            <path
+              key={loop.loop}
+              d={`M${samples} ${y - tall}v${2 * tall}M${samples} ${y}H${acts}M${acts} ${y - tall}v${2 * tall}`}
+              className="small-lane"
+            />
+          );
+        })
+      ) : (
+        <OneLoop timing={timing} xOf={scale.xOf} />
+      )}
+    </svg>
+  );
+}
+
+function OneLoop({ timing, xOf }: { timing: RoundPicture; xOf(s: number): number }) {
+  const [own] = timing.loops;
+  const [samples, acts] = [xOf(own.sampleAtS), xOf(own.actAtS)];
+  const computes = laneParts(timing, own).find(({ kind }) => kind === "computes");
+  return (
+    <>
+      {computes && (
+        <rect x={xOf(computes.fromS)} y="11" width={Math.max(3, xOf(computes.untilS) - xOf(computes.fromS))} height="6" className="comp" />
+      )}
       <path d={`M${samples} 20.5v4H${acts}v-4`} className="brk" />
       <circle cx={samples} cy="17.5" r="2.3" className="samp" />
       <path d={`M${acts - 3} 13.5h6l-3 4.5z`} className="act" />
-    </svg>
+    </>
   );
 }

@@ -36,7 +36,7 @@ describe("the stairs of a slot", () => {
   const scale = ribbonScale(timing, 12, 612);
 
   it("rise by one hop a step up to the hop bound and stay there", () => {
-    const { treads, divisions } = stairOf(slot, 3, scale, 100, 60);
+    const { treads, divisions } = stairOf(slot, 3, scale, { base: 100, height: 60 });
     expect(treads.map(({ hop, top }) => [hop, top])).toEqual([
       [1, 80],
       [2, 60],
@@ -46,7 +46,7 @@ describe("the stairs of a slot", () => {
     expect(divisions.slice(3).every(({ top }) => top === 40)).toBe(true);
   });
   it("begin after the wake-up, on the scale of the round", () => {
-    const { path, wake, right } = stairOf(slot, 3, scale, 100, 60);
+    const { path, wake, right } = stairOf(slot, 3, scale, { base: 100, height: 60 });
     expect(wake.until).toBeCloseTo(12 + (slot.floodStartS / timing.periodS) * 600, 6);
     expect(right).toBeCloseTo(12 + (slot.endS / timing.periodS) * 600, 6);
     expect(path.startsWith(`M${Math.round(wake.until * 100) / 100} 100`)).toBe(true);
