@@ -3,7 +3,12 @@ import express, { type Express, type RequestHandler, type Router } from "express
 import type { Logger } from "pino";
 import type { Connection } from "./db/client.ts";
 import { activityRoutes } from "./features/activity/routes.ts";
+import { createLogReader } from "./features/logs/reader.ts";
+import { logRoutes } from "./features/logs/routes.ts";
+import { createLogService } from "./features/logs/service.ts";
 import { memberRoutes } from "./features/members/routes.ts";
+import { pictureRoutes } from "./features/pictures/routes.ts";
+import { createPictureService } from "./features/pictures/service.ts";
 import { revisionRoutes } from "./features/revisions/routes.ts";
 import { runRoutes } from "./features/runs/routes.ts";
 import { createRunService } from "./features/runs/service.ts";
@@ -44,11 +49,14 @@ export function createApp({ connection, log, sessionSecret, demo, security, clie
   const simulator = createSimulator();
   const runs = createRunService(db, simulator);
   const scenarios = createScenarioService(db, runs, log);
+  const reader = createLogReader();
   const session = sessions(connection, sessionSecret, log);
   const teamRoutes = [
     ...scenarioRoutes(db, scenarios),
     ...revisionRoutes(db, scenarios),
     ...runRoutes(db, runs, scenarios),
+    ...logRoutes(db, createLogService(db, reader)),
+    ...pictureRoutes(db, createPictureService(db)),
     ...memberRoutes(db),
     ...activityRoutes(db),
   ];
@@ -80,7 +88,7 @@ export function createApp({ connection, log, sessionSecret, demo, security, clie
     teamRoutes,
     warmUp: () => simulator.warmUp(),
     async close() {
-      await simulator.stop();
+      await Promise.all([simulator.stop(), reader.stop()]);
       await session.close();
     },
   };

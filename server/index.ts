@@ -9,6 +9,7 @@ import { isDatabaseDown } from "./db/failures.ts";
 import { migrateDatabase } from "./db/migrate.ts";
 import { seedDemo } from "./db/seed.ts";
 import { readEnv } from "./env.ts";
+import { refreshSummaries } from "./features/scenarios/refresh.ts";
 import { builtClient, builtPolicy, securityHeaders } from "./http/client.ts";
 import { sessionSecret } from "./http/session.ts";
 
@@ -50,6 +51,7 @@ async function main(): Promise<void> {
   const env = readEnv(process.env);
   const log = pino({ level: env.LOG_LEVEL }, pino.destination(2));
   await migrateDatabase(env.DATABASE_URL);
+  await refreshSummaries(env.DATABASE_URL, log);
   if (env.HOLDFAST_DEMO) await seedDemo(env.DATABASE_URL);
 
   const connection = connect(env.DATABASE_URL, log);

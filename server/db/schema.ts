@@ -24,8 +24,10 @@ import {
 } from "drizzle-orm/pg-core";
 import type { VerdictLine } from "#shared/api/common.ts";
 import type { Role } from "#shared/api/permissions.ts";
+import type { PictureType } from "#shared/api/pictures.ts";
 import type { PlantKind, RoundSummary } from "#shared/api/scenarios.ts";
 import type { ActivityKind } from "#shared/api/teams.ts";
+import type { ColumnMapping, LinkTrace, ReadReport } from "#shared/reception/types.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { Figures, LimitVerdict, RunEvent, RunResult } from "#shared/simulation/result.ts";
 
@@ -90,6 +92,8 @@ export const scenarios = pgTable(
     plantKind: text().notNull().$type<PlantKind>(),
     periodS: doublePrecision().notNull(),
     round: json().notNull().$type<RoundSummary>(),
+    /** SUMMARY_VERSION that made the columns from name to round; an older one is made anew at the next start. */
+    summaryVersion: integer().notNull().default(0),
     verdict: text().notNull().$type<VerdictLine["state"]>(),
     verdictWord: text().notNull(),
     verdictSentence: text().notNull(),
@@ -171,6 +175,127 @@ export const runSeries = pgTable("run_series", {
   /** gzip of the layout in shared/api/series.ts. */
   bytes: bytea().notNull(),
 });
+
+/** Of a reception log only the name ever changes: a trigger refuses the rest. */
+export const receptionLogs = pgTable(
+  "reception_logs",
+  {
+    id: id(),
+    teamId: uuid()
+      .notNull()
+      .references(() => teams.id, { onDelete: "cascade" }),
+    authorId: uuid()
+      .notNull()
+      .references(() => users.id),
+    name: text().notNull(),
+    sortKey: text().notNull(),
+    searchText: text().notNull(),
+    fileName: text().notNull(),
+    /** Of the original file, unpacked. */
+    bytes: bigint({ mode: "number" }).notNull(),
+    sha256: text().notNull(),
+    mapping: json().notNull().$type<ColumnMapping>(),
+    /** SHA-256 over the file's and the mapping: the same file read in the same way is kept once. */
+    readingKey: text().notNull(),
+    rows: integer().notNull(),
+    rowsUsed: integer().notNull(),
+    troubles: integer().notNull(),
+    links: integer().notNull(),
+    packets: bigint({ mode: "number" }).notNull(),
+    lost: bigint({ mode: "number" }).notNull(),
+    uploadedAt: now(),
+  },
+  (table) => [
+    unique("reception_logs_once").on(table.teamId, table.readingKey),
+    index("reception_logs_team_uploaded").on(table.teamId, table.uploadedAt),
+  ],
+);
+
+/** What was read from a log, apart from it, so that lists never touch it. */
+export const logReadings = pgTable("log_readings", {
+  logId: uuid()
+    .primaryKey()
+    .references(() => receptionLogs.id, { onDelete: "cascade" }),
+  report: json().notNull().$type<ReadReport>(),
+  linkTraces: json().notNull().$type<LinkTrace[]>(),
+});
+
+/** The original file, gzip, in pieces that can be written and sent one by one. */
+export const logPieces = pgTable(
+  "log_pieces",
+  {
+    logId: uuid()
+      .notNull()
+      .references(() => receptionLogs.id, { onDelete: "cascade" }),
+    number: integer().notNull(),
+    bytes: bytea().notNull(),
+  },
+  (table) => [primaryKey({ columns: [table.logId, table.number] })],
+);
+
+/** Written once. */
+export const floorPictures = pgTable(
+  "floor_pictures",
+  {
+    id: id(),
+    teamId: uuid()
+      .notNull()
+      .references(() => teams.id, { onDelete: "cascade" }),
+    authorId: uuid()
+      .notNull()
+      .references(() => users.id),
+    name: text().notNull(),
+    type: text().notNull().$type<PictureType>(),
+    widthPx: integer().notNull(),
+    heightPx: integer().notNull(),
+    size: integer().notNull(),
+    sha256: text().notNull(),
+    bytes: bytea().notNull(),
+    uploadedAt: now(),
+  },
+  (table) => [unique("floor_pictures_once").on(table.teamId, table.sha256)],
+);
+
+/**
+ * Which revision names which reception log, or shows which picture: a trigger reads it from each revision that is saved, and
+ * the foreign key keeps what is named. It is checked when a transaction ends, so that a whole team can go at once.
+ */
+export const revisionLogs = pgTable(
+  "revision_logs",
+  {
+    scenarioId: uuid().notNull(),
+    revision: integer().notNull(),
+    logId: uuid().notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.scenarioId, table.revision] }),
+    index("revision_logs_log").on(table.logId),
+    foreignKey({ name: "revision_logs_keep_log", columns: [table.logId], foreignColumns: [receptionLogs.id] }),
+    foreignKey({
+      name: "revision_logs_of_revision",
+      columns: [table.scenarioId, table.revision],
+      foreignColumns: [revisions.scenarioId, revisions.number],
+    }).onDelete("cascade"),
+  ],
+);
+export const revisionPictures = pgTable(
+  "revision_pictures",
+  {
+    scenarioId: uuid().notNull(),
+    revision: integer().notNull(),
+    pictureId: uuid().notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.scenarioId, table.revision] }),
+    index("revision_pictures_picture").on(table.pictureId),
+    foreignKey({ name: "revision_pictures_keep_picture", columns: [table.pictureId], foreignColumns: [floorPictures.id] }),
+    foreignKey({
+      name: "revision_pictures_of_revision",
+      columns: [table.scenarioId, table.revision],
+      foreignColumns: [revisions.scenarioId, revisions.number],
+    }).onDelete("cascade"),
+  ],
+);
 
 /** Who did what when. Outlives what it was done to. */
 export const activity = pgTable(

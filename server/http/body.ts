@@ -3,19 +3,13 @@ import express, { type ErrorRequestHandler, type RequestHandler } from "express"
 import { MAX_SCENARIO_BYTES } from "#shared/api/errors.ts";
 import { parseJson } from "#shared/api/json.ts";
 import { HttpError } from "./errors.ts";
+import { tooLarge } from "./file.ts";
 
 /** Read this far, so that somebody who sends a file of 10 MB gets an answer instead of a broken connection. */
 const READ_BYTES = 12_000_000;
 /** Note, field names and the like around a scenario. */
 const ENVELOPE_BYTES = 10_000;
 const SMALL_BYTES = 100_000;
-
-const inMb = (bytes: number) => `${(bytes / 1e6).toFixed(bytes < 1e6 ? 2 : 1)} MB`;
-
-function tooLarge(bytes: number | null, permittedBytes: number): HttpError {
-  const size = bytes === null ? "This is" : `This is ${inMb(bytes)},`;
-  return new HttpError("too-large", `${size} more than is taken: at most ${inMb(permittedBytes)}.`, { size: { bytes, permittedBytes } });
-}
 
 const decode: (permittedBytes: number, shownBytes: number) => RequestHandler = (permittedBytes, shownBytes) => (request, _response, next) => {
   if (!Buffer.isBuffer(request.body)) {

@@ -42,6 +42,9 @@ export class HttpError extends Error {
   }
 }
 
+/** Whoever sent a file has gone, or was too slow: there is nobody to answer. */
+export class BrokenOff extends Error {}
+
 /** The same for what is not there, what belongs to another team and what never was an id. */
 export const notFound = () => new HttpError("not-found", "There is nothing at this address, or it is not your team's.");
 
@@ -70,6 +73,8 @@ function asHttpError(error: unknown, log: Logger): HttpError {
 
 export function errorHandler(log: Logger): ErrorRequestHandler {
   return (error, _request, response, _next) => {
+    // There is nobody left to tell.
+    if (error instanceof BrokenOff) return void response.destroy();
     const known = asHttpError(error, log);
     // A session that cannot be saved is reported after the answer has begun; there is nobody left to tell.
     if (response.headersSent) return;

@@ -7,6 +7,8 @@ import type { Database } from "../db/client.ts";
 import { memberships, teams, users } from "../db/schema.ts";
 import { scenarioBody, smallBody } from "./body.ts";
 import { HttpError, notFound } from "./errors.ts";
+import { type SentFile, sentFile, takeIn } from "./file.ts";
+import { sendGzipped, sendJsonText } from "./send.ts";
 
 /** Who asks, in which team, with which roles there. */
 export interface Member {
@@ -20,16 +22,27 @@ interface Call {
   params: Record<string, string>;
   query: unknown;
   body: unknown;
+  /** Of a route whose body is a file. */
+  file: SentFile;
 }
 
-type Answer = { status?: 200 | 201; body: unknown } | { bytes: Buffer; headers: Record<string, string> };
+type Headers = Record<string, string>;
+type Answer =
+  | { status?: 200 | 201; body: unknown }
+  /** JSON that is text already. */
+  | { status?: 200 | 201; json: string }
+  | { bytes: Buffer; headers: Headers }
+  /** Packed by gzip, piece by piece; unpacked on the way to somebody who does not take gzip. */
+  | { gzipped: AsyncIterable<Buffer>; headers: Headers };
 
 export interface TeamRoute {
   method: "get" | "post" | "patch" | "delete";
   /** Below /api/teams/:teamId. */
   path: string;
   action: Action;
-  body?: "scenario" | "small";
+  body?: "scenario" | "small" | "file";
+  /** Asked before anything of the body is read, and after the role. */
+  before?: (member: Member) => void;
   handle(call: Call): Promise<Answer>;
 }
 
@@ -71,10 +84,14 @@ function allow(member: Member, action: Action): void {
   throw new HttpError("not-permitted", `You may not ${actionText(action)} in ${member.team.name}. Ask ${listed(rolesThatMay(action))} of the team.`);
 }
 
-function send(response: Response, answer: Answer): void {
-  if ("bytes" in answer) response.set(answer.headers).send(answer.bytes);
+async function send(request: Request, response: Response, answer: Answer): Promise<void> {
+  if ("gzipped" in answer) await sendGzipped(request, response.set(answer.headers), answer.gzipped);
+  else if ("bytes" in answer) response.set(answer.headers).send(answer.bytes);
+  else if ("json" in answer) sendJsonText(response.status(answer.status ?? 200), answer.json);
   else response.status(answer.status ?? 200).json(answer.body);
 }
+
+const BODIES = { scenario: scenarioBody, small: smallBody, file: [takeIn] };
 
 export function teamRouter(db: Database, routes: readonly TeamRoute[]): Router {
   const members = new WeakMap<Request, Member>();
@@ -91,16 +108,18 @@ export function teamRouter(db: Database, routes: readonly TeamRoute[]): Router {
   };
   const memberOf = (request: Request): Member => members.get(request) as Member;
 
-  for (const { method, path, action, body, handle } of routes) {
+  for (const { method, path, action, body = "small", before, handle } of routes) {
     const permitted: RequestHandler = (request, _response, next) => {
       allow(memberOf(request), action);
+      before?.(memberOf(request));
       next();
     };
     const answer: RequestHandler = async (request, response) => {
       const { params, query, body: sent } = request;
-      send(response, await handle({ member: memberOf(request), params: params as Record<string, string>, query: { ...query }, body: sent }));
+      const call = { member: memberOf(request), params: params as Record<string, string>, query: { ...query }, body: sent, file: sentFile(request) };
+      await send(request, response, await handle(call));
     };
-    router[method](`/:teamId${path}`, enter, permitted, ...(body === "scenario" ? scenarioBody : smallBody), answer);
+    router[method](`/:teamId${path}`, enter, permitted, ...BODIES[body], answer);
   }
   for (const path of new Set(routes.map((route) => route.path))) {
     const methods = routes.filter((route) => route.path === path).map((route) => route.method.toUpperCase());

@@ -30,6 +30,10 @@ const figuresSchema = z.strictObject({
   saturatedShare: z.number(),
   silentReactions: z.int(),
   cost: z.number().nullable(),
+  /** Empty without a floor, and in runs that were kept before there were floors. */
+  nodes: z
+    .array(z.strictObject({ node: z.int(), name: z.string(), radioOnS: z.number(), chargeC: z.number(), batteryDays: z.number().nullable() }))
+    .default([]),
 }) satisfies z.ZodType<Figures>;
 
 export const runSummarySchema = z.strictObject({

@@ -1,6 +1,7 @@
 import { and, count, desc, eq, inArray } from "drizzle-orm";
 import type { VerdictLine } from "#shared/api/common.ts";
 import type { RevisionDetail, RevisionSummary } from "#shared/api/revisions.ts";
+import { parseScenario } from "#shared/scenario/parse.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { Queries } from "../../db/client.ts";
 import { revisions, runs, users } from "../../db/schema.ts";
@@ -82,6 +83,12 @@ export async function listRevisions(db: Queries, scenarioId: string, { page, pag
   return { items: rows.map((row) => asSummary(row, verdicts)), total, page, pageSize };
 }
 
+/** A revision stays as it was written; what later versions can say is filled in, as in an older file. */
+export function asOfToday(stored: Scenario): Scenario {
+  const parsed = parseScenario(stored);
+  return parsed.ok ? parsed.value : stored;
+}
+
 export async function findRevision(db: Queries, scenarioId: string, number: number): Promise<RevisionDetail | null> {
   const [row] = await db
     .select({ ...summaryColumns, scenario: revisions.scenario })
@@ -89,5 +96,5 @@ export async function findRevision(db: Queries, scenarioId: string, number: numb
     .innerJoin(users, eq(users.id, revisions.authorId))
     .where(and(eq(revisions.scenarioId, scenarioId), eq(revisions.number, number)));
   if (!row) return null;
-  return { ...asSummary(row, await latestVerdicts(db, scenarioId, [number])), scenario: row.scenario };
+  return { ...asSummary(row, await latestVerdicts(db, scenarioId, [number])), scenario: asOfToday(row.scenario) };
 }

@@ -1,8 +1,9 @@
 /** Has runs computed in a thread of their own, so that no run keeps any other request waiting. */
 import { once } from "node:events";
-import { Worker } from "node:worker_threads";
+import type { Worker } from "node:worker_threads";
 import type { Issue } from "#shared/scenario/issues.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
+import { startThread } from "../../threads/thread.ts";
 import type { RunRecord } from "./record.ts";
 
 export interface Asked {
@@ -36,7 +37,7 @@ export function createSimulator() {
 
   const start = (): Worker => {
     if (thread) return thread;
-    const started = new Worker(new URL("./start-thread.mjs", import.meta.url), { execArgv: [] });
+    const started = startThread(new URL("./run-thread.ts", import.meta.url));
     started.on("message", (answer: Answered) => {
       if (answer === "ready") return;
       const waiting = pending.get(answer.id);

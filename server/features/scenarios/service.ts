@@ -9,6 +9,7 @@ import { findDeletion, record } from "../activity/repository.ts";
 import { findRevision, insertRevision } from "../revisions/repository.ts";
 import { latestRun } from "../runs/repository.ts";
 import type { RunService } from "../runs/service.ts";
+import { requireOfTeam } from "../uses/repository.ts";
 import { asItem, deleteScenario, findScenario, insertScenario, lockScenario, namesOf, type ScenarioRow, updateScenario } from "./repository.ts";
 import { type Summary, summarise } from "./summary.ts";
 
@@ -27,11 +28,13 @@ const unrunColumns = ({ unrun }: Summary) => ({
 /** Revision 1 of a new scenario. */
 export async function insertNewScenario(
   transaction: Queries,
-  { user, team }: Pick<Member, "user" | "team">,
+  member: Pick<Member, "user" | "team">,
   scenario: Scenario,
   note: string,
   at = new Date(),
 ): Promise<ScenarioRow> {
+  const { user, team } = member;
+  await requireOfTeam(transaction, member, scenario);
   const summary = summarise(scenario);
   const row = await insertScenario(transaction, {
     ...summary.columns,
@@ -49,15 +52,16 @@ export async function insertNewScenario(
 /** The next revision; the row has to be locked. */
 export async function insertNextRevision(
   transaction: Queries,
-  { user }: Pick<Member, "user">,
+  member: Pick<Member, "user" | "team">,
   { id, latestRevision }: Pick<ScenarioRow, "id" | "latestRevision">,
   scenario: Scenario,
   note: string,
   at = new Date(),
 ): Promise<number> {
+  await requireOfTeam(transaction, member, scenario);
   const summary = summarise(scenario);
   const number = latestRevision + 1;
-  await insertRevision(transaction, { scenarioId: id, number, scenario, note, unrun: summary.unrun, authorId: user.id, savedAt: at });
+  await insertRevision(transaction, { scenarioId: id, number, scenario, note, unrun: summary.unrun, authorId: member.user.id, savedAt: at });
   await updateScenario(transaction, id, { ...summary.columns, ...unrunColumns(summary), latestRevision: number, changedAt: at });
   return number;
 }

@@ -7,6 +7,12 @@ import type { Issue } from "#shared/scenario/issues.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { searchText, sortKey } from "../../db/text.ts";
 
+/**
+ * Raised whenever the same scenario would give other columns: kept summaries of another version are made anew at the next
+ * start. 1: one loop. 2: any number of loops and messages.
+ */
+export const SUMMARY_VERSION = 2;
+
 function roundSummary(timing: RoundTiming): RoundSummary {
   const { ns: _ns, savings: _savings, issues: _issues, ...summary } = timing;
   return summary;
@@ -32,6 +38,7 @@ export function summarise(scenario: Scenario) {
       plantKind: kind,
       periodS: scenario.round.periodS,
       round: roundSummary(timing),
+      summaryVersion: SUMMARY_VERSION,
     },
     unrun: verdictWithoutRun(issues),
     runs: issues.length === 0,
