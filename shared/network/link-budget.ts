@@ -9,7 +9,7 @@ import type { Radio } from "#shared/scenario/round-schema.ts";
 import { channelBand, receiverBandwidthMHz, shareInBand } from "./channels.ts";
 import { distance, obstacleLossDb, placeAt, speedAt, type Way, wayOf } from "./geometry.ts";
 import { pathLoss } from "./path-loss.ts";
-import { Shadowing } from "./shadowing.ts";
+import { Shadowing, type ShadowPoints } from "./shadowing.ts";
 
 /** Path loss and Doppler are computed in the middle of the band; over its 80 MHz free space differs by 0.15 dB from that. */
 export const MID_BAND_MHZ = 2440;
@@ -32,6 +32,7 @@ export class LinkBudget {
   private readonly covered: Float64Array;
   private readonly moving: number[] = [];
   private readonly moved: Uint8Array;
+  private readonly shadowPoints: ShadowPoints[] = [];
   private readonly place = new Float64Array(3);
 
   /** `nodes`: in the order of rows and columns. */
@@ -54,6 +55,7 @@ export class LinkBudget {
     this.y = new Float64Array(n).fill(Number.NaN);
     this.covered = new Float64Array(n);
     this.moved = new Uint8Array(n);
+    for (let pair = (n * (n - 1)) / 2; pair > 0; pair--) this.shadowPoints.push({ point: Number.NaN, here: 0, next: 0 });
     this.ways.forEach((way, i) => {
       if (way.moves) this.moving.push(i);
     });
@@ -118,7 +120,8 @@ export class LinkBudget {
     return obstacleLossDb(this.floor.obstacles, this.x[i], this.y[i], this.x[j], this.y[j]);
   }
   shadowingDb(i: number, j: number): number {
-    return this.shadowing.lossDb(this.nodes[i].id, this.nodes[j].id, this.covered[i] + this.covered[j]);
+    const last = this.shadowPoints[i > j ? (i * (i - 1)) / 2 + j : (j * (j - 1)) / 2 + i];
+    return this.shadowing.lossDb(this.nodes[i].id, this.nodes[j].id, this.covered[i] + this.covered[j], last);
   }
 }
 

@@ -71,54 +71,71 @@ export type ReceptionCurve = (sinr: number) => number;
 
 /** Largest error of a tabulated curve; a test measures it. */
 export const CURVE_ERROR = 1e-5;
-const PER_DB = 256;
-const LOWEST_DB = -24;
-const HIGHEST_DB = 20;
+const POINTS = 4096;
 
-/** Levels at which curves are tabulated. */
-const LEVELS = (HIGHEST_DB - LOWEST_DB) * PER_DB + 1;
-const levelRatio = (i: number): number => fromDb(LOWEST_DB + i / PER_DB);
+/**
+ * SINR of point i: middle i / (POINTS - i), so that points lie dense where reception changes (1/240 dB apart in the middle),
+ * reach to 0 and far out, and the place of a SINR costs one division.
+ */
+const sinrOf = (i: number, middle: number): number => (middle * i) / (POINTS - i);
 
-/** Straight lines over dB between values at every 1/256 dB from -24 to 20 dB; 0 and 1 where the values have come close to them. */
-function tabulated(values: Float64Array): ReceptionCurve {
+/** Straight lines between the values at the points; 0 and 1 where the values have come close to them. */
+function tabulated(values: Float64Array, middle: number): ReceptionCurve {
   const done = CURVE_ERROR / 100;
   let first = 0;
-  while (first < LEVELS - 1 && values[first + 1] < done) first++;
-  let last = LEVELS - 1;
-  while (last > first && values[last - 1] > 1 - done) last--;
-  const zeroBelow = levelRatio(first);
-  const oneAbove = levelRatio(last);
+  while (first < POINTS - 2 && values[first + 1] < done) first++;
+  let last = POINTS - 1;
+  while (last > first + 1 && values[last - 1] > 1 - done) last--;
+  const zeroBelow = sinrOf(first, middle);
+  const oneAbove = sinrOf(last, middle);
   return (sinr) => {
     if (sinr >= oneAbove) return 1;
     if (sinr <= zeroBelow) return 0;
-    const place = (DB_PER_LN * ln(sinr) - LOWEST_DB) * PER_DB;
-    const i = Math.min(LEVELS - 2, Math.floor(place));
+    const place = (POINTS * sinr) / (sinr + middle);
+    const i = Math.min(last - 1, Math.floor(place));
     return values[i] + (place - i) * (values[i + 1] - values[i]);
   };
+}
+
+/** SINR at which one bit in a thousand is wrong: about where packets begin to be received. */
+function middleOf(ber: (sinr: number) => number): number {
+  let [low, high] = [0, 1000];
+  for (let i = 0; i < 60; i++) {
+    const middle = (low + high) / 2;
+    if (ber(middle) > 1e-3) low = middle;
+    else high = middle;
+  }
+  return high;
 }
 
 /** Quick curves, one per length of packet; bit error rates, which are slow to compute, are shared by all lengths. */
 export class ReceptionCurves {
   private readonly curves = new Map<number, ReceptionCurve>();
-  /** ln(1 - BER) at each level; null for a table of the user's. */
-  private readonly lnRight: Float64Array | null;
+  private readonly middle: number = 1;
+  /** ln(1 - BER) at each point; null for a table of the user's. */
+  private readonly lnRight: Float64Array | null = null;
 
   constructor(
     private readonly phy: Phy,
     private readonly reception: Reception,
   ) {
-    this.lnRight =
-      reception.type === "table" ? null : Float64Array.from({ length: LEVELS }, (_, i) => ln(1 - bitErrorRate(phy, reception, levelRatio(i))));
+    if (reception.type === "table") return;
+    const ber = (sinr: number) => bitErrorRate(phy, reception, sinr);
+    this.middle = middleOf(ber);
+    this.lnRight = Float64Array.from({ length: POINTS }, (_, i) => ln(1 - ber(sinrOf(i, this.middle))));
   }
 
   /** `bytes`: header and payload. */
   of(bytes: number): ReceptionCurve {
-    const { phy, reception, lnRight } = this;
+    const { phy, reception, lnRight, middle } = this;
     if (reception.type === "table") return (sinr) => tableRatio(reception.rows, sinr);
     let curve = this.curves.get(bytes);
     if (!curve) {
       const bits = 8 * countedOctets(phy, bytes);
-      curve = tabulated(Float64Array.from(lnRight ?? [], (right) => exp(bits * right)));
+      curve = tabulated(
+        Float64Array.from(lnRight ?? [], (right) => exp(bits * right)),
+        middle,
+      );
       this.curves.set(bytes, curve);
     }
     return curve;

@@ -15,6 +15,13 @@ const TERMS = 6 * POINTS;
 /** Node numbers are below 1024 (floor-schema). */
 export const pairCode = (a: number, b: number): number => (a < b ? a * 1024 + b : b * 1024 + a);
 
+/** Values at a point of the way and at the next. */
+export interface ShadowPoints {
+  point: number;
+  here: number;
+  next: number;
+}
+
 export class Shadowing {
   private readonly key: RandomKey;
   private readonly rho = exp(-1 / POINTS);
@@ -35,18 +42,24 @@ export class Shadowing {
     this.scale = settings.sigmaDb / Math.sqrt(power);
   }
 
-  /** Loss in dB, positive or negative, of the pair of node numbers whose nodes have moved `coveredM` together since t = 0. */
-  lossDb(a: number, b: number, coveredM: number): number {
+  /**
+   * Loss in dB, positive or negative, of the pair of node numbers whose nodes have moved `coveredM` together since t = 0.
+   * `last` keeps the two points around it for the next call: at first { point: NaN, here: 0, next: 0 }.
+   */
+  lossDb(a: number, b: number, coveredM: number, last: ShadowPoints): number {
     if (this.scale === 0) return 0;
     const pair = pairCode(a, b);
     const place = coveredM / this.spacingM;
     const point = Math.floor(place);
     const part = place - point;
-    const before = this.point(pair, point);
-    if (part === 0) return before;
+    if (last.point !== point) {
+      last.here = this.point(pair, point);
+      last.next = this.point(pair, point + 1);
+      last.point = point;
+    }
     // Between two points of correlation rho a straight line would lose variance: divide by what is left of it.
     const rest = 1 - part;
-    return (rest * before + part * this.point(pair, point + 1)) / Math.sqrt(rest * rest + part * part + 2 * rest * part * this.rho);
+    return (rest * last.here + part * last.next) / Math.sqrt(rest * rest + part * part + 2 * rest * part * this.rho);
   }
 
   private point(pair: number, index: number): number {
