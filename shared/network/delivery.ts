@@ -7,6 +7,8 @@ import { type Uniform, uniformStream } from "#shared/math/random.ts";
 import type { LossProcess, Message, Scenario } from "#shared/scenario/schema.ts";
 import { MESSAGES } from "#shared/scenario/schema.ts";
 import { type LoopDemand, loopDemands } from "./demand.ts";
+import { NO_SLOT } from "./flood.ts";
+import { drawFloods, type FloodRecord } from "./floods.ts";
 import { Outages } from "./outages.ts";
 import type { RoundTiming } from "./round.ts";
 import { toNs } from "./schedule.ts";
@@ -15,6 +17,8 @@ export interface Deliveries {
   /** 1 = delivered; one entry per round of the network, whether the loop's message has a slot in it or not. */
   measurement: Uint8Array;
   command: Uint8Array;
+  /** The floods, when they decided. */
+  floods: FloodRecord | null;
 }
 
 type GilbertElliott = Extract<LossProcess, { type: "gilbert-elliott-shared" }>["channel"];
@@ -71,6 +75,7 @@ export function drawDeliveries(scenario: Scenario, timing: RoundTiming, rounds: 
   const result: Deliveries = {
     measurement: new Uint8Array(rounds).fill(1),
     command: new Uint8Array(rounds).fill(1),
+    floods: process.type === "flood" && scenario.floor ? drawFloods(scenario, timing, rounds, seed) : null,
   };
   const sharedBad = process.type === "gilbert-elliott-shared" ? channelStates(process.channel, uniformStream(seed, "channel/shared"), rounds) : null;
   const outages = new Outages(scenario, timing);
@@ -89,9 +94,11 @@ export function drawDeliveries(scenario: Scenario, timing: RoundTiming, rounds: 
       const copy = slot.copy > 1 ? `/${slot.copy}` : "";
       const uniform = uniformStream(seed, streams === "shared" ? "loss/shared" : `loss/${loop.id}/${message}${copy}`);
       const forced = overlays(message, ns, timing.ns.period, rounds, scenario.losses.outages, toNs(loop.start.networkJoinsAtS));
+      const target = message === "measurement" ? demand.nodes?.controller : demand.nodes?.actuator;
+      const column = result.floods?.nodes.indexOf(target ?? -1) ?? -1;
       for (let k = 0; k < rounds; k++) {
         const u = uniform();
-        const arrives = outages.travels(slot, ns, k);
+        const arrives = result.floods ? received(result.floods, k, index, column) : outages.travels(slot, ns, k);
         if (arrives && u >= either(lossOf(k), forced[k])) delivered[k] = 1;
       }
     }
@@ -108,6 +115,10 @@ function withoutSlot(message: Message, delivered: Uint8Array, demand: LoopDemand
   const node = message === "measurement" ? demand.nodes.sensor : demand.nodes.actuator;
   for (let k = 0; k < delivered.length; k++) if (outages.down(node, k * timing.ns.period + at, k * timing.ns.period + at)) delivered[k] = 0;
 }
+
+/** Did the flood of this slot reach the node of that column? A round without the slot has nothing to lose. */
+const received = ({ firstStep, slots, nodes }: FloodRecord, k: number, slot: number, column: number): boolean =>
+  firstStep[(k * slots + slot) * nodes.length + column] <= NO_SLOT;
 
 /** Probability that at least one of two independent causes loses a message. */
 const either = (p: number, q: number): number => p + (1 - p) * q;

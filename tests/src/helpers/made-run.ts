@@ -112,6 +112,7 @@ export function madeRun(making: Making = {}): MadeRun {
         ],
         saturatedShare: 0,
         silentReactions: 0,
+        nodes: [],
         cost: null,
       },
       limits: scenario.limits.map((_, index) => ({
