@@ -1,5 +1,6 @@
 /** From a finished simulation to the result that people and programs read. */
 import { profileAt } from "#shared/control/profile.ts";
+import { nodeFigures } from "#shared/network/energy.ts";
 import { toNs } from "#shared/network/schedule.ts";
 import type { Output } from "#shared/plants/plant.ts";
 import { messageFigures, signalFigures } from "./figures.ts";
@@ -124,7 +125,7 @@ export function assemble(raw: Raw): RunResult {
         .map((message) => messageFigures(message, delivered[message].subarray(message === "command" ? commandDelay : 0, sampled))),
       saturatedShare: raw.endedNs > 0 ? raw.saturatedNs / raw.endedNs : 0,
       silentReactions: raw.silentReactions,
-      nodes: [],
+      nodes: deliveries.floods ? nodeFigures(scenario, timing, deliveries.floods) : [],
       cost: loop.controller.law.type === "lqr" && sampled > 0 ? raw.costSum / sampled : null,
     },
     limits,

@@ -98,14 +98,14 @@ export interface MessageFigures {
   lost: number;
   longestLoss: number;
 }
-/** What a node of the floor spent over the run. */
+/** What a node of the floor spent over all rounds of the planned run: radios go on when a rod has fallen. */
 export interface NodeFigures {
   node: number;
   name: string;
   radioOnS: number;
   /** Coulomb. */
   chargeC: number;
-  /** At this rate; null: it draws nothing. */
+  /** From a full battery at this rate; null: it draws nothing. */
   batteryDays: number | null;
 }
 export interface Figures {
