@@ -1,7 +1,9 @@
 import { expose } from "comlink";
+import { prepareFloor } from "#shared/network/prepare.ts";
 import { digestRun } from "#shared/simulation/digest.ts";
 import { prepareRun } from "#shared/simulation/simulate.ts";
-import type { EngineProgress, EngineWorker, WorkerOutcome } from "./contract.ts";
+import type { EngineProgress, EngineWorker, TaskKind, TaskOutcome, TaskProgress, WorkerOutcome } from "./contract.ts";
+import { floodsJob, type Job, linksJob, type Prepared } from "./floor-tasks.ts";
 
 /** Rounds between two looks at the clock, and how long a stretch may last before messages are heard again. */
 const ROUNDS = 50;
@@ -58,6 +60,26 @@ async function warmUp(mine: number, scenario: unknown, seed: number | null): Pro
   }
 }
 
+const newestTask = new Map<TaskKind, number>();
+
+/** Works a job off in stretches; a newer job of its kind, or cancelTask, ends it. */
+async function task<T>(kind: TaskKind, scenario: unknown, start: (prepared: Prepared) => Job<T>, onProgress?: TaskProgress): Promise<TaskOutcome<T>> {
+  const mine = (newestTask.get(kind) ?? 0) + 1;
+  newestTask.set(kind, mine);
+  const prepared = prepareFloor(scenario);
+  if (!prepared.ok) return prepared;
+  const job = start(prepared);
+  for (let since = performance.now(); ; ) {
+    const { done, value } = job.next();
+    if (done) return { ok: true, value };
+    if (performance.now() - since < STRETCH_MS) continue;
+    onProgress?.(value);
+    await turn();
+    if (newestTask.get(kind) !== mine) return { ok: false, cancelled: true };
+    since = performance.now();
+  }
+}
+
 const engine: EngineWorker = {
   async run(scenario, seed, onProgress): Promise<WorkerOutcome> {
     const mine = ++newest;
@@ -68,6 +90,11 @@ const engine: EngineWorker = {
   cancel() {
     newest++;
   },
+  cancelTask(kind) {
+    newestTask.set(kind, (newestTask.get(kind) ?? 0) + 1);
+  },
+  floods: (scenario, seed, onProgress) => task("floods", scenario, (prepared) => floodsJob(prepared, seed), onProgress),
+  links: (scenario, atS) => task("links", scenario, (prepared) => linksJob(prepared, atS)),
   async digest(scenario, seed) {
     const outcome = await inStretches(scenario, seed, () => true);
     return outcome.ok ? digestRun(outcome.result) : null;

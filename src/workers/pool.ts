@@ -1,11 +1,12 @@
 /** The page's side of the engine worker. A call never hangs: what a stopped worker leaves open is settled as cancelled. */
 import { proxy, type Remote, releaseProxy, wrap } from "comlink";
-import type { EngineProgress, EngineWorker, WorkerOutcome } from "./contract.ts";
+import type { EngineProgress, EngineWorker, FloorTasks, TaskKind, TaskOutcome, TaskProgress, WorkerOutcome } from "./contract.ts";
 
-export interface EngineClient {
+export interface EngineClient extends FloorTasks {
   /** Simulates; a newer call cancels an older one. Rejects only when the worker itself cannot start or broke. */
   run(scenario: unknown, seed: number | null, onProgress?: (progress: EngineProgress) => void): Promise<WorkerOutcome>;
   cancel(): void;
+  cancelTask(kind: TaskKind): void;
   digest(scenario: unknown, seed: number | null): Promise<string | null>;
   /** Stops the worker for good. */
   dispose(): void;
@@ -50,7 +51,13 @@ export function createEngine(): EngineClient {
     });
   }
 
+  const task = <T>(call: Promise<unknown>) => guarded<TaskOutcome<T>>(call as Promise<TaskOutcome<T>>, { ok: false, cancelled: true });
+  const telling = (onProgress?: TaskProgress) => onProgress && proxy(onProgress);
+
   return {
+    floods: (scenario, seed, onProgress) => task(remote.floods(scenario, seed, telling(onProgress))),
+    links: (scenario, atS) => task(remote.links(scenario, atS)),
+    cancelTask: (kind) => void remote.cancelTask(kind),
     run: (scenario, seed, onProgress) =>
       guarded<WorkerOutcome>(remote.run(scenario, seed, onProgress && proxy(onProgress)) as Promise<WorkerOutcome>, { ok: false, cancelled: true }),
     cancel: () => void remote.cancel(),
