@@ -23,7 +23,8 @@ function withValue(at: unknown, [key, ...rest]: (string | number)[], value: unkn
   return { ...object, [key]: withValue(object[key], rest, value) };
 }
 
-const withEdits = (scenario: Scenario, edits: readonly Edit[]): Scenario =>
+/** The scenario with the edits of a saving or of advice made. */
+export const withEdits = (scenario: Scenario, edits: readonly Edit[]): Scenario =>
   edits.reduce((changed, { path, value }) => withValue(changed, path, value) as Scenario, scenario);
 
 /** endNs: where the slots end now; longer: the period that fits, and what it would add. Largest saving first. */
