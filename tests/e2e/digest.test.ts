@@ -1,10 +1,15 @@
 /** The same run is the same, bit for bit, in Chromium's page, in its worker and in Node. */
-import { mkdtempSync, rmSync } from "node:fs";
+import { mkdtempSync, readFileSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
+import { sha256 } from "@noble/hashes/sha2.js";
+import { bytesToHex } from "@noble/hashes/utils.js";
 import { build, type PreviewServer, preview } from "vite";
 import { afterAll, beforeAll } from "vitest";
-import type { ScenarioInput } from "#shared/scenario/schema.ts";
+import { drawFloods } from "#shared/network/floods.ts";
+import { roundTiming } from "#shared/network/round.ts";
+import { roundsOf } from "#shared/scenario/rounds.ts";
+import { type ScenarioInput, scenarioSchema } from "#shared/scenario/schema.ts";
 import { TEMPLATES } from "#shared/scenario/templates.ts";
 import { digestRun } from "#shared/simulation/digest.ts";
 import { simulate } from "#shared/simulation/simulate.ts";
@@ -21,6 +26,12 @@ const RUNS = TEMPLATES.flatMap(({ key, scenario }) =>
     return { name: `${key}, seed ${seed}${losses === inBursts ? ", bursts" : ""}`, seed, scenario: { ...scenario, losses } };
   }),
 );
+
+/** Floods decide: shadowing, fading, interference, hopping and a moving node; and a matrix of reception ratios. */
+const FLOODED = ["balancer-rig-1-floor.json", "film-line-2-shared-round.json"].map((file) => ({
+  name: file,
+  scenario: scenarioSchema.parse(JSON.parse(readFileSync(join(ROOT, "examples", file), "utf8"))),
+}));
 
 let folder: string;
 let server: PreviewServer;
@@ -50,5 +61,22 @@ test("ten runs give the same digests in the page, in the worker and in Node", as
     const inPage = await page.evaluate(([scenario, seed]) => window.digestInPage(scenario, seed), [scenario, seed] as const);
     const inWorker = await page.evaluate(([scenario, seed]) => window.digestInWorker(scenario, seed), [scenario, seed] as const);
     expect({ name, inPage, inWorker }).toEqual({ name, inPage: inNode, inWorker: inNode });
+  }
+});
+
+test("floods come out the same in the worker and in Node, node by node and step by step", async ({ holdfast }) => {
+  const { page } = await holdfast.stranger();
+  await page.goto("/");
+  for (const { name, scenario } of FLOODED) {
+    for (const seed of [1, 2]) {
+      const outcome = simulate(scenario, seed);
+      if (!outcome.ok) throw new Error(`${name}: ${outcome.issues[0].message}`);
+      const { firstStep } = drawFloods(scenario, roundTiming(scenario), roundsOf(scenario), seed);
+      const inWorker = await page.evaluate(
+        async ([scenario, seed]) => [await window.digestInWorker(scenario, seed), await window.floodsInWorker(scenario, seed)],
+        [scenario, seed] as const,
+      );
+      expect({ name, seed, inWorker }).toEqual({ name, seed, inWorker: [digestRun(outcome.result), bytesToHex(sha256(firstStep))] });
+    }
   }
 });
