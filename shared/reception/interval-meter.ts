@@ -1,4 +1,7 @@
-/** The median time from packet to packet in bounded memory: times are counted in bins 0.1 % wide, and the median bin's mean is the answer. */
+/**
+ * The usual time from packet to packet in bounded memory: times are counted in bins 0.1 % wide; the answer is the mean of what
+ * lies within half of the median, so that jitter averages out while pauses and doubled packets stay outside.
+ */
 import { ln } from "#shared/math/elementary.ts";
 
 const BINS_PER_E = 1000;
@@ -21,7 +24,7 @@ export class IntervalMeter {
     } else this.bins.set(at, { count: 1, sum: seconds });
     this.count++;
     if (this.count >= this.nextAnswer) {
-      this.answer = this.median();
+      this.answer = this.usual();
       this.nextAnswer *= 4;
     }
   }
@@ -31,14 +34,24 @@ export class IntervalMeter {
     return this.answer;
   }
 
-  median(): number | null {
+  usual(): number | null {
     if (this.count === 0) return null;
     const sorted = [...this.bins].sort((a, b) => a[0] - b[0]);
     let below = 0;
+    let median = 0;
     for (const [, { count, sum }] of sorted) {
       below += count;
-      if (2 * below >= this.count) return sum / count;
+      median = sum / count;
+      if (2 * below >= this.count) break;
     }
-    return null;
+    let count = 0;
+    let sum = 0;
+    for (const [, bin] of sorted) {
+      const mean = bin.sum / bin.count;
+      if (mean < 0.5 * median || mean > 1.5 * median) continue;
+      count += bin.count;
+      sum += bin.sum;
+    }
+    return sum / count;
   }
 }

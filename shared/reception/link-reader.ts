@@ -7,6 +7,7 @@ import { IntervalMeter } from "./interval-meter.ts";
 import { type Fate, LOST, RECEIVED, ReceivedWindow, UNSEEN, WINDOW } from "./received-window.ts";
 import { RssiMeter } from "./rssi-meter.ts";
 import type { LinkTrace, TroubleKind } from "./types.ts";
+import { counted, durationText } from "./words.ts";
 
 export interface Packet {
   number: number;
@@ -213,17 +214,17 @@ export class LinkReader {
       const off = elapsed - span * interval;
       const where = span === 1 ? "from one packet to the next" : `over ${span} packets`;
       if (elapsed < 0 && off < -JUMP_BACK * interval) {
-        this.trouble("clock-jump", packet, packet.timeText, () => `The clock goes back by ${seconds(-elapsed)} ${where}; the numbers go on.`);
+        this.trouble("clock-jump", packet, packet.timeText, () => `The clock goes back by ${durationText(-elapsed)} ${where}; the numbers go on.`);
         return;
       }
       if (off > JUMP_AHEAD * interval + 0.5 * span * interval) {
         if (this.options.numbered) {
           this.trouble("clock-jump", packet, packet.timeText, () => {
-            return `The clock goes ahead by ${seconds(elapsed)} ${where}, where ${seconds(span * interval)} is usual: it was set, or the sender paused.`;
+            return `The clock goes ahead by ${durationText(elapsed)} ${where}, where ${durationText(span * interval)} is usual: it was set, or the sender paused.`;
           });
         } else {
           this.trouble("gap", packet, packet.timeText, () => {
-            return `No row for ${seconds(elapsed)}, where one comes each ${seconds(interval)}; without packet numbers it is not known what was lost.`;
+            return `No row for ${durationText(elapsed)}, where one comes each ${durationText(interval)}; without packet numbers it is not known what was lost.`;
           });
         }
         return;
@@ -248,8 +249,8 @@ export class LinkReader {
     if (missing >= GAP_PACKETS) {
       const elapsed = packet.timeS - this.timeS;
       this.trouble("gap", packet, packet.text, () => {
-        const over = elapsed > 0 ? `, ${seconds(elapsed)} long` : "";
-        return `${missing} numbers are missing between ${this.lastRaw} and ${packet.number}${over}; they count as lost.`;
+        const over = elapsed > 0 ? `, ${durationText(elapsed)} long` : "";
+        return `${counted(missing, "number is", "numbers are")} missing between ${this.lastRaw} and ${packet.number}${over}; they count as lost.`;
       });
     }
     if (missing > 0) this.countMissing(packet, missing);
@@ -279,7 +280,7 @@ export class LinkReader {
     const before = this.lastRaw;
     const elapsed = packet.timeS - this.timeS;
     this.trouble("reset", packet, packet.text, () => {
-      const after = elapsed > 0 ? ` after ${seconds(elapsed)}` : "";
+      const after = elapsed > 0 ? ` after ${durationText(elapsed)}` : "";
       return `The number goes from ${before} to ${packet.number}${after} and counts on from there: a restart. What was sent between is not known and not counted.`;
     });
     this.restarted = true;
@@ -375,7 +376,7 @@ export class LinkReader {
       lost,
       lostBefore: 0,
       lostAfter: 0,
-      intervalS: this.interval.median() ?? this.options.intervalS,
+      intervalS: this.interval.usual() ?? this.options.intervalS,
       firstTimeS: known(this.firstTimeS),
       lastTimeS: known(this.timeS),
       hours: this.hours,
@@ -386,11 +387,3 @@ export class LinkReader {
 
 const fate = (packet: Packet): Fate => (packet.received ? RECEIVED : LOST);
 const known = (value: number): number | null => (Number.isNaN(value) ? null : value);
-
-/** A duration for a message: at most four digits. */
-export function seconds(value: number): string {
-  if (value < 1e-3) return `${Number((value * 1e6).toPrecision(4))} µs`;
-  if (value < 1) return `${Number((value * 1e3).toPrecision(4))} ms`;
-  if (value < 7200) return `${Number(value.toPrecision(4))} s`;
-  return value < 172_800 ? `${Number((value / 3600).toPrecision(4))} h` : `${Number((value / 86_400).toPrecision(4))} days`;
-}

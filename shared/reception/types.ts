@@ -52,7 +52,7 @@ export const columnMappingSchema = z
     /** What a 1, true or yes of that column says: received, or (a column "lost") lost. */
     receivedMarks: z.enum(["received", "lost"]).default("received"),
     rssi: columnSchema.nullable().default(null),
-    /** Time from packet to packet; null: the median of the time column. */
+    /** Time from packet to packet; null: the usual one of the time column. */
     periodS: quantity("packet interval", "s", 1e-6, 86_400).nullable().default(null),
   })
   .superRefine((mapping, context) => {
@@ -97,7 +97,7 @@ export const linkTraceSchema = z.strictObject({
   /** Rounds counted as lost before its first and after its last packet, because other links saw them (kind "round"). */
   lostBefore: z.int().min(0),
   lostAfter: z.int().min(0),
-  /** Median time from one packet to the next; the mapping's periodS where there is no time column; else null. */
+  /** Usual time from one packet to the next; the mapping's periodS where there is no time column; else null. */
   intervalS: z.number().positive().nullable(),
   /** First and last time in the file, seconds of its own clock (UTC since 1970 for ISO 8601). */
   firstTimeS: z.number().nullable(),
