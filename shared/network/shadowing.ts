@@ -54,9 +54,12 @@ export class Shadowing {
     const part = place - point;
     if (last.point !== point) {
       last.here = this.point(pair, point);
-      last.next = this.point(pair, point + 1);
+      last.next = Number.NaN;
       last.point = point;
     }
+    // A node at rest needs no second point.
+    if (part === 0) return last.here;
+    if (Number.isNaN(last.next)) last.next = this.point(pair, point + 1);
     // Between two points of correlation rho a straight line would lose variance: divide by what is left of it.
     const rest = 1 - part;
     return (rest * last.here + part * last.next) / Math.sqrt(rest * rest + part * part + 2 * rest * part * this.rho);
