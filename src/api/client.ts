@@ -3,6 +3,7 @@ import type { z } from "zod";
 import { type ErrorBody, type ErrorCode, errorBodySchema } from "#shared/api/errors.ts";
 import { connection } from "./connection.ts";
 import { sessionExpiry } from "./session-expiry.ts";
+import { sendFile, type Upload } from "./upload.ts";
 
 /** "unreachable": no answer at all; "not-understood": an answer of another version, or of something in between. */
 export type ClientErrorCode = ErrorCode | "unreachable" | "not-understood";
@@ -30,13 +31,16 @@ export const isOutage = (error: unknown): error is ApiError => isApiError(error,
 export interface RequestOptions {
   method?: "GET" | "POST" | "PATCH" | "PUT" | "DELETE";
   body?: unknown;
+  /** A file instead of a body of JSON. */
+  upload?: Upload;
   signal?: AbortSignal;
   /** Signing in itself: "signed out" is then an answer, not an interruption. */
   anonymous?: boolean;
 }
 
-async function send(path: string, { method = "GET", body, signal }: RequestOptions): Promise<Response> {
+async function send(path: string, { method = "GET", body, upload, signal }: RequestOptions): Promise<Response> {
   try {
+    if (upload) return await sendFile(path, method, upload, signal);
     return await fetch(path, {
       method,
       signal,

@@ -29,6 +29,7 @@ const pagesOf = (team: Team | null): MainPage[] => [
     ? [
         // Runs are pages of a scenario, with addresses of their own.
         { to: paths.scenarios(team.id), word: "Scenarios", also: paths.run(team.id, "") },
+        { to: paths.logs(team.id), word: "Reception logs" },
         { to: paths.members(team.id), word: "Team" },
       ]
     : []),

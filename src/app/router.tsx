@@ -33,6 +33,11 @@ export const routes: RouteObject[] = [
                   {
                     path: patterns.scenario,
                     lazy: async () => ({ Component: (await import("#src/pages/scenario/scenario-page.tsx")).ScenarioPage }),
+                    // Bench and floor are two views of one draft: the page stays while one goes from one to the other.
+                    children: [
+                      { index: true, element: null },
+                      { path: patterns.scenarioFloor, element: null },
+                    ],
                   },
                   {
                     path: patterns.scenarioRevisions,
@@ -40,6 +45,9 @@ export const routes: RouteObject[] = [
                   },
                   { path: patterns.scenarioRuns, lazy: async () => ({ Component: (await import("#src/pages/run/runs-page.tsx")).RunsPage }) },
                   { path: patterns.run, lazy: async () => ({ Component: (await import("#src/pages/run/run-page.tsx")).RunPage }) },
+                  { path: patterns.logs, lazy: async () => ({ Component: (await import("#src/pages/logs/logs-page.tsx")).LogsPage }) },
+                  { path: patterns.logUpload, lazy: async () => ({ Component: (await import("#src/pages/logs/upload-page.tsx")).UploadPage }) },
+                  { path: patterns.log, lazy: async () => ({ Component: (await import("#src/pages/logs/log-page.tsx")).LogPage }) },
                   { path: patterns.members, lazy: async () => ({ Component: (await import("#src/pages/account/members-page.tsx")).MembersPage }) },
                 ],
               },

@@ -2,6 +2,7 @@
 
 import { trueMinus, withUnit } from "#shared/scenario/show.ts";
 
+export { countText } from "#shared/reception/words.ts";
 export { quantityText, shownUnit, significant, THIN, withUnit } from "#shared/scenario/show.ts";
 
 /** Fixed decimals, true minus, never "−0.0". */

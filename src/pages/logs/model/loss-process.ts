@@ -1,0 +1,78 @@
+/** From a log's links to a scenario's loss process: as it was received, or as a fitted process. */
+import type { LossProcess } from "#shared/scenario/schema.ts";
+import { type RunIndex, runAt } from "./run-index.ts";
+
+/** As many run lengths as a scenario holds. */
+export const MOST_RUNS = 200_000;
+const LEAST_RESERVE = 100;
+
+/** Rounds of the run, and a tenth more, at least a hundred: the run may be made a little longer without choosing anew. */
+export function roundsToEmbed(durationS: number, periodS: number): { rounds: number; reserve: number } {
+  const rounds = Math.max(1, Math.ceil(durationS / periodS - 1e-9));
+  return { rounds, reserve: Math.max(LEAST_RESERVE, Math.ceil(rounds / 10)) };
+}
+
+export interface Replayed {
+  runs: number[];
+  packets: number;
+  lost: number;
+  /** Not all that was asked for: the log ends, or a scenario holds no more run lengths. */
+  short: "log" | "runs" | null;
+}
+
+/** The log from one packet on, as run lengths that begin with a delivered one (0 when the first is lost). */
+export function replayFrom(index: RunIndex, fromPacket: number, packets: number): Replayed {
+  const from = Math.max(0, Math.min(index.packets, Math.floor(fromPacket)));
+  const until = Math.min(index.packets, from + packets);
+  const runs: number[] = [];
+  let embedded = 0;
+  let lost = 0;
+  for (let run = runAt(index, from); run < index.runs.length && from + embedded < until; run++) {
+    const begin = Math.max(from, index.starts[run] as number);
+    const length = Math.min(until, index.starts[run + 1] as number) - begin;
+    if (length <= 0) continue;
+    const isLost = run % 2 === 1;
+    if (isLost && runs.length === 0) runs.push(0);
+    if (runs.length >= MOST_RUNS) return { runs, packets: embedded, lost, short: "runs" };
+    runs.push(length);
+    embedded += length;
+    if (isLost) lost += length;
+  }
+  return { runs, packets: embedded, lost, short: embedded < packets ? "log" : null };
+}
+
+export const KINDS = ["replay", "gilbert-elliott", "bernoulli", "bernoulli-upper"] as const;
+export type UseKind = (typeof KINDS)[number];
+
+/** What a link's fit says, as far as a process needs it. */
+export interface LinkFigures {
+  ratio: number;
+  /** Upper end of the 95 % interval. */
+  upper: number;
+  /** null: no losses in a row to fit to. */
+  chain: { goodToBad: number; badToGood: number } | null;
+}
+
+export interface ReplayChoice {
+  log: { id: string; name: string };
+  measurement: { link: string; runs: number[] };
+  command: { link: string; runs: number[] };
+  then: "error" | "delivered" | "repeat";
+}
+
+export const replayProcess = (choice: ReplayChoice): LossProcess => ({ type: "replay", ...choice });
+
+const stated = (value: number): number => Number(value.toPrecision(6));
+
+export function fittedProcess(kind: Exclude<UseKind, "replay">, measurement: LinkFigures, command: LinkFigures): LossProcess | null {
+  if (kind === "bernoulli") return { type: "bernoulli", measurement: stated(measurement.ratio), command: stated(command.ratio) };
+  if (kind === "bernoulli-upper") return { type: "bernoulli", measurement: stated(measurement.upper), command: stated(command.upper) };
+  if (!measurement.chain || !command.chain) return null;
+  const channel = ({ goodToBad, badToGood }: NonNullable<LinkFigures["chain"]>) => ({
+    goodToBad: stated(goodToBad),
+    badToGood: stated(badToGood),
+    lossInGood: 0,
+    lossInBad: 1,
+  });
+  return { type: "gilbert-elliott", measurement: channel(measurement.chain), command: channel(command.chain) };
+}
