@@ -1,0 +1,255 @@
+/**
+ * What a good colleague would say to a survey, computed: what is weak and why, what breaks it, and what helps, simulated with the
+ * same random numbers, with what it costs in the round. Works off a list of trials in chunks.
+ */
+import type { Scenario } from "#shared/scenario/schema.ts";
+import { capital, messagesOf, nodeWords, percent } from "./advice-words.ts";
+import { type Change, changesFor } from "./changes.ts";
+import { costWords, deepest, findings, type Pair, pairsOf } from "./findings.ts";
+import { meanLinks } from "./link-table.ts";
+import { type RoundTiming, roundTiming } from "./round.ts";
+import { type Edit, withEdits } from "./savings.ts";
+import { FloodTally } from "./tally.ts";
+
+export interface Figure {
+  label: string;
+  value: number;
+  /** "" for shares and counts. */
+  unit: string;
+}
+
+export interface Advice {
+  kind:
+    | "unreached"
+    | "weak"
+    | "deep"
+    | "single-point"
+    | "beacon-host"
+    | "shared-loss"
+    | "spells"
+    | "too-few"
+    | "not-needed"
+    /** Something that helps; its edits make it. */
+    | "change";
+  severity: "problem" | "warning" | "hint";
+  /** Numbers of the nodes that it is about. */
+  nodes: number[];
+  /** The slot that it is about. */
+  slot: string | null;
+  text: string;
+  figures: Figure[];
+  /** New values in the scenario that would make the change; empty: it is not one setting. */
+  edits: Edit[];
+}
+
+interface Trial {
+  tally: FloodTally;
+  conclude: () => Advice | null;
+}
+
+interface Tried {
+  change: Change;
+  timing: RoundTiming;
+  tally: FloodTally;
+}
+
+/** Work of one round, slots x nodes x nodes, that all trials of a kind together may take. */
+const BUDGET = 20_000_000;
+const clamp = (value: number, lo: number, hi: number): number => Math.min(hi, Math.max(lo, Math.floor(value)));
+
+/** A node's outage cuts another one when that has less than this share of what it had. */
+const CUT = 0.5;
+/** A link that is as good as there. */
+const SOUND = 0.9;
+
+export interface AdvisorOptions {
+  seed: number;
+  target: number;
+}
+
+export class Advisor {
+  /** Rounds simulated. */
+  done = 0;
+  private trials: Trial[] | null = null;
+  private readonly advice: Advice[] = [];
+  private readonly tried: Tried[] = [];
+  private readonly changeRounds: number;
+  private readonly outageRounds: number;
+  private weakest: Pair | null = null;
+  private before: FloodTally | null = null;
+  private total = 0;
+
+  /** The tally has to be finished when the first chunk is asked for. */
+  constructor(
+    private readonly scenario: Scenario,
+    private readonly timing: RoundTiming,
+    private readonly survey: FloodTally,
+    private readonly options: AdvisorOptions,
+  ) {
+    const n = survey.nodes.length;
+    const work = n * n * Math.max(1, timing.slots.length);
+    this.changeRounds = Math.min(survey.rounds, clamp(BUDGET / work, 100, 1000));
+    this.outageRounds = Math.min(survey.rounds, clamp(BUDGET / 4 / work, 30, 150));
+  }
+
+  get finished(): boolean {
+    return this.trials !== null && this.trials.length === 0;
+  }
+
+  /** Rounds that it will simulate, as far as it is known. */
+  get expected(): number {
+    return this.trials === null ? 8 * this.changeRounds : Math.max(this.done, this.total);
+  }
+
+  advance(rounds: number): void {
+    this.trials ??= this.begin();
+    let left = rounds;
+    while (left > 0 && this.trials.length > 0) {
+      const [{ tally, conclude }] = this.trials;
+      const before = tally.done;
+      tally.advance(left);
+      left -= tally.done - before;
+      this.done += tally.done - before;
+      if (!tally.finished) continue;
+      const found = conclude();
+      if (found) this.advice.push(found);
+      this.trials.shift();
+    }
+  }
+
+  /** Problems first, then warnings, then what helps, then hints. */
+  result(): Advice[] {
+    return [...this.advice, ...this.changes()].sort((a, b) => rank(a) - rank(b));
+  }
+
+  private begin(): Trial[] {
+    const { scenario, timing, survey, options } = this;
+    this.advice.push(...findings(scenario, timing, survey, options.target));
+    const trials = [...this.outages(), ...this.changeTrials()];
+    this.total = trials.reduce((sum, { tally }) => sum + tally.rounds, 0);
+    return trials;
+  }
+
+  private outages(): Trial[] {
+    const { scenario, timing, survey, options } = this;
+    const pairs = pairsOf(scenario, timing, survey).filter(({ ratio }) => ratio >= CUT);
+    const host = scenario.round.beacon?.needed ? timing.slots.find(({ message }) => message === "beacon")?.from : null;
+    const roundabout = this.withoutNode();
+    return survey.nodes.flatMap((node, place): Trial[] => {
+      const others = pairs.filter((pair) => pair.place !== place && survey.slots[pair.slot].source !== place);
+      if (node === host || others.length === 0 || others.every((pair) => roundabout(pair, place))) return [];
+      const down = withEdits(scenario, [{ path: ["floor", "nodes", place, "outages"], value: [{ fromS: 0, untilS: null }] }]);
+      const tally = new FloodTally(down, timing, { rounds: this.outageRounds, seed: options.seed });
+      return [{ tally, conclude: () => this.cut(node, others, tally) }];
+    });
+  }
+
+  /** Is there a way of sound links from the pair's sender to its node, within the hop bound, that does without a node? Then its outage needs no simulation. */
+  private withoutNode(): (pair: Pair, place: number) => boolean {
+    const { scenario, timing, survey } = this;
+    const { nodes } = survey;
+    if (scenario.floor?.nodes.some(({ wayPoints }) => wayPoints.length > 0) || scenario.round.beacon?.needed) return () => false;
+    const longest = timing.slots.reduce((most, { payloadBytes }) => Math.max(most, payloadBytes), 0);
+    const place = new Map(nodes.map((id, i) => [id, i]));
+    const sound: number[][] = nodes.map(() => []);
+    for (const { from, to, prr } of meanLinks(scenario, 0, longest)) if (prr >= SOUND) sound[place.get(from) ?? 0].push(place.get(to) ?? 0);
+    return ({ slot, place: to }, without) => {
+      const seen = new Set([survey.slots[slot].source, without]);
+      let front = [survey.slots[slot].source];
+      for (let hop = 1; hop <= timing.hops && front.length > 0; hop++) {
+        front = front.flatMap((from) => sound[from].filter((next) => !seen.has(next) && seen.add(next)));
+        if (front.includes(to)) return true;
+      }
+      return false;
+    };
+  }
+
+  private cut(node: number, others: readonly Pair[], tally: FloodTally): Advice | null {
+    const { scenario, timing, survey } = this;
+    const after = others
+      .map((pair) => ({ pair, ratio: tally.messages[pair.message].received[pair.place] / Math.max(1, tally.messages[pair.message].sent) }))
+      .filter(({ pair, ratio }) => ratio < CUT * pair.ratio)
+      .sort((a, b) => a.ratio - b.ratio);
+    if (after.length === 0) return null;
+    const [{ pair, ratio }] = after;
+    const cutOff = [...new Set(after.map(({ pair }) => survey.nodes[pair.place]))];
+    const more = cutOff.length > 1 ? ` So ${cutOff.length > 2 ? "are" : "is"} ${cutOff.length - 1} more.` : "";
+    return {
+      kind: "single-point",
+      severity: "warning",
+      nodes: [node, ...cutOff],
+      slot: timing.slots[pair.slot].id,
+      text: `${capital(nodeWords(scenario, node))} is a single point of failure: while it is out of service, ${nodeWords(scenario, survey.nodes[pair.place])} has ${percent(ratio)} of the ${messagesOf(timing, pair.slot)} instead of ${percent(pair.ratio)}.${more}`,
+      figures: [
+        { label: "delivered without it", value: ratio, unit: "" },
+        { label: "delivered", value: pair.ratio, unit: "" },
+      ],
+      edits: [],
+    };
+  }
+
+  private changeTrials(): Trial[] {
+    const { scenario, timing, survey, options } = this;
+    const [weakest] = pairsOf(scenario, timing, survey);
+    if (!weakest || weakest.ratio >= options.target) return [];
+    this.weakest = weakest;
+    const sized = { rounds: this.changeRounds, seed: options.seed };
+    const before = new FloodTally(scenario, timing, sized);
+    this.before = before;
+    const trials: Trial[] = [{ tally: before, conclude: () => null }];
+    for (const change of changesFor(scenario, timing, survey.nodes, weakest, deepest(survey, timing.hops).step)) {
+      const changed = withEdits(scenario, change.edits);
+      const then = roundTiming(changed);
+      const tally = new FloodTally(changed, then, sized);
+      this.tried.push({ change, timing: then, tally });
+      trials.push({ tally, conclude: () => null });
+    }
+    return trials;
+  }
+
+  /** Messages of the weakest pair that its node had. */
+  private had(tally: FloodTally, timing: RoundTiming, { slot, place }: Pair): { count: number; of: number } {
+    const id = this.timing.slots[slot].id;
+    const message = tally.messages.find(({ slots: [first] }) => timing.slots[first].id === id);
+    return { count: message?.received[place] ?? 0, of: message?.sent ?? 0 };
+  }
+
+  /** What helped the weakest node, the best of each family, best first. */
+  private changes(): Advice[] {
+    const { scenario, timing, survey, weakest, before } = this;
+    if (!weakest || !before?.finished) return [];
+    const now = this.had(before, timing, weakest);
+    const outcomes = this.tried
+      .filter(({ tally }) => tally.finished)
+      .map((tried) => ({ ...tried, then: this.had(tried.tally, tried.timing, weakest) }))
+      .filter(({ then }) => then.count > now.count)
+      .sort((a, b) => b.then.count - a.then.count || b.timing.reserveS - a.timing.reserveS);
+    const families = new Set<string>();
+    return outcomes.flatMap(({ change, timing: changed, then }): Advice[] => {
+      if (families.has(change.family)) return [];
+      families.add(change.family);
+      const node = survey.nodes[weakest.place];
+      const share = ({ count, of }: { count: number; of: number }) => (of > 0 ? count / of : 0);
+      return [
+        {
+          kind: "change",
+          severity: "hint",
+          nodes: [...new Set([node, ...change.nodes])],
+          slot: timing.slots[weakest.slot].id,
+          text: `${change.text}: ${nodeWords(scenario, node)} would have ${percent(share(then))} of the ${messagesOf(timing, weakest.slot)} instead of ${percent(share(now))}. ${costWords(timing, changed)}`,
+          figures: [
+            { label: "delivered now", value: share(now), unit: "" },
+            { label: "delivered then", value: share(then), unit: "" },
+            { label: "floods", value: then.of, unit: "" },
+            { label: "time added to the round", value: timing.reserveS - changed.reserveS, unit: "s" },
+            { label: "reserve then", value: changed.reserveS, unit: "s" },
+          ],
+          edits: change.edits,
+        },
+      ];
+    });
+  }
+}
+
+const RANKS = { problem: 0, warning: 1, hint: 3 };
+const rank = ({ kind, severity }: Advice): number => (kind === "change" ? 2 : RANKS[severity]);
