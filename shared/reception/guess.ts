@@ -91,7 +91,7 @@ const NAMES: Record<Mapped, readonly string[]> = {
     ...["seq", "seqno", "seqnr", "seqnum", "sequence", "sequenceno", "sequencenumber", "packetno", "packetnumber", "pktno", "pktid", "packetid"],
     ...["round", "roundno", "roundnr", "roundnumber", "rnd", "cycle", "packet", "pkt", "counter", "count", "number", "nr", "no", "n", "id", "index"],
   ],
-  time: ["time", "t", "timestamp", "ts", "datetime", "date", "rxtime", "clock", "elapsed", "zeit"],
+  time: ["time", "t", "timestamp", "ts", "datetime", "date", "rxtime", "clock", "elapsed"],
   source: ["source", "src", "sender", "from", "transmitter", "origin", "initiator", "tx", "txnode", "sourcenode", "node", "nodeid", "sensor"],
   receiver: ["receiver", "dst", "dest", "destination", "to", "sink", "rx", "rxnode", "receivernode", "target", "actuator"],
   received: ["received", "ok", "rcvd", "recv", "delivered", "success", "rxok", "crcok", "status", "result", "state", "lost", "loss", "missed"],
