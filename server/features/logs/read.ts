@@ -4,7 +4,7 @@ import { once } from "node:events";
 import { Readable } from "node:stream";
 import { createGunzip, createGzip } from "node:zlib";
 import { MAX_LOG_BYTES } from "#shared/api/logs.ts";
-import { createLogReader } from "#shared/reception/read-log.ts";
+import { logReader } from "#shared/reception/log-reader.ts";
 import type { ColumnMapping } from "#shared/reception/types.ts";
 import type { Issue } from "#shared/scenario/issues.ts";
 import { inMb } from "../../http/file.ts";
@@ -80,6 +80,9 @@ function packer() {
   };
 }
 
+/** What spreadsheets save by themselves is a ZIP file, and would be read as very bad rows. */
+const isZip = (first: Uint8Array): boolean => [0x50, 0x4b, 0x03, 0x04].every((byte, i) => first[i] === byte);
+
 /** Text as Excel and others write it: UTF-8, or UTF-16 when its mark says so. */
 function decoderFor(first: Uint8Array): TextDecoder {
   if (first[0] === 0xff && first[1] === 0xfe) return new TextDecoder("utf-16le");
@@ -128,7 +131,7 @@ export async function readLog(source: AsyncIterable<Uint8Array>, mapping: Column
   const hash = createHash("sha256");
   const pack = packer();
   const guard = lineGuard();
-  const reader = createLogReader(mapping);
+  const reader = logReader(mapping);
   let decoder: TextDecoder | null = null;
   let bytes = 0;
   try {
@@ -140,6 +143,7 @@ export async function readLog(source: AsyncIterable<Uint8Array>, mapping: Column
       }
       guard(chunk);
       hash.update(chunk);
+      if (!decoder && isZip(chunk)) throw new Refused("log-invalid", "This is a ZIP file or a spreadsheet. Save the table as CSV and upload that.");
       decoder ??= decoderFor(chunk);
       reader.push(decoder.decode(chunk, { stream: true }));
       await pack.add(chunk);
@@ -148,11 +152,9 @@ export async function readLog(source: AsyncIterable<Uint8Array>, mapping: Column
     reader.push(decoder.decode());
     const read = reader.finish();
     if (!read.ok) throw new Refused("log-invalid", `The log cannot be read: ${read.issues[0].message}`, { issues: read.issues });
-    const { links, report } = read.content;
+    const { links, report } = read.value;
     const sum = (of: (link: (typeof links)[number]) => number) => links.reduce((total, link) => total + of(link), 0);
-    const packets = sum((link) => link.packets);
     const runs = sum((link) => link.runs.length);
-    if (packets === 0) throw new Refused("log-invalid", `None of the file's ${report.rows} rows could be used. Check which column is which.`);
     if (runs > MAX_RUNS)
       throw new Refused(
         "log-invalid",
@@ -166,7 +168,7 @@ export async function readLog(source: AsyncIterable<Uint8Array>, mapping: Column
       rowsUsed: report.rowsUsed,
       troubles: Object.values(report.troubles).reduce((total, { count }) => total + count, 0),
       links: links.length,
-      packets,
+      packets: sum((link) => link.packets),
       lost: sum((link) => link.lost),
       report: JSON.stringify(report),
       linkTraces: JSON.stringify(links),
