@@ -2,19 +2,27 @@
 import supertest from "supertest";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { errorBodySchema } from "#shared/api/errors.ts";
+import { uploadLogParameters, uploadLogResponse } from "#shared/api/logs.ts";
 import { ROLES, type Role } from "#shared/api/permissions.ts";
+import { uploadPictureResponse } from "#shared/api/pictures.ts";
 import type { ScenarioResponse } from "#shared/api/scenarios.ts";
+import { floorSchema } from "#shared/scenario/floor-schema.ts";
 import { type Agent, bodyOf, createScenario, type Harness, SLOW, scenarioNamed, startHarness } from "./harness.ts";
+import { png } from "./pictures.ts";
+import { csvText, MAPPING } from "./reception-csv.ts";
 
 interface Ids {
   team: string;
   scenario: string;
   run: string;
+  log: string;
+  picture: string;
 }
 interface Line {
   route: string;
   path: (ids: Ids) => string;
   body?: object;
+  file?: { type: string; bytes: Buffer };
   /** Status for who may; who may not gets 403. */
   status: number;
   roles: readonly Role[];
@@ -22,6 +30,11 @@ interface Line {
 
 const makers: Role[] = ["engineer", "reviewer", "administrator"];
 const scenario = scenarioNamed("Another");
+const LOG = {
+  path: `/logs?${new URLSearchParams(uploadLogParameters({ name: "Hall 2", fileName: "", mapping: MAPPING }))}`,
+  file: { type: "text/csv", bytes: Buffer.from(csvText(20)) },
+};
+const PICTURE = { path: "/pictures?name=hall.png", file: { type: "image/png", bytes: png(40, 20) } };
 const LINES: Line[] = [
   { route: "get /scenarios", path: () => "/scenarios", status: 200, roles: ROLES },
   { route: "post /scenarios", path: () => "/scenarios", body: { scenario }, status: 201, roles: makers },
@@ -44,24 +57,47 @@ const LINES: Line[] = [
   { route: "post /scenarios/:id/runs", path: (ids) => `/scenarios/${ids.scenario}/runs`, body: { revision: 1 }, status: 200, roles: makers },
   { route: "get /runs/:runId", path: (ids) => `/runs/${ids.run}`, status: 200, roles: ROLES },
   { route: "get /runs/:runId/series", path: (ids) => `/runs/${ids.run}/series`, status: 200, roles: ROLES },
+  { route: "get /logs", path: () => "/logs", status: 200, roles: ROLES },
+  // The same file again, which is told only to those who may.
+  { route: "post /logs", path: () => LOG.path, file: LOG.file, status: 200, roles: makers },
+  { route: "get /logs/:id", path: (ids) => `/logs/${ids.log}`, status: 200, roles: ROLES },
+  { route: "patch /logs/:id", path: (ids) => `/logs/${ids.log}`, body: { name: "Renamed" }, status: 200, roles: makers },
+  // Refused because a revision names it, which is told only to those who may.
+  { route: "delete /logs/:id", path: (ids) => `/logs/${ids.log}`, status: 409, roles: makers },
+  { route: "get /logs/:id/original", path: (ids) => `/logs/${ids.log}/original`, status: 200, roles: ROLES },
+  { route: "get /pictures", path: () => "/pictures", status: 200, roles: ROLES },
+  { route: "post /pictures", path: () => PICTURE.path, file: PICTURE.file, status: 200, roles: makers },
+  { route: "get /pictures/:id", path: (ids) => `/pictures/${ids.picture}`, status: 200, roles: ROLES },
+  { route: "delete /pictures/:id", path: (ids) => `/pictures/${ids.picture}`, status: 409, roles: makers },
   { route: "get /members", path: () => "/members", status: 200, roles: ROLES },
   { route: "get /activity", path: () => "/activity", status: 200, roles: ["administrator"] },
 ];
 const methodOf = ({ route }: Line) => route.split(" ")[0] as "get" | "post" | "patch" | "delete";
-const hasOwnIds = (line: Line) => line.path({ team: "", scenario: "S", run: "R" }).match(/S|R/) !== null;
+const hasOwnIds = (line: Line) => line.path({ team: "", scenario: "id!", run: "id!", log: "id!", picture: "id!" }).includes("id!");
 
 let harness: Harness;
 let own: Ids;
 
 beforeAll(async () => {
   harness = await startHarness();
-  const created: ScenarioResponse = await createScenario(harness, scenarioNamed("Balancer"));
-  own = { team: harness.team.id, scenario: created.id, run: created.latestRun?.id ?? "" };
+  const { agent } = harness.people.engineer;
+  const sent = (path: string, { type, bytes }: { type: string; bytes: Buffer }) =>
+    agent.post(`/api/teams/${harness.team.id}${path}`).set("Content-Type", type).send(bytes).expect(201);
+  const log = bodyOf(uploadLogResponse, await sent(LOG.path, LOG.file)).log.id;
+  const picture = bodyOf(uploadPictureResponse, await sent(PICTURE.path, PICTURE.file)).picture.id;
+  const using = scenarioNamed("Balancer", (draft) => {
+    const link = { link: "1 > 3", runs: [10_000] };
+    draft.losses.process = { type: "replay", log: { id: log, name: "Hall 2" }, measurement: link, command: link, then: "repeat" };
+    draft.floor = floorSchema.parse({ widthM: 40, depthM: 20, picture: { id: picture, metresPerPixel: 1 } });
+  });
+  const created: ScenarioResponse = await createScenario(harness, using);
+  own = { team: harness.team.id, scenario: created.id, run: created.latestRun?.id ?? "", log, picture };
 }, SLOW);
 afterAll(() => harness?.close());
 
 const ask = (agent: Agent | ReturnType<typeof supertest>, line: Line, ids: Ids) => {
   const request = agent[methodOf(line)](`/api/teams/${ids.team}${line.path(ids)}`);
+  if (line.file) return request.set("Content-Type", line.file.type).send(line.file.bytes);
   return line.body ? request.send(line.body) : request;
 };
 
@@ -107,8 +143,8 @@ describe("routes of a team", () => {
     }
   });
 
-  it.each(LINES.filter(hasOwnIds))("answer $route with 404 when the scenario's or run's id is no id at all", async (line) => {
-    const response = await ask(harness.people.administrator.agent, line, { ...own, scenario: "..%2f..", run: "7" });
+  it.each(LINES.filter(hasOwnIds))("answer $route with 404 when the id is no id at all", async (line) => {
+    const response = await ask(harness.people.administrator.agent, line, { ...own, scenario: "..%2f..", run: "7", log: "0x1", picture: "%00" });
     expect(response.status).toBe(404);
   });
 
