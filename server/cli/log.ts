@@ -1,6 +1,7 @@
 /** `holdfast log FILE`: what a reception log holds, its fit and its tests for independence, link by link. */
 import { closeSync, openSync, readSync } from "node:fs";
 import { StringDecoder } from "node:string_decoder";
+import { measureForClaim } from "#shared/reception/claim.ts";
 import { fitLink } from "#shared/reception/fit.ts";
 import { previewLog } from "#shared/reception/guess.ts";
 import { testIndependence } from "#shared/reception/independence.ts";
@@ -15,6 +16,8 @@ import { mappingOf } from "./log-map.ts";
 const SAMPLE_CHARACTERS = 65_536;
 const CHUNK_BYTES = 1 << 20;
 const ROLLING_POINTS = 50;
+const RELIABILITIES = [0.99, 0.999, 0.9999];
+const CONFIDENCE = 0.95;
 
 interface LogOptions {
   map?: string;
@@ -39,6 +42,7 @@ export function log(file: string, options: LogOptions): unknown {
       mapping,
       ...(guessed ? { guessed } : {}),
       report,
+      howLong: RELIABILITIES.map((reliability) => measureForClaim(reliability, CONFIDENCE, 0, periodS)),
       links: chosen(links, options.link).map((trace) => answerFor(trace, mapping, periodS, options.link !== undefined)),
     };
   } finally {

@@ -2,6 +2,7 @@
 import { significant } from "#shared/scenario/show.ts";
 import { shownReliability, slowerThanRound } from "./claim.ts";
 import type { LinkFit } from "./fit.ts";
+import { hoursCovered, hoursThatDiffer } from "./hours.ts";
 import { type IndependenceTest, TOO_FEW_LOSSES } from "./independence.ts";
 import type { LinkTrace } from "./types.ts";
 import { counted, countText, durationText, shareText } from "./words.ts";
@@ -26,6 +27,7 @@ export function verdictWords({ trace, fit, test, periodS = null }: VerdictInput)
       `${counted(trace.lostBefore + trace.lostAfter, "round")} at the ends count as lost because other links saw them; if this node was off then, cut the log.`,
     );
   }
+  if (trace.hours) sentences.push(...hourSentences(trace.hours));
   const slower = periodS === null ? null : slowerThanRound(trace, periodS).sentence;
   if (slower) sentences.push(slower);
   return { headline, sentences };
@@ -76,6 +78,19 @@ function told(trace: LinkTrace, fit: LinkFit, test: IndependenceTest): VerdictWo
   }
 }
 
+function hourSentences(hours: NonNullable<LinkTrace["hours"]>): string[] {
+  const covered = hoursCovered(hours);
+  const sentences = covered === null ? [] : [`The log covers ${covered} of the day and says nothing about the rest.`];
+  const differ = hoursThatDiffer(hours);
+  if (differ) {
+    const { best, worst } = differ;
+    sentences.push(
+      `Loss changes over the day: ${shareText(best.loss)} from ${best.hour} to ${best.hour + 1} h, ${shareText(worst.loss)} from ${worst.hour} to ${worst.hour + 1} h. Design for the worst hour.`,
+    );
+  }
+  return sentences;
+}
+
 /** "3.9 % lost (95 % interval 3.6 to 4.2 %)." */
 function ratio(fit: LinkFit): string {
   const [lo, hi] = fit.clopperPearson;
@@ -91,7 +106,7 @@ function tooFew(fit: LinkFit, test: IndependenceTest): string[] {
   const sentences = [ratio(fit), `At least ${TOO_FEW_LOSSES} are needed for a verdict. ${seen}`];
   if (runs && runs.p < test.significance && runs.observed < runs.expected) {
     sentences.push(
-      `They did: the longest streak is ${countText(fit.counts.longestLost)}, and independent losses would give so few runs with probability ${pText(runs.p)}. That is one event, not yet a pattern; measure longer.`,
+      `They did: the longest streak is ${countText(fit.counts.longestLost)}, and independent losses would hardly give so few runs (p ${pText(runs.p)}). That is one event, not yet a pattern; measure longer.`,
     );
   }
   return sentences;
@@ -114,7 +129,7 @@ function bursts(trace: LinkTrace, fit: LinkFit, test: IndependenceTest): string[
   const { intervalS } = trace;
   const lasting = intervalS === null ? "" : ` (${durationText(fit.counts.longestLost * intervalS)})`;
   const sentences = [
-    `A burst lasts ${significant(meanBurst)} packets on average where independent losses would make ${significant(independentBurst)}; the longest is ${countText(fit.counts.longestLost)}${lasting}. The tests agree (${pValues(test)}).`,
+    `A burst lasts ${significant(meanBurst)} packets on average where independent losses would make ${significant(independentBurst)}; the longest is ${countText(fit.counts.longestLost)}${lasting}. It is no chance (${pValues(test)}).`,
   ];
   const { allowingForBursts: allowing } = fit;
   if (allowing) {
@@ -146,11 +161,11 @@ function streaks({ counts, lossRatio }: LinkFit): string {
 
 function pValues({ runs, ljungBox, transitions }: IndependenceTest): string {
   const parts = [];
-  if (runs) parts.push(`runs test p = ${pText(runs.p)}`);
-  if (ljungBox) parts.push(`Ljung-Box p = ${pText(ljungBox.p)}`);
-  if (transitions && transitions.smallestExpected >= 5) parts.push(`successive outcomes p = ${pText(transitions.p)}`);
+  if (runs) parts.push(`runs test p ${pText(runs.p)}`);
+  if (ljungBox) parts.push(`Ljung-Box p ${pText(ljungBox.p)}`);
+  if (transitions && transitions.smallestExpected >= 5) parts.push(`successive outcomes p ${pText(transitions.p)}`);
   return parts.join(", ");
 }
 
 /** Below one in a million the size no longer matters. */
-const pText = (p: number): string => (p < 1e-6 ? "below 0.000001" : significant(p, 2));
+const pText = (p: number): string => (p < 1e-6 ? "below 0.000001" : `= ${significant(p, 2)}`);
