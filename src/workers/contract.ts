@@ -1,6 +1,7 @@
 /** What the page may ask of the engine worker. Types only. Outcomes are data: comlink loses fields of thrown errors. */
 import type { FloodRecord } from "#shared/network/floods.ts";
 import type { LinkRow } from "#shared/network/link-table.ts";
+import type { FloodSurvey, SurveyOptions } from "#shared/network/survey.ts";
 import type { Issue } from "#shared/scenario/issues.ts";
 import type { RunOutcome } from "#shared/simulation/result.ts";
 
@@ -13,7 +14,7 @@ export type WorkerOutcome = RunOutcome | { ok: false; cancelled: true };
 
 /** What a longer job came to. A job is given up when a newer one of its kind is asked for, or by cancelTask. */
 export type TaskOutcome<T> = { ok: true; value: T } | { ok: false; issues: Issue[] } | { ok: false; cancelled: true };
-export type TaskKind = "floods" | "links";
+export type TaskKind = "floods" | "links" | "survey";
 /** 0 to 1. */
 export type TaskProgress = (share: number) => void;
 
@@ -21,6 +22,8 @@ export type TaskProgress = (share: number) => void;
 export interface FloorTasks {
   /** Every flood of a run with this seed; null: the scenario's own. */
   floods(scenario: unknown, seed: number | null, onProgress?: TaskProgress): Promise<TaskOutcome<FloodRecord>>;
+  /** Many floods in figures with intervals, and what would help. */
+  survey(scenario: unknown, options: SurveyOptions, onProgress?: TaskProgress): Promise<TaskOutcome<FloodSurvey>>;
   /** All ordered pairs of nodes at an instant, for the longest payload of the round. */
   links(scenario: unknown, atS: number): Promise<TaskOutcome<LinkRow[]>>;
 }

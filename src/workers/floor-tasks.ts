@@ -2,6 +2,7 @@
 import { FloodProcess, type FloodRecord } from "#shared/network/floods.ts";
 import { type LinkRow, meanLinks } from "#shared/network/link-table.ts";
 import type { PreparedFloor } from "#shared/network/prepare.ts";
+import { type FloodSurvey, Survey, type SurveyOptions } from "#shared/network/survey.ts";
 import { roundsOf } from "#shared/scenario/rounds.ts";
 
 export type Job<T> = Generator<number, T>;
@@ -22,6 +23,16 @@ export function* floodsJob({ scenario, timing }: Prepared, seed: number | null):
     if (round % ROUNDS_AT_ONCE === 0) yield round / rounds;
   }
   return { nodes: process.nodes, slots: process.slots, rounds, firstStep, txNs: process.txNs, rxNs: process.rxNs };
+}
+
+/** Many floods in figures, and what would help. */
+export function* surveyJob({ scenario }: Prepared, options: SurveyOptions): Job<FloodSurvey> {
+  const survey = new Survey(scenario, options);
+  while (!survey.finished) {
+    survey.advance(ROUNDS_AT_ONCE);
+    yield survey.progress;
+  }
+  return survey.result();
 }
 
 export function* linksJob({ scenario, timing }: Prepared, atS: number): Job<LinkRow[]> {
