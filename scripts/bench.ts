@@ -8,6 +8,8 @@ import { mkdtempSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { checkScenario } from "#shared/scenario/check.ts";
+import { floorSchema, interfererSchema } from "#shared/scenario/floor-schema.ts";
+import { roundSchema } from "#shared/scenario/round-schema.ts";
 import { type Scenario, type ScenarioInput, scenarioSchema } from "#shared/scenario/schema.ts";
 import { digestRun } from "#shared/simulation/digest.ts";
 import { prepareRun, simulate } from "#shared/simulation/simulate.ts";
@@ -160,3 +162,80 @@ const variants: [string, (scenario: Scenario) => void][] = [
   ],
 ];
 for (const [what, change] of variants) line(what, best(pendulum(change), 300).simulate, own.simulate, "the plain run");
+
+/** 30 nodes in three rows, 10 slots of a round: beacon, measurement, command and seven other messages; three hops from end to end. */
+function hall(change?: (scenario: Scenario) => void): Scenario {
+  return pendulum((scenario) => {
+    const floor = {
+      widthM: 120,
+      depthM: 40,
+      nodes: Array.from({ length: 30 }, (_, i) => ({ id: i + 1, xM: 6 + 12 * (i % 10), yM: 8 + 12 * Math.floor(i / 10) })),
+      links: { type: "budget", pathLoss: { type: "log-distance", exponent: 3.9 } },
+    };
+    scenario.floor = floorSchema.parse(floor);
+    scenario.loops[0].nodes = { sensor: 1, controller: 15, actuator: 30 };
+    const messages = Array.from({ length: 7 }, (_, i) => ({ id: `m${i}`, name: `Message ${i}`, from: 3 + 4 * i, payloadBytes: 12 }));
+    scenario.round = roundSchema.parse({ ...scenario.round, hops: 4, transmissions: 2, wakeUpS: 1e-4, gapS: 1e-4, messages });
+    scenario.radio.turnaroundS = 6e-5;
+    change?.(scenario);
+  });
+}
+const flooded = (change?: (scenario: Scenario) => void) =>
+  hall((scenario) => {
+    scenario.losses.process = { type: "flood" };
+    change?.(scenario);
+  });
+const budget = (scenario: Scenario) => {
+  if (scenario.floor?.links.type !== "budget") throw new Error("the bench floor has a link budget");
+  return { floor: scenario.floor, links: scenario.floor.links };
+};
+const fade = (scenario: Scenario) => {
+  budget(scenario).links.fading = { kDb: 3, coherence: { type: "speed", leastMPerS: 0.5 } };
+};
+
+const bernoulli = best(hall(), 300);
+const wholeOf = ({ prepare, simulate }: ReturnType<typeof best>) => prepare + simulate;
+console.log("\nfloods over 30 nodes, 10 slots a round, 500 rounds, with the closed loop; checking and preparing included");
+line("10 % lost (Bernoulli)", wholeOf(bernoulli), wholeOf(bernoulli), "Bernoulli");
+const waves: [string, (scenario: Scenario) => void][] = [
+  ["flood waves, log-distance", () => undefined],
+  [
+    "with shadowing",
+    (s) => {
+      budget(s).links.shadowing.sigmaDb = 4;
+    },
+  ],
+  [
+    "with two interferers that come and go",
+    (s) =>
+      budget(s).floor.interferers.push(
+        ...[20, 90].map((xM) =>
+          interfererSchema.parse({
+            xM,
+            yM: 20,
+            powerDbm: 15,
+            centreMHz: 2472,
+            bandwidthMHz: 20,
+            activity: { type: "random", onShare: 0.3, meanOnS: 0.003 },
+          }),
+        ),
+      ),
+  ],
+  ["with fading", fade],
+  [
+    "with fading and hopping over four channels",
+    (s) => {
+      fade(s);
+      s.radio.channels.list = [2, 14, 26, 39];
+    },
+  ],
+  [
+    "with one node on its way past 20 blocks",
+    (s) => {
+      const { floor } = budget(s);
+      floor.obstacles = Array.from({ length: 20 }, (_, i) => ({ type: "block", name: "", xM: 6 * i, yM: 13, widthM: 2, depthM: 2, lossDb: 3 }));
+      floor.nodes[4]?.wayPoints.push({ atS: 10, xM: 110, yM: 30 });
+    },
+  ],
+];
+for (const [what, change] of waves) line(what, wholeOf(best(flooded(change), 20)), wholeOf(bernoulli), "Bernoulli");
