@@ -35,10 +35,11 @@ export function channelBand(phy: Phy, channel: number): Band {
   return { centreMHz, bandwidthMHz: receiverBandwidthMHz(phy) };
 }
 
-/** The channels in the order of hopping; never empty. */
+/** The channels in the order of hopping; never empty. What the PHY does not have is left out: the scenario's check names it. */
 export function channelsInUse(radio: Radio): number[] {
-  const { list } = radio.channels;
-  return list.length > 0 ? list : [channelRange(radio.phy).usual];
+  const { first, last, usual } = channelRange(radio.phy);
+  const list = radio.channels.list.filter((channel) => channel >= first && channel <= last);
+  return list.length > 0 ? list : [usual];
 }
 
 /** Share of the sender's power, spread evenly over its band, that falls into the receiver's band: 0 to 1. */

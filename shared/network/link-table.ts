@@ -1,6 +1,6 @@
 /** Every link of a floor in numbers, on average: for the page's table, hop counts and advice. */
 import { fromDb, toDb } from "#shared/math/decibel.ts";
-import { ln, sincos } from "#shared/math/elementary.ts";
+import { exp } from "#shared/math/elementary.ts";
 import type { Floor, LinkBudgetSettings } from "#shared/scenario/floor-schema.ts";
 import type { Radio } from "#shared/scenario/round-schema.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
@@ -39,7 +39,7 @@ const MOST_INTERFERERS = 8;
 
 /**
  * All ordered pairs, sender by sender in the floor's order, at an instant, for packets with so many bytes of payload (the
- * header comes on top). Empty without a floor.
+ * header comes on top). Empty without a floor; also for a floor that has not passed its checks.
  */
 export function meanLinks(scenario: Scenario, atS: number, payloadBytes: number): LinkRow[] {
   const { floor, radio } = scenario;
@@ -48,7 +48,7 @@ export function meanLinks(scenario: Scenario, atS: number, payloadBytes: number)
   const rows: LinkRow[] = [];
   if (links.type === "matrix") {
     const { prr } = links;
-    forPairs(floor, atS, (from, to, geometry) => rows.push({ ...geometry, budget: null, prr: prr[from][to] }));
+    forPairs(floor, atS, (from, to, geometry) => rows.push({ ...geometry, budget: null, prr: prr[from]?.[to] ?? 0 }));
     return rows;
   }
   const budget = new LinkBudget(floor, links, radio, nodes, atS);
@@ -138,41 +138,51 @@ function noiseStates(
   return { states: Array.from(states, ([noiseMw, share]) => ({ noiseMw, share })), meanMw };
 }
 
-/** Radii and angles of the scattered part of the fading over which reception is averaged, all equally likely. */
-const RADII = 48;
-const ANGLES = 12;
+/** Grid of levels and of fading, dB. */
+const PER_DB = 8;
 const LOWEST_DB = -50;
 const HIGHEST_DB = 80;
-const PER_DB = 8;
+const DEEPEST_FADE_DB = -70;
+const HIGHEST_FADE_DB = 14;
 
-/** Equally likely power gains of Rician fading of unit mean power, from the middle of each cell of radius and angle. */
-export function ricianGains(kDb: number): Float64Array {
-  const k = fromDb(kDb);
-  const direct = Math.sqrt(k / (k + 1));
-  const angle = new Float64Array(2);
-  const gains = new Float64Array(RADII * ANGLES);
-  for (let r = 0; r < RADII; r++) {
-    const scattered = Math.sqrt(-ln(1 - (r + 0.5) / RADII) / (k + 1));
-    for (let a = 0; a < ANGLES; a++) {
-      sincos((Math.PI * (a + 0.5)) / ANGLES, angle, 1, 0);
-      const re = direct + scattered * angle[1];
-      const im = scattered * angle[0];
-      gains[r * ANGLES + a] = re * re + im * im;
-    }
+/** exp(-x) I0(x), x >= 0, to 2e-7 (Abramowitz and Stegun, 9.8.1 and 9.8.2). */
+function scaledBesselI0(x: number): number {
+  if (x < 3.75) {
+    const t = (x / 3.75) * (x / 3.75);
+    const i0 = 1 + t * (3.5156229 + t * (3.0899424 + t * (1.2067492 + t * (0.2659732 + t * (0.0360768 + t * 0.0045813)))));
+    return i0 * exp(-x);
   }
-  return gains;
+  const t = 3.75 / x;
+  const tail = 0.00916281 + t * (-0.02057706 + t * (0.02635537 + t * (-0.01647633 + t * 0.00392377)));
+  return (0.39894228 + t * (0.01328592 + t * (0.00225319 + t * (-0.00157565 + t * tail)))) / Math.sqrt(x);
+}
+
+/**
+ * Probabilities of power gains of Rician fading with unit mean power at every 1/8 dB from -70 to 14 dB, by its density
+ * (1+K) exp(-K - (1+K) g) I0(2 sqrt(K (1+K) g)) (Simon and Alouini, Digital Communication over Fading Channels, 2.16).
+ */
+export function ricianWeights(kDb: number): Float64Array {
+  const k = fromDb(kDb);
+  const weights = Float64Array.from({ length: (HIGHEST_FADE_DB - DEEPEST_FADE_DB) * PER_DB + 1 }, (_, i) => {
+    const g = fromDb(DEEPEST_FADE_DB + i / PER_DB);
+    const apart = Math.sqrt(k) - Math.sqrt((1 + k) * g);
+    return g * exp(-apart * apart) * scaledBesselI0(2 * Math.sqrt(k * (1 + k) * g));
+  });
+  let sum = 0;
+  for (const weight of weights) sum += weight;
+  return weights.map((weight) => weight / sum);
 }
 
 /** Mean of a curve over the fading, at every 1/8 dB from -50 to 80 dB; the curve itself without fading. */
 function fadedCurve(curve: ReceptionCurve, fading: LinkBudgetSettings["fading"]): ReceptionCurve {
   if (!fading) return curve;
-  const gains = ricianGains(fading.kDb);
+  const weights = ricianWeights(fading.kDb);
   const levels = (HIGHEST_DB - LOWEST_DB) * PER_DB + 1;
+  const plain = Float64Array.from({ length: levels + weights.length - 1 }, (_, i) => curve(fromDb(LOWEST_DB + DEEPEST_FADE_DB + i / PER_DB)));
   const values = Float64Array.from({ length: levels }, (_, i) => {
-    const mean = fromDb(LOWEST_DB + i / PER_DB);
-    let sum = 0;
-    for (const gain of gains) sum += curve(mean * gain);
-    return sum / gains.length;
+    let mean = 0;
+    for (let j = 0; j < weights.length; j++) mean += weights[j] * plain[i + j];
+    return mean;
   });
   return (sinr) => {
     const place = Math.min(levels - 1, Math.max(0, (toDb(sinr) - LOWEST_DB) * PER_DB));

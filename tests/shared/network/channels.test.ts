@@ -24,6 +24,7 @@ describe("channels of a PHY", () => {
     expect(channelsInUse(radioSchema.parse({ phy: "ieee802154" }))).toEqual([26]);
     expect(channelsInUse(radioSchema.parse({ phy: "le-2m" }))).toEqual([39]);
     expect(channelsInUse(radioSchema.parse({ phy: "le-2m", channels: { list: [3, 1] } }))).toEqual([3, 1]);
+    expect(channelsInUse(radioSchema.parse({ phy: "ieee802154", channels: { list: [3, 12, 30] } }))).toEqual([12]);
   });
 });
 

@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { NOT_RECEIVED } from "#shared/network/flood.ts";
 import { FloodProcess } from "#shared/network/floods.ts";
-import { type LinkRow, meanLinks, ricianGains } from "#shared/network/link-table.ts";
+import { type LinkRow, meanLinks, ricianWeights } from "#shared/network/link-table.ts";
 import { receptionRatio } from "#shared/network/reception.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { at, type FloorInput, floorOf, scenarioOn, timingOf, within } from "./floors.ts";
@@ -76,14 +76,23 @@ describe("the table of links", () => {
     expect(of(meanLinks(timed, 5, 20), 1, 2).budget?.sinrDb).toBeLessThan(of(meanLinks(timed, 4, 20), 1, 2).budget?.sinrDb ?? 0);
   });
 
-  // Rice: mean 1 and variance (1 + 2K)/(1 + K)^2, by midpoints to a few percent.
-  it.each([-30, 0, 8])("averages over fading of K = %d dB with the moments of Rice's law", (kDb) => {
-    const gains = ricianGains(kDb);
+  // SciPy 1.17, ncx2.cdf(2 (1 + K) 10^(x/10), 2, 2 K): probability of a gain below x dB.
+  it.each([
+    [-30, { "-30": 0.00099949966770755, "-10": 0.0951625390158177, "-3": 0.3941888929408539, "2": 0.7950302821356626 }],
+    [0, { "-30": 0.0007357586372533648, "-10": 0.07334638735963499, "-3": 0.34647811872344497, "2": 0.796325326023 }],
+    [8, { "-30": 1.3553686974852373e-5, "-10": 0.004873688255989097, "-3": 0.15641123442666466, "2": 0.8727613664440851 }],
+  ])("averages over fading of K = %d dB with Rice's probabilities and moments", (kDb, below) => {
+    const weights = ricianWeights(kDb);
+    const levels = Array.from(weights, (_, i) => -70 + i / 8);
+    for (const [level, p] of Object.entries(below)) {
+      // Half of the level itself lies below it.
+      const sum = levels.reduce((total, x, i) => total + (weights[i] ?? 0) * (x < Number(level) ? 1 : x === Number(level) ? 0.5 : 0), 0);
+      expect(Math.abs(sum / p - 1)).toBeLessThan(2e-3);
+    }
     const k = 10 ** (kDb / 10);
-    const mean = gains.reduce((sum, g) => sum + g, 0) / gains.length;
-    const variance = gains.reduce((sum, g) => sum + (g - mean) ** 2, 0) / gains.length;
-    expect(Math.abs(mean - 1)).toBeLessThan(0.01);
-    expect(Math.abs(variance / ((1 + 2 * k) / (1 + k) ** 2) - 1)).toBeLessThan(0.08);
+    const moment = (of: (g: number) => number) => levels.reduce((total, x, i) => total + (weights[i] ?? 0) * of(10 ** (x / 10)), 0);
+    expect(Math.abs(moment((g) => g) - 1)).toBeLessThan(1e-5);
+    expect(Math.abs(moment((g) => (g - 1) ** 2) / ((1 + 2 * k) / (1 + k) ** 2) - 1)).toBeLessThan(1e-4);
   });
 });
 
@@ -128,7 +137,6 @@ describe("the table's reception ratio", () => {
     expect(prr).toBeGreaterThan(0.1);
     expect(prr).toBeLessThan(0.995);
     const floods = 20_000;
-    // The average over fading is good to about half a percent.
-    expect(Math.abs(measured(scenario, floods) - prr)).toBeLessThan(within(prr, floods) + 0.005);
+    expect(Math.abs(measured(scenario, floods) - prr)).toBeLessThan(within(prr, floods));
   });
 });
