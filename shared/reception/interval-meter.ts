@@ -1,6 +1,6 @@
 /**
  * The usual time from packet to packet in bounded memory: times are counted in bins 0.1 % wide; the answer is the mean of what
- * lies within half of the median, so that jitter averages out while pauses and doubled packets stay outside.
+ * lies below twice the median, so that jitter averages out while pauses stay outside.
  */
 import { ln } from "#shared/math/elementary.ts";
 
@@ -48,7 +48,7 @@ export class IntervalMeter {
     let sum = 0;
     for (const [, bin] of sorted) {
       const mean = bin.sum / bin.count;
-      if (mean < 0.5 * median || mean > 1.5 * median) continue;
+      if (mean > 2 * median) continue;
       count += bin.count;
       sum += bin.sum;
     }

@@ -106,16 +106,15 @@ export class LinkReader {
       this.begin(packet);
       return;
     }
-    const step = this.options.numbered ? this.step(packet.number) : 1;
+    const step = this.options.numbered ? this.throughWraps(packet, this.step(packet.number)) : 1;
     if (step <= 0) {
       const back = -step;
       if (back > this.late || (back > RECENT && (this.window.isBefore(back) || this.window.fate(back) !== UNSEEN))) this.hold(packet, step);
       else this.comesLate(packet, back);
       return;
     }
-    const whole = this.throughWraps(packet, step);
-    if (whole <= SURE || this.timeAgrees(packet, whole)) this.forward(packet, whole);
-    else this.hold(packet, whole);
+    if (step <= SURE || this.timeAgrees(packet, step)) this.forward(packet, step);
+    else this.hold(packet, step);
   }
 
   /** A row may come so many numbers late. */
@@ -199,7 +198,7 @@ export class LinkReader {
   /** An outage may be longer than the counter's whole range. A step of 1 or 2 says that nothing is missing: then the clock jumped. */
   private throughWraps(packet: Packet, step: number): number {
     const { wrapsAt } = this.options.counter;
-    if (!wrapsAt || step <= 2) return step;
+    if (!wrapsAt || step === 1 || step === 2) return step;
     const expected = this.stepsByTime(packet);
     if (!(expected > step + wrapsAt / 2 && expected <= MOST_LOST)) return step;
     return step + wrapsAt * Math.round((expected - step) / wrapsAt);
