@@ -92,15 +92,36 @@ describe("run", () => {
 });
 
 describe("round", () => {
-  it("prints the slot table and the latency", () => {
-    const { status, stdout } = holdfast("round", "examples/balancer-rig-1.json");
+  it("prints the slot table, the latency of every loop and what a round costs a node at most", () => {
+    const { status, stdout, stderr } = holdfast("round", "examples/balancer-rig-1.json");
+    expect(stderr).toBe("");
     expect(status).toBe(0);
-    expect(JSON.parse(stdout)).toMatchObject({
+    const answer = JSON.parse(stdout);
+    expect(answer).toMatchObject({
       fits: true,
-      commandDelay: 0,
-      latencyS: 0.025,
-      slots: [{ message: "beacon" }, { message: "measurement" }, { message: "command" }],
+      loops: [{ loop: "balancer", everyRounds: 1, commandDelay: 0, latencyS: 0.025 }],
+      slots: [
+        { id: "beacon", message: "beacon", copy: 1, everyRounds: 1 },
+        { message: "measurement", from: null },
+        { message: "command", to: null },
+      ],
+      energy: { device: "nRF52840, DC/DC", source: expect.stringMatching(/Nordic/), floor: null, floorNeeds: [] },
     });
+    const { bound } = answer.energy;
+    expect(bound.slots).toHaveLength(3);
+    expect(bound.radioOnS).toBeCloseTo(
+      answer.slots.reduce((sum: number, { startS, floodEndS }: { startS: number; floodEndS: number }) => sum + floodEndS - startS, 0),
+      12,
+    );
+  });
+
+  it("tells what each node spends on the floor, within the bound", () => {
+    const { energy } = JSON.parse(holdfast("round", "examples/balancer-rig-1-floor.json").stdout);
+    expect(energy.floor.nodes).toHaveLength(17);
+    for (const { radioOnS } of energy.floor.nodes) {
+      expect(radioOnS).toBeGreaterThan(0);
+      expect(radioOnS).toBeLessThanOrEqual(energy.bound.radioOnS);
+    }
   });
 
   it("tells what a round that does not fit would need, with exit code 1", () => {
@@ -110,5 +131,46 @@ describe("round", () => {
     expect(status).toBe(1);
     expect(JSON.parse(stdout).fits).toBe(false);
     expect(stderr).toMatch(/does not fit.*\n.*saves/);
+  });
+});
+
+describe("floods", () => {
+  const FLOOR = "examples/balancer-rig-1-floor.json";
+
+  it("prints what each node received, with intervals, the same for the same seed", () => {
+    const first = holdfast("floods", FLOOR, "--rounds", "100", "--seed", "3");
+    expect(first.status).toBe(0);
+    expect(first.stderr).toBe("");
+    const answer = JSON.parse(first.stdout);
+    expect(answer).toMatchObject({ rounds: 100, seed: 3, outagesLeftOut: [14] });
+    expect(answer.slots).toHaveLength(3);
+    for (const { nodes, floods } of answer.slots) {
+      expect(floods).toBe(100);
+      expect(nodes).toHaveLength(16);
+      for (const { ratio, lo, hi } of nodes) expect(lo <= ratio && ratio <= hi).toBe(true);
+      expect(nodes[0]).not.toHaveProperty("hops");
+    }
+    expect(answer.loops[0].both.of).toBe(100);
+    expect(Array.isArray(answer.advice)).toBe(true);
+    expect(holdfast("floods", FLOOR, "--rounds", "100", "--seed", "3").stdout).toBe(first.stdout);
+  });
+
+  it("adds the steps in which floods arrived", () => {
+    const [slot] = JSON.parse(holdfast("floods", FLOOR, "--rounds", "100", "--steps").stdout).slots;
+    expect(slot.reachedShare).toHaveLength(7);
+    for (const { hops, received } of slot.nodes) expect(hops.reduce((sum: number, count: number) => sum + count, 0)).toBe(received);
+  });
+
+  it.each([
+    ["a scenario without a floor", ["floods", "examples/balancer-rig-1.json"], /floor: .* has none; floods need a floor/],
+    ["fewer rounds than tell anything", ["floods", FLOOR, "--rounds", "3"], /--rounds is 3; permitted: whole numbers 100 to 1000000/],
+    ["an option of another command", ["floods", FLOOR, "--series", "x.csv"], /--series: only for run\./],
+    ["two files", ["floods", FLOOR, FLOOR], /one file at a time/],
+    ["a command that there is none", ["flood", FLOOR], /flood is not a command/],
+  ])("refuses %s on standard error with exit code 2", (_what, args, message) => {
+    const { status, stdout, stderr } = holdfast(...args);
+    expect(status).toBe(2);
+    expect(stdout).toBe("");
+    expect(stderr).toMatch(message);
   });
 });
