@@ -19,16 +19,17 @@ function uniform(seed: number): () => number {
   };
 }
 
-/** In chunks of some hundred rows, header first. */
-export function* csvChunks(rounds: number, seed = 1): Generator<string> {
+/** In chunks of some hundred rows, header first. `remark`: length of a column that nobody needs. */
+export function* csvChunks(rounds: number, seed = 1, remark = 0): Generator<string> {
   const next = uniform(seed);
   const bad = [false, false];
-  let text = "round,time,from,to,ok,rssi\n";
+  const end = `${remark > 0 ? `,${"-".repeat(remark - 1)}` : ""}\n`;
+  let text = `round,time,from,to,ok,rssi${end}`;
   for (let round = 0; round < rounds; round++) {
     for (const [link, node] of [3, 7].entries()) {
       bad[link] = next() < (bad[link] ? 0.7 : 0.02);
       const time = (round * 0.025).toFixed(3);
-      text += bad[link] ? `${round},${time},1,${node},0,\n` : `${round},${time},1,${node},1,-${60 + Math.floor(next() * 20)}\n`;
+      text += bad[link] ? `${round},${time},1,${node},0,${end}` : `${round},${time},1,${node},1,-${60 + Math.floor(next() * 20)}${end}`;
     }
     if (text.length < 60_000) continue;
     yield text;

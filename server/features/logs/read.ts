@@ -50,7 +50,7 @@ class Refused extends Error {
 
 /** gzip in pieces of one size, whatever sizes come out of the packer. */
 function packer() {
-  const gzip = createGzip({ level: 6 });
+  const gzip = createGzip({ level: 5 });
   const pieces: Uint8Array<ArrayBuffer>[] = [];
   let piece = new Uint8Array(PIECE_BYTES);
   let filled = 0;
