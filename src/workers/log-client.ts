@@ -13,14 +13,18 @@ const CANCELLED: Failed = { ok: false, cancelled: true };
 export function createLogClient(): LogClient {
   const worker = new Worker(new URL("./log.worker.ts", import.meta.url), { type: "module", name: "holdfast-log" });
   const remote: Remote<LogWorker> = wrap<LogWorker>(worker);
+  let stopped = false;
   const guard = guardWorker(worker, "reception log");
   return {
     preview: (file, split) => guard.call<PreviewOutcome>(() => remote.preview(file, split) as Promise<PreviewOutcome>, CANCELLED),
     read: (file, mapping, onProgress) =>
       guard.call<ReadOutcome>(() => remote.read(file, mapping, onProgress && proxy(onProgress)) as Promise<ReadOutcome>, CANCELLED),
     pack: (file, onProgress) => guard.call<PackOutcome>(() => remote.pack(file, onProgress && proxy(onProgress)) as Promise<PackOutcome>, CANCELLED),
-    cancel: () => void remote.cancel(),
+    cancel() {
+      if (!stopped) void remote.cancel();
+    },
     dispose() {
+      stopped = true;
       guard.dispose();
       remote[releaseProxy]();
       worker.terminate();

@@ -15,6 +15,7 @@ import { FormatDialog } from "./format-dialog.tsx";
 import { ColumnTable } from "./upload/column-table.tsx";
 import { FileDetails } from "./upload/file-details.tsx";
 import { FileDrop } from "./upload/file-drop.tsx";
+import { ReportTable } from "./upload/report-table.tsx";
 import { SavePart } from "./upload/save-part.tsx";
 import { useLogClient } from "./upload/use-log-client.ts";
 import { useSave } from "./upload/use-save.ts";
@@ -133,20 +134,23 @@ function Chosen({ file, client }: { file: File; client: LogClient }) {
         )}
         <FileDetails columns={columns} onChange={control.change} onSplit={control.split} />
       </section>
-      <section className="sheet pad" aria-labelledby="lg-read">
-        <h2 className="h2" id="lg-read">
-          What the whole file holds
-        </h2>
-        <WhatWasRead control={control} fileName={file.name} />
-      </section>
-      <SavePart
-        fileName={file.name}
-        saving={save.saving}
-        impossible={impossible}
-        onSave={(name) => reading.state === "done" && void save.save(file, name, reading.mapping, reading.reading)}
-        onCancel={save.cancel}
-        logPath={(log) => paths.log(team.id, log.id)}
-      />
+      <div className="sheet pad lg-read">
+        <section aria-labelledby="lg-read" className="min-w-0">
+          <h2 className="h2" id="lg-read">
+            What the whole file holds
+          </h2>
+          <WhatWasRead control={control} />
+        </section>
+        <SavePart
+          fileName={file.name}
+          saving={save.saving}
+          impossible={impossible}
+          onSave={(name) => reading.state === "done" && void save.save(file, name, reading.mapping, reading.reading)}
+          onCancel={save.cancel}
+          logPath={(log) => paths.log(team.id, log.id)}
+        />
+      </div>
+      {reading.state === "done" && <ReportTable report={reading.reading.report} name={file.name} />}
     </div>
   );
 }

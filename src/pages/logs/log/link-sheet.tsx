@@ -1,5 +1,4 @@
-import { useCallback, useMemo } from "react";
-import { wilson } from "#shared/math/statistics.ts";
+import { useMemo } from "react";
 import type { IndependenceVerdict } from "#shared/reception/independence.ts";
 import type { LinkTrace } from "#shared/reception/types.ts";
 import { verdictWords } from "#shared/reception/verdict-words.ts";
@@ -30,23 +29,21 @@ export function LinkSheet({ link, name }: { link: LinkTrace; name: string }) {
   const index = useMemo(() => indexRuns(link.runs), [link]);
   const { fit, independence } = useMemo(() => studyLink(link), [link]);
   const { headline, sentences } = useMemo(() => verdictWords({ trace: link, fit, test: independence }), [link, fit, independence]);
-  const interval = useCallback((lost: number, packets: number) => {
-    const [low, high] = wilson(lost, packets);
-    return { low, high };
-  }, []);
   const decided = MARKS[independence.verdict] !== "not-decided";
   return (
     <section className="sheet doc pad lg-sheet" aria-label={`Link ${name}`}>
       <div>
-        <VerdictLine state={MARKS[independence.verdict]} word={headline} sentence="" meta={name} />
-        <div className="lg-more">
-          {sentences.map((sentence) => (
-            <p key={sentence}>{sentence}</p>
-          ))}
+        <VerdictLine state={MARKS[independence.verdict]} word={headline} sentence="" meta={`link ${name}`} />
+        <div className="lg-top">
+          <div className="lg-more">
+            {sentences.map((sentence) => (
+              <p key={sentence}>{sentence}</p>
+            ))}
+          </div>
+          <LinkFiguresList link={link} fit={fit} />
         </div>
       </div>
-      <LinkFiguresList link={link} fit={fit} />
-      {link.packets > 0 && <LossPicture index={index} intervalS={link.intervalS} interval={interval} />}
+      {link.packets > 0 && <LossPicture link={link} index={index} />}
       {fit.streaks.length > 0 && (
         <div className="lg-two">
           <StreakPlot streaks={fit.streaks} />

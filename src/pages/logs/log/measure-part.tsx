@@ -47,7 +47,7 @@ export function MeasurePart({ packets, lost, intervalS, bursts }: MeasurePartPro
     reliability: "99.9",
     confidence: "95",
     allowed: "0",
-    period: String(Number(((intervalS ?? 0.02) * 1000).toPrecision(6))),
+    period: String(Number(((intervalS ?? 0.02) * 1000).toPrecision(3))),
   });
   const set = (key: keyof typeof texts) => (text: string) => setTexts((before) => ({ ...before, [key]: text }));
   const reliability = read(texts.reliability, RELIABILITY);

@@ -53,7 +53,7 @@ export function TestTable({ test, fit }: { test: IndependenceTest; fit: LinkFit 
   const rows = rowsOf(test, fit);
   if (rows.length === 0) return null;
   return (
-    <section aria-labelledby="lg-tests">
+    <section aria-labelledby="lg-tests" className="lg-tests">
       <div className="hrow">
         <h2 id="lg-tests">Are losses independent of each other?</h2>
         <span className="rt">verdict at {significant(test.significance * 100)} % false alarms over the first three together</span>

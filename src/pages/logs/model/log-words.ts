@@ -1,6 +1,6 @@
 /** Numbers and times of logs as the screens say them. */
 import { counted } from "#shared/reception/words.ts";
-import { capital, fixed, percentText, significant, withUnit } from "#src/lib/format.ts";
+import { capital, fixed, significant, withUnit } from "#src/lib/format.ts";
 
 export interface TimeScale {
   unit: string;
@@ -15,16 +15,12 @@ export function scaleOf(seconds: number): TimeScale {
   return seconds < 3 * 3600 ? { unit: "min", factor: 1 / 60 } : { unit: "h", factor: 1 / 3600 };
 }
 
-/** A loss ratio with figures enough to tell small ones apart: "3.2 %", "0.041 %", "0 %". */
-export function lossText(ratio: number): string {
-  if (ratio === 0) return withUnit("0", "%");
-  const percent = ratio * 100;
-  return percent >= 0.995 ? percentText(ratio) : withUnit(significant(percent, 2), "%");
-}
+/** A share of losses: "3.08 %", "0.041 %", "0 %". */
+export const lossText = (ratio: number): string => withUnit(significant(ratio * 100), "%");
 
 /** "2.9 to 3.5 %" */
 export function rangeOfLoss(low: number, high: number): string {
-  const digits = high * 100 >= 0.995 ? 1 : Math.min(6, Math.ceil(-Math.log10(Math.max(high * 100, 1e-9))) + 1);
+  const digits = Math.max(0, Math.min(8, 2 - Math.floor(Math.log10(Math.max(high * 100, 1e-9)))));
   return `${fixed(low * 100, digits)} to ${withUnit(fixed(high * 100, digits), "%")}`;
 }
 

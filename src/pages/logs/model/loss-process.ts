@@ -1,6 +1,7 @@
 /** From a log's links to a scenario's loss process: as it was received, or as a fitted process. */
+
+import { countTrace, piece } from "#shared/reception/trace.ts";
 import type { LossProcess } from "#shared/scenario/schema.ts";
-import { type RunIndex, runAt } from "./run-index.ts";
 
 /** As many run lengths as a scenario holds. */
 export const MOST_RUNS = 200_000;
@@ -12,6 +13,9 @@ export function roundsToEmbed(durationS: number, periodS: number): { rounds: num
   return { rounds, reserve: Math.max(LEAST_RESERVE, Math.ceil(rounds / 10)) };
 }
 
+/** A log that is quicker than the round: every so many-th of its packets stands for a round. */
+export const everyOf = (intervalS: number | null, periodS: number): number => (intervalS === null ? 1 : Math.max(1, Math.round(periodS / intervalS)));
+
 export interface Replayed {
   runs: number[];
   packets: number;
@@ -21,24 +25,12 @@ export interface Replayed {
 }
 
 /** The log from one packet on, as run lengths that begin with a delivered one (0 when the first is lost). */
-export function replayFrom(index: RunIndex, fromPacket: number, packets: number): Replayed {
-  const from = Math.max(0, Math.min(index.packets, Math.floor(fromPacket)));
-  const until = Math.min(index.packets, from + packets);
-  const runs: number[] = [];
-  let embedded = 0;
-  let lost = 0;
-  for (let run = runAt(index, from); run < index.runs.length && from + embedded < until; run++) {
-    const begin = Math.max(from, index.starts[run] as number);
-    const length = Math.min(until, index.starts[run + 1] as number) - begin;
-    if (length <= 0) continue;
-    const isLost = run % 2 === 1;
-    if (isLost && runs.length === 0) runs.push(0);
-    if (runs.length >= MOST_RUNS) return { runs, packets: embedded, lost, short: "runs" };
-    runs.push(length);
-    embedded += length;
-    if (isLost) lost += length;
-  }
-  return { runs, packets: embedded, lost, short: embedded < packets ? "log" : null };
+export function replayFrom(recorded: readonly number[], fromPacket: number, packets: number, every = 1): Replayed {
+  const taken = piece(recorded, fromPacket, packets, every);
+  const runs = taken.slice(0, MOST_RUNS);
+  const counts = countTrace(runs);
+  const short = taken.length > MOST_RUNS ? "runs" : counts.packets < packets ? "log" : null;
+  return { runs, packets: counts.packets, lost: counts.lost, short };
 }
 
 export const KINDS = ["replay", "gilbert-elliott", "bernoulli", "bernoulli-upper"] as const;

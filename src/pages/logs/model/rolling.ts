@@ -1,6 +1,8 @@
-/** Loss ratio over a window that moves along the log. */
+/** Loss ratio over a window that moves along the log, with its interval. */
+import { wilson } from "#shared/math/statistics.ts";
+import { rollingLoss } from "#shared/reception/trace.ts";
+import type { LinkTrace } from "#shared/reception/types.ts";
 import { niceStep } from "#src/components/plots/units.ts";
-import { lostBetween, type RunIndex } from "./run-index.ts";
 
 const POINTS = 240;
 /** Windows of which about this many lie side by side in the log. */
@@ -21,17 +23,12 @@ export interface Rolling {
   highest: number;
 }
 
-export type RatioInterval = (lost: number, packets: number) => { low: number; high: number };
-
-export function rollingLoss(index: RunIndex, interval: RatioInterval): Rolling {
-  const { packets } = index;
-  const window = Math.min(packets, Math.max(LEAST, niceStep(packets / WINDOWS)));
-  const room = packets - window;
-  const count = Math.min(POINTS, room + 1);
-  const points = Array.from({ length: Math.max(1, count) }, (_, i): RollingPoint => {
-    const from = count > 1 ? Math.round((i * room) / (count - 1)) : 0;
-    const lost = lostBetween(index, from, from + window);
-    return { at: from + window / 2, ratio: window > 0 ? lost / window : 0, ...interval(lost, Math.max(1, window)) };
+export function rollingWithInterval(link: Pick<LinkTrace, "runs" | "packets" | "intervalS">): Rolling {
+  const wanted = Math.max(LEAST, niceStep(link.packets / WINDOWS));
+  const { window, points } = rollingLoss(link, { points: POINTS, window: wanted });
+  const shown = points.map(({ packet, loss }): RollingPoint => {
+    const [low, high] = wilson(loss * window, window);
+    return { at: packet, ratio: loss, low, high };
   });
-  return { window, points, highest: Math.max(...points.map(({ high }) => high)) };
+  return { window, points: shown, highest: Math.max(0, ...shown.map(({ high }) => high)) };
 }

@@ -1,5 +1,5 @@
 import { niceStep } from "#src/components/plots/units.ts";
-import { fixed } from "#src/lib/format.ts";
+import { fixed, significant } from "#src/lib/format.ts";
 import { NeatAxis } from "./neat-axis.tsx";
 import { hatchedBands } from "./rock.tsx";
 import { usePictureWidth } from "./use-picture-width.ts";
@@ -12,7 +12,7 @@ interface CorrelationPlotProps {
 }
 
 const LEFT = 46;
-const TOP = 30;
+const TOP = 8;
 const PLOT = 128;
 const HEIGHT = TOP + PLOT + 44;
 
@@ -30,36 +30,34 @@ export function CorrelationPlot({ values, bound }: CorrelationPlotProps) {
   const xOf = (lag: number) => LEFT + (lag - 0.5) * slot;
   const decimals = Math.max(1, Math.ceil(-Math.log10(top) - 1e-9) + 1);
   return (
-    <figure className="lg-plot" ref={host as never}>
-      <svg width={width} height={HEIGHT} viewBox={`0 0 ${width} ${HEIGHT}`} role="img" aria-label={correlationText(values, bound)}>
-        <text x="0" y="14" className="txb">
-          Autocorrelation{" "}
-          <tspan className="it" fontWeight="400">
-            r
-          </tspan>
-          <tspan fontWeight="400">, by lag in packets; rock: outside of independence</tspan>
-        </text>
-        {hatchedBands([
-          { x: LEFT, y: TOP, width: right - LEFT, height: yOf(bound) - TOP },
-          { x: LEFT, y: yOf(-bound), width: right - LEFT, height: TOP + PLOT - yOf(-bound) },
-        ])}
-        <path d={`M${LEFT} ${yOf(bound)}H${right}M${LEFT} ${yOf(-bound)}H${right}`} className="lim" />
-        <path d={`M${LEFT} ${yOf(0)}H${right}`} className="hair2" />
-        {[
-          { value: top, text: fixed(top, decimals) },
-          { value: 0, text: "0" },
-        ].map(({ value, text }) => (
-          <text key={text} x={LEFT - 8} y={yOf(value) + 4} textAnchor="end" className="ax">
-            {text}
-          </text>
-        ))}
-        <path d={values.map((value, i) => `M${xOf(i + 1).toFixed(1)} ${yOf(0)}V${yOf(value).toFixed(1)}`).join("")} className="lg-stem" />
-        {values.map((value, i) => (
-          // biome-ignore lint/suspicious/noArrayIndexKey: lags are known by their place
-          <circle key={i} cx={xOf(i + 1)} cy={yOf(value)} r={Math.min(3.5, slot / 3)} className="lg-dot" />
-        ))}
-        <NeatAxis from={0.5} until={values.length + 0.5} left={LEFT} right={right} y={TOP + PLOT + 3} whole />
-      </svg>
+    <figure className="lg-plot">
+      <figcaption className="lg-cap">
+        <b>Autocorrelation</b> <i>r</i>, by lag in packets; rock: outside of ±{significant(bound, 2)}
+      </figcaption>
+      <div ref={host}>
+        <svg width={width} height={HEIGHT} viewBox={`0 0 ${width} ${HEIGHT}`} role="img" aria-label={correlationText(values, bound)}>
+          {hatchedBands([
+            { x: LEFT, y: TOP, width: right - LEFT, height: yOf(bound) - TOP },
+            { x: LEFT, y: yOf(-bound), width: right - LEFT, height: TOP + PLOT - yOf(-bound) },
+          ])}
+          <path d={`M${LEFT} ${yOf(bound)}H${right}M${LEFT} ${yOf(-bound)}H${right}`} className="lim" />
+          <path d={`M${LEFT} ${yOf(0)}H${right}`} className="hair2" />
+          {[
+            { value: top, text: fixed(top, decimals) },
+            { value: 0, text: "0" },
+          ].map(({ value, text }) => (
+            <text key={text} x={LEFT - 8} y={yOf(value) + 4} textAnchor="end" className="ax">
+              {text}
+            </text>
+          ))}
+          <path d={values.map((value, i) => `M${xOf(i + 1).toFixed(1)} ${yOf(0)}V${yOf(value).toFixed(1)}`).join("")} className="lg-stem" />
+          {values.map((value, i) => (
+            // biome-ignore lint/suspicious/noArrayIndexKey: lags are known by their place
+            <circle key={i} cx={xOf(i + 1)} cy={yOf(value)} r={Math.min(3.5, slot / 3)} className="lg-dot" />
+          ))}
+          <NeatAxis from={0.5} until={values.length + 0.5} left={LEFT} right={right} y={TOP + PLOT + 3} whole />
+        </svg>
+      </div>
     </figure>
   );
 }

@@ -1,21 +1,21 @@
 import { type KeyboardEvent, type PointerEvent, useMemo, useState } from "react";
+import type { LinkTrace } from "#shared/reception/types.ts";
 import { countText, durationText } from "#shared/reception/words.ts";
-import { niceStep } from "#src/components/plots/units.ts";
 import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
 import { lossText, packetsText, scaleOf } from "../model/log-words.ts";
-import { type RatioInterval, type Rolling, rollingLoss } from "../model/rolling.ts";
+import { type Rolling, rollingWithInterval } from "../model/rolling.ts";
 import { burstFrom, longestBurst, longestLossIn, lostBetween, type RunIndex } from "../model/run-index.ts";
 import { NeatAxis } from "./neat-axis.tsx";
+import { RollingPlot } from "./rolling-plot.tsx";
 import { TapeStrip } from "./tape-strip.tsx";
 import { usePictureWidth } from "./use-picture-width.ts";
 
 export interface LossPictureProps {
+  link: LinkTrace;
   index: RunIndex;
-  intervalS: number | null;
-  interval: RatioInterval;
 }
 
-const PLOT_TOP = 28;
+const PLOT_TOP = 8;
 const PLOT = 110;
 const TAPE = 14;
 const TAPE_TOP = PLOT_TOP + PLOT + 16;
@@ -45,13 +45,14 @@ const ZOOMS = new Map([
 ]);
 
 /** The whole log over time, and a stretch of it enlarged, packet by packet. */
-export function LossPicture({ index, intervalS, interval }: LossPictureProps) {
+export function LossPicture({ link, index }: LossPictureProps) {
+  const { intervalS } = link;
   const [host, width] = usePictureWidth();
   const narrow = width < 520;
   const left = narrow ? 38 : 46;
   const right = width - (narrow ? 10 : 74);
   const { packets } = index;
-  const rolling = useMemo(() => rollingLoss(index, interval), [index, interval]);
+  const rolling = useMemo(() => rollingWithInterval(link), [link]);
 
   const [length, setLength] = useState<number | null>(null);
   const stretch = Math.min(packets, length ?? Math.max(FEWEST, Math.round((right - left) / PER_PACKET)));
@@ -93,10 +94,29 @@ export function LossPicture({ index, intervalS, interval }: LossPictureProps) {
   const scale = intervalS === null ? null : scaleOf(packets * intervalS);
 
   return (
-    <div className="lg-loss" ref={host}>
+    <div className="lg-loss">
+      <p className="lg-cap">
+        <b>Lost</b> <i>p</i>, % over {packetsText(rolling.window)}
+        {intervalS !== null && `, ${durationText(rolling.window * intervalS)}`} at a time; band: 95 % interval
+      </p>
+      <div ref={host} />
       <div className="relative">
         <svg width={width} height={HEIGHT} viewBox={`0 0 ${width} ${HEIGHT}`} role="img" aria-label={pictureText(index, rolling)}>
-          <RollingPlot rolling={rolling} index={index} left={left} right={right} xOf={xOf} narrow={narrow} intervalS={intervalS} />
+          <RollingPlot
+            rolling={rolling}
+            ratio={packets > 0 ? index.lost / packets : 0}
+            left={left}
+            right={right}
+            top={PLOT_TOP}
+            height={PLOT}
+            xOf={xOf}
+            narrow={narrow}
+          />
+          {!narrow && (
+            <text x={right + 8} y={TAPE_TOP + TAPE - 2} className={index.lost > 0 ? "axc" : "ax"}>
+              {index.lost > 0 ? `${countText(index.lost)} lost` : "none lost"}
+            </text>
+          )}
           <TapeStrip index={index} fromPacket={0} untilPacket={packets} left={left} right={right} y={TAPE_TOP} height={TAPE} />
           {scale ? (
             <NeatAxis from={0} until={packets * (intervalS ?? 1)} left={left} right={right} y={AXIS} unit={scale.unit} factor={scale.factor} />
@@ -133,7 +153,9 @@ export function LossPicture({ index, intervalS, interval }: LossPictureProps) {
         </div>
       </div>
       <div className="lg-tools">
-        <p className="small">{said}</p>
+        <p className="small" role="status">
+          {said}
+        </p>
         <span className="lg-buttons">
           <Button
             small
@@ -170,82 +192,9 @@ export function LossPicture({ index, intervalS, interval }: LossPictureProps) {
           </ButtonPair>
         </span>
       </div>
-      <p className="vh" role="status">
-        {said}
-      </p>
     </div>
   );
 }
 
 const pictureText = ({ packets, lost }: RunIndex, { window, highest }: Rolling): string =>
   `Loss over the whole log: ${countText(lost)} of ${packetsText(packets)} lost. Over ${packetsText(window)} at a time, at most ${lossText(highest)} at the upper end of the 95 percent interval.`;
-
-interface RollingPlotProps {
-  rolling: Rolling;
-  index: RunIndex;
-  left: number;
-  right: number;
-  xOf: (packet: number) => number;
-  narrow: boolean;
-  intervalS: number | null;
-}
-
-function RollingPlot({ rolling: { window, points, highest }, index, left, right, xOf, narrow, intervalS }: RollingPlotProps) {
-  const top = Math.min(1, topOf(highest));
-  const yOf = (ratio: number) => PLOT_TOP + PLOT * (1 - Math.min(ratio, top) / top);
-  const line = (pick: (i: number) => number, order: number[]) =>
-    order.map((i) => `${xOf(points[i]?.at ?? 0).toFixed(1)} ${yOf(pick(i)).toFixed(1)}`).join("L");
-  const forth = points.map((_, i) => i);
-  const ratio = index.packets > 0 ? index.lost / index.packets : 0;
-  const over = intervalS === null ? packetsText(window) : `${packetsText(window)}, ${durationText(window * intervalS)}`;
-  const one = points.length === 1;
-  return (
-    <g>
-      <text x={0} y={14} className="txb">
-        Lost{" "}
-        <tspan className="it" fontWeight="400">
-          p
-        </tspan>
-        <tspan fontWeight="400">, % over {over} at a time; band: 95 % interval</tspan>
-      </text>
-      <path d={`M${left} ${yOf(0)}H${right}`} className="hair" />
-      <path d={`M${left} ${yOf(top)}H${right}`} className="hair" />
-      {!one && <path d={`M${line((i) => points[i]?.high ?? 0, forth)}L${line((i) => points[i]?.low ?? 0, forth.toReversed())}Z`} className="band" />}
-      {one && points[0] && (
-        <rect x={left} width={right - left} y={yOf(points[0].high)} height={yOf(points[0].low) - yOf(points[0].high)} className="band" />
-      )}
-      <path d={`M${left} ${yOf(ratio)}H${right}`} className="ref" />
-      {!narrow && (
-        <text x={right + 8} y={yOf(ratio) + 4} className="ax lg-sand">
-          all {lossText(ratio)}
-        </text>
-      )}
-      {one ? (
-        <path d={`M${left} ${yOf(points[0]?.ratio ?? 0)}H${right}`} className="sig" />
-      ) : (
-        <path d={`M${line((i) => points[i]?.ratio ?? 0, forth)}`} className="sig" />
-      )}
-      <text x={left - 8} y={yOf(0) + 4} textAnchor="end" className="ax">
-        0
-      </text>
-      <text x={left - 8} y={yOf(top) + 4} textAnchor="end" className="ax">
-        {Number((top * 100).toPrecision(3))}
-      </text>
-      <text x={right + 8} y={TAPE_TOP + TAPE - 2} className="axc">
-        {!narrow && index.lost > 0 ? `${countText(index.lost)} lost` : ""}
-      </text>
-      {!narrow && index.lost === 0 && (
-        <text x={right + 8} y={TAPE_TOP + TAPE - 2} className="ax">
-          none lost
-        </text>
-      )}
-    </g>
-  );
-}
-
-/** A round number of percent above the highest end. */
-function topOf(highest: number): number {
-  const least = Math.max(highest, 1e-4);
-  const step = niceStep(least / 4);
-  return Math.ceil(least / step - 1e-9) * step;
-}

@@ -2,16 +2,15 @@ import { useState } from "react";
 import { MAX_TROUBLES, type ReadReport, TROUBLE_KINDS, type Trouble, type TroubleKind } from "#shared/reception/types.ts";
 import { counted, countText } from "#shared/reception/words.ts";
 import { Button } from "#src/components/ui/button.tsx";
-import { Scroller } from "#src/components/ui/table.tsx";
 import { download, fileStem } from "#src/lib/download.ts";
 
 export const TROUBLE_WORDS: Record<TroubleKind, { one: string; many: string; about: string }> = {
   "bad-row": {
     one: "row that cannot be read",
     many: "rows that cannot be read",
-    about: "Left out; its packet counts as lost where its number is missing.",
+    about: "What cannot be read is left out; a missing number counts as lost.",
   },
-  duplicate: { one: "duplicate", many: "duplicates", about: "The same packet again; counted once, and received if any of them was." },
+  duplicate: { one: "duplicate", many: "duplicates", about: "The same packet again; counted once." },
   "out-of-order": { one: "row out of order", many: "rows out of order", about: "Put where its number belongs." },
   wrapped: { one: "wrap of the numbers", many: "wraps of the numbers", about: "The counter began anew at 0 and was counted on." },
   reset: { one: "reset of the numbers", many: "resets of the numbers", about: "The node began to count anew; the log goes on behind it." },
@@ -19,7 +18,7 @@ export const TROUBLE_WORDS: Record<TroubleKind, { one: string; many: string; abo
   "clock-jump": { one: "jump of the clock", many: "jumps of the clock", about: "The time goes back or leaps; the order follows the numbers." },
 };
 
-const FEW = 5;
+const FEW = 3;
 const found = (report: ReadReport) => TROUBLE_KINDS.filter((kind) => report.troubles[kind].count > 0);
 
 function csvOf(report: ReadReport): string {
@@ -73,29 +72,17 @@ function KindOfTrouble({ kind, count, first }: { kind: TroubleKind; count: numbe
         <b className="strong">{count >= 10_000 ? `${countText(count)} ${words.many}` : counted(count, words.one, words.many)}</b>{" "}
         <span className="second">{words.about}</span>
       </p>
-      <Scroller label={words.many}>
-        <table className="t num">
-          <thead className="vh">
-            <tr>
-              <th scope="col">Line</th>
-              <th scope="col">What is wrong</th>
-              <th scope="col">Link</th>
-              <th scope="col">Value in the file</th>
-            </tr>
-          </thead>
-          <tbody>
-            {shown.map((trouble, i) => (
-              // biome-ignore lint/suspicious/noArrayIndexKey: a line can have two troubles of a kind
-              <tr key={`${trouble.line} ${i}`}>
-                <td className="lg-at">line {countText(trouble.line)}</td>
-                <td>{trouble.message}</td>
-                <td className="nw second">{trouble.link}</td>
-                <td className="lg-value">{trouble.value}</td>
-              </tr>
-            ))}
-          </tbody>
-        </table>
-      </Scroller>
+      <ol className="lg-troubles" aria-label={words.many}>
+        {shown.map(({ line, link, message, value }, i) => (
+          // biome-ignore lint/suspicious/noArrayIndexKey: a line can have two troubles of a kind
+          <li key={`${line} ${i}`}>
+            <span className="at">line {countText(line)}</span>
+            <span>{message}</span>
+            <span className="of">{link}</span>
+            <span className="value">{value}</span>
+          </li>
+        ))}
+      </ol>
       {first.length > FEW && (
         <Button small kind="bare" onClick={() => setAll(!all)} aria-expanded={all}>
           {all ? "Show fewer" : count > MAX_TROUBLES ? `Show the first ${first.length}` : `Show all ${first.length}`}

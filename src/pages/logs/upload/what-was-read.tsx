@@ -6,13 +6,12 @@ import { Scroller } from "#src/components/ui/table.tsx";
 import { bytesText } from "#src/lib/format.ts";
 import type { LogReading } from "#src/workers/log-contract.ts";
 import { lossText, packetsText } from "../model/log-words.ts";
-import { ReportTable } from "./report-table.tsx";
 import type { UploadControl } from "./use-upload.ts";
 
 const FEW_LINKS = 12;
 
 /** What the whole file holds under the present columns: while it is read, and after. */
-export function WhatWasRead({ control, fileName }: { control: UploadControl; fileName: string }) {
+export function WhatWasRead({ control }: { control: UploadControl }) {
   const { reading } = control;
   if (reading.state === "reading") {
     const { bytes, ofBytes } = reading.progress;
@@ -51,14 +50,7 @@ export function WhatWasRead({ control, fileName }: { control: UploadControl; fil
     );
   }
   if (reading.state === "waiting") return <p className="second">The whole file is read as soon as the columns say what was lost.</p>;
-  return (
-    <>
-      <Sum reading={reading.reading} />
-      <div className="mt-6">
-        <ReportTable report={reading.reading.report} name={fileName} />
-      </div>
-    </>
-  );
+  return <Sum reading={reading.reading} />;
 }
 
 function Sum({ reading: { links } }: { reading: LogReading }) {

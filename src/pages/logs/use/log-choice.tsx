@@ -1,5 +1,6 @@
 import { useEffect, useId, useMemo, useState } from "react";
 import type { LogDetail } from "#shared/api/logs.ts";
+import { slowerThanRound } from "#shared/reception/claim.ts";
 import { type LinkTrace, linkName } from "#shared/reception/types.ts";
 import { counted, countText, durationText } from "#shared/reception/words.ts";
 import type { LossProcess } from "#shared/scenario/schema.ts";
@@ -8,8 +9,18 @@ import { PickField } from "#src/components/ui/choice.tsx";
 import { Field } from "#src/components/ui/field.tsx";
 import { msText } from "#src/lib/format.ts";
 import { lossText } from "../model/log-words.ts";
-import { fittedProcess, KINDS, MOST_RUNS, replayFrom, replayProcess, roundsToEmbed, type UseKind } from "../model/loss-process.ts";
-import { indexRuns, longestBurst, type RunIndex } from "../model/run-index.ts";
+import {
+  everyOf,
+  fittedProcess,
+  KINDS,
+  MOST_RUNS,
+  type Replayed,
+  replayFrom,
+  replayProcess,
+  roundsToEmbed,
+  type UseKind,
+} from "../model/loss-process.ts";
+import { indexRuns, longestBurst } from "../model/run-index.ts";
 import { figuresOf } from "../model/study.ts";
 import { TapeStrip } from "../pictures/tape-strip.tsx";
 import { usePictureWidth } from "../pictures/use-picture-width.ts";
@@ -60,18 +71,16 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
   const [startText, setStartText] = useState("0");
   const [then, setThen] = useState<"repeat" | "delivered" | "error">("repeat");
 
-  const indexes = useMemo(
-    () => [measurement, command].map((at) => indexRuns(links[at]?.runs ?? [])) as [RunIndex, RunIndex],
-    [links, measurement, command],
-  );
-  const figures = useMemo(() => [measurement, command].map((at) => figuresOf(links[at] as LinkTrace)), [links, measurement, command]);
+  const chosen = useMemo(() => [measurement, command].map((at) => links[at] as LinkTrace), [links, measurement, command]);
+  const every = useMemo(() => chosen.map(({ intervalS }) => everyOf(intervalS, periodS)), [chosen, periodS]);
+  const figures = useMemo(() => chosen.map((one, i) => figuresOf(one, every[i])), [chosen, every]);
   const { rounds, reserve } = roundsToEmbed(durationS, periodS);
-  const shortest = Math.min(indexes[0].packets, indexes[1].packets);
+  const shortest = Math.min(...chosen.map(({ packets }) => packets));
   const start = Number(startText.trim());
   const startWrong = startText.trim() === "" || !Number.isInteger(start) || start < 0 || start > shortest - 1;
   const replayed = useMemo(
-    () => indexes.map((index) => replayFrom(index, startWrong ? 0 : start, rounds + reserve)),
-    [indexes, startWrong, start, rounds, reserve],
+    () => chosen.map((one, i) => replayFrom(one.runs, startWrong ? 0 : start, rounds + reserve, every[i])),
+    [chosen, every, startWrong, start, rounds, reserve],
   );
   const tooFew = replayed.find(({ packets }) => packets < rounds);
 
@@ -79,25 +88,25 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
     ? "Nothing to fit: it needs a delivered packet, a lost one, and a delivered one after it, on both links."
     : null;
   const outcome = useMemo((): LogChoiceOutcome => {
-    const [first, second] = figures;
+    const [ofMeasurement, ofCommand] = figures;
     const [y, u] = replayed;
-    if (!first || !second || !y || !u) return { process: null, problem: "Choose the links first." };
+    if (!ofMeasurement || !ofCommand || !y || !u) return { process: null, problem: "Choose the links first." };
     if (kind !== "replay") {
-      const process = fittedProcess(kind, first, second);
+      const process = fittedProcess(kind, ofMeasurement, ofCommand);
       return { process, problem: process ? null : noChain };
     }
     if (startWrong) return { process: null, problem: `A replay starts at a packet from 0 to ${countText(shortest - 1)}.` };
-    const named = (at: number) => linkName(links[at] as LinkTrace).slice(0, 120);
+    const [first, second] = chosen.map((one) => linkName(one).slice(0, 120));
     return {
       process: replayProcess({
         log: { id: log.id, name: log.name },
-        measurement: { link: named(measurement), runs: y.runs },
-        command: { link: named(command), runs: u.runs },
+        measurement: { link: first ?? "", runs: y.runs },
+        command: { link: second ?? "", runs: u.runs },
         then: tooFew ? then : "error",
       }),
       problem: null,
     };
-  }, [figures, replayed, kind, noChain, startWrong, shortest, links, measurement, command, log.id, log.name, tooFew, then]);
+  }, [figures, replayed, kind, noChain, startWrong, shortest, chosen, log.id, log.name, tooFew, then]);
   useEffect(() => onOutcome(outcome), [outcome, onOutcome]);
 
   const group = useId();
@@ -105,8 +114,9 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
     value: String(at),
     word: `${linkName(one)}: ${one.packets > 0 ? lossText(one.lost / one.packets) : "no packet"} lost`,
   }));
-  const burst = longestBurst(indexes[0]);
-  const beforeBurst = burst ? Math.max(0, Math.min(burst.from - BEFORE_BURST, shortest - rounds - reserve)) : 0;
+  const burst = useMemo(() => longestBurst(indexRuns(chosen[0]?.runs ?? [])), [chosen]);
+  const widest = Math.max(...every);
+  const beforeBurst = burst ? Math.max(0, Math.min(burst.from - BEFORE_BURST * widest, shortest - (rounds + reserve) * widest)) : 0;
   return (
     <>
       <PickField
@@ -163,7 +173,7 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
               Before the longest burst
             </Button>
           </div>
-          <Embedded indexes={indexes} from={startWrong ? 0 : start} packets={replayed.map(({ packets }) => packets)} />
+          <Embedded replayed={replayed} />
           <p className="note second">
             The run needs {counted(rounds, "round")} of {msText(periodS)}; {countText(Math.max(...replayed.map(({ packets }) => packets)))} packets go
             into the scenario, a reserve of {countText(Math.max(0, Math.max(...replayed.map(({ packets }) => packets)) - rounds))}.
@@ -194,17 +204,17 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
               </div>
             ))}
           </dl>
-          <Pace links={[links[measurement], links[command]]} periodS={periodS} />
+          <Pace links={chosen} every={every} periodS={periodS} />
         </div>
       )}
     </>
   );
 }
 
-/** The stretch that goes into the scenario. */
-function Embedded({ indexes, from, packets }: { indexes: [RunIndex, RunIndex]; from: number; packets: number[] }) {
+/** The stretches that go into the scenario, round by round. */
+function Embedded({ replayed }: { replayed: readonly Replayed[] }) {
   const [host, width] = usePictureWidth();
-  const until = from + Math.max(1, ...packets);
+  const until = Math.max(1, ...replayed.map(({ packets }) => packets));
   return (
     <div ref={host}>
       <svg
@@ -212,15 +222,16 @@ function Embedded({ indexes, from, packets }: { indexes: [RunIndex, RunIndex]; f
         height="62"
         viewBox={`0 0 ${width} 62`}
         role="img"
-        aria-label="Loss tapes of the stretch that goes into the scenario"
+        aria-label="Loss tapes of what goes into the scenario, measurement above command"
         className="block max-w-full"
       >
-        {indexes.map((index, i) => (
-          <g key={["y", "u"][i]}>
+        {replayed.map(({ runs }, i) => (
+          // biome-ignore lint/suspicious/noArrayIndexKey: measurement and command
+          <g key={i}>
             <text x="4" y={14 + i * 30} className="ax it">
-              {["y", "u"][i]}
+              {i === 0 ? "y" : "u"}
             </text>
-            <TapeStrip index={index} fromPacket={from} untilPacket={until} left={18} right={width - 2} y={4 + i * 30} height={12} />
+            <TapeStrip index={indexRuns(runs)} fromPacket={0} untilPacket={until} left={18} right={width - 2} y={4 + i * 30} height={12} />
           </g>
         ))}
       </svg>
@@ -228,16 +239,30 @@ function Embedded({ indexes, from, packets }: { indexes: [RunIndex, RunIndex]; f
   );
 }
 
-/** One packet stands for one round, whatever time lay between packets. */
-function Pace({ links, periodS }: { links: (LinkTrace | undefined)[]; periodS: number }) {
-  const other = links.find((link) => link?.intervalS && Math.abs(link.intervalS - periodS) > 0.02 * periodS);
-  if (!other?.intervalS) return null;
-  return (
-    <p className="note second mt-2">
-      The log has one packet every {durationText(other.intervalS)}, your round takes {msText(periodS)}: one packet stands for one round.{" "}
-      {other.intervalS > periodS
-        ? `Bursts shorter than ${durationText(other.intervalS)} cannot be seen in this log.`
-        : "In rounds, bursts are then longer than they were in time."}
+interface PaceProps {
+  links: readonly LinkTrace[];
+  every: readonly number[];
+  periodS: number;
+}
+
+/** How the log's pace and the round's go together. */
+function Pace({ links, every, periodS }: PaceProps) {
+  const notes = links.flatMap((link, i) => {
+    const { slower, sentence } = slowerThanRound(link, periodS);
+    if (slower || link.intervalS === null) return sentence ? [`${sentence} Here one of its packets stands for one round.`] : [];
+    if ((every[i] ?? 1) > 1)
+      return [
+        `The log has one packet each ${durationText(link.intervalS)}, the round lasts ${durationText(periodS)}: of every ${every[i]} packets one stands for a round.`,
+      ];
+    if (periodS > 1.02 * link.intervalS)
+      return [
+        `The log has one packet each ${durationText(link.intervalS)}, the round lasts ${durationText(periodS)}: with one packet a round, bursts last a little longer than they did.`,
+      ];
+    return [];
+  });
+  return [...new Set(notes)].map((note) => (
+    <p key={note} className="note second mt-2">
+      {note}
     </p>
-  );
+  ));
 }
