@@ -1,8 +1,9 @@
 import { describe, expect, it } from "vitest";
 import { NO_SLOT, NOT_RECEIVED, RADIO_OFF } from "#shared/network/flood.ts";
 import { drawFloods, FloodProcess, type FloodRecord, senders } from "#shared/network/floods.ts";
+import { receptionRatio } from "#shared/network/reception.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
-import { at, type FloorInput, floorOf, type Setting, scenarioOn, timingOf } from "./floors.ts";
+import { at, type FloorInput, floorOf, type Setting, scenarioOn, timingOf, within } from "./floors.ts";
 
 const links = { type: "budget" as const, pathLoss: { type: "log-distance" as const, exponent: 3.95, lossAt1mDb: 40 } };
 /** A 3 x 4 grid of 40 m: neighbours hear each other, others hardly. */
@@ -229,6 +230,49 @@ describe("radio-on time of a run", () => {
 it("who sends in a step follows from the steps of first reception", () => {
   const one = scenario(floorOf(grid, { links }), { round: { hops: 3, transmissions: 2 } });
   expect(senders(one, timingOf(one), 0, [1, 0, NOT_RECEIVED, RADIO_OFF, 5])).toEqual([[1], [0], [1], [0], [], [4]]);
+});
+
+describe("two relays that send at once", () => {
+  const at1m = { ...links, pathLoss: { ...links.pathLoss, exponent: 4 }, captureDb: 3, concurrencyPenaltyDb: 3 };
+  const dbm = (distanceM: number) => -40 - 40 * Math.log10(distanceM);
+  const noiseDbm = -104.989700043;
+  const mw = (level: number) => 10 ** (level / 10);
+
+  /** Source in the middle of the left side, relays A and B, receiver to their right; only step 2 can reach the receiver. */
+  function reached(relayB: [number, number], receiverXM: number): { share: number; ratio: (signalMw: number) => number } {
+    const one = scenarioOn({
+      floor: floorOf(at([20, 100], [50, 100], relayB, [receiverXM, 100]), { links: at1m }),
+      nodes: { sensor: 1, controller: 4, actuator: 2 },
+      round: { beacon: null, hops: 2, transmissions: 1, periodS: 0.1 },
+    });
+    const slot = timingOf(one).slots.find(({ id }) => id === "main/measurement");
+    const steps = column(one, draw(one, ROUNDS), "main/measurement", 4);
+    for (const relay of [2, 3]) expect(column(one, draw(one, 50), "main/measurement", relay).every((step) => step === 1)).toBe(true);
+    expect(steps.every((step) => step === 2 || step === NOT_RECEIVED)).toBe(true);
+    const bytes = one.radio.headerBytes + (slot?.payloadBytes ?? 0);
+    const ratio = (signalMw: number) => receptionRatio("ieee802154", one.radio.reception, bytes, signalMw / mw(noiseDbm));
+    return { share: steps.filter((step) => step === 2).length / ROUNDS, ratio };
+  }
+  const ROUNDS = 20_000;
+
+  it("at equal power reach as one of them would: the sum, less the penalty", () => {
+    // B stands as far from the receiver as A, and hears the source.
+    const { share, ratio } = reached([51.6, 88], 92);
+    const [a, b] = [mw(dbm(42)), mw(dbm(Math.sqrt(40.4 ** 2 + 12 ** 2)))];
+    const p = ratio((a + b) * mw(-3));
+    expect(p).toBeGreaterThan(0.05);
+    expect(p).toBeLessThan(0.99);
+    expect(Math.abs(share - p)).toBeLessThan(within(p, ROUNDS) + 1e-5);
+  });
+
+  it("reach by the stronger alone when it is captured: the sum, without penalty", () => {
+    const { share, ratio } = reached([28, 100], 94);
+    const [a, b] = [mw(dbm(44)), mw(dbm(66))];
+    const p = ratio(a + b);
+    expect(p).toBeGreaterThan(0.05);
+    expect(p).toBeLessThan(0.99);
+    expect(Math.abs(share - p)).toBeLessThan(within(p, ROUNDS) + 1e-5);
+  });
 });
 
 describe("hopping", () => {
