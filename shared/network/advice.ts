@@ -3,7 +3,7 @@
  * same random numbers, with what it costs in the round. Works off a list of trials in chunks.
  */
 import type { Scenario } from "#shared/scenario/schema.ts";
-import { capital, messagesOf, nodeWords, percent } from "./advice-words.ts";
+import { capital, listWords, messagesOf, nodeWords, percent } from "./advice-words.ts";
 import { type Change, changesFor } from "./changes.ts";
 import { costWords, deepest, findings, type Pair, pairsOf } from "./findings.ts";
 import { meanLinks } from "./link-table.ts";
@@ -30,7 +30,9 @@ export interface Advice {
     | "too-few"
     | "not-needed"
     /** Something that helps; its edits make it. */
-    | "change";
+    | "change"
+    /** What was tried and does not. */
+    | "no-help";
   severity: "problem" | "warning" | "hint";
   /** Numbers of the nodes that it is about. */
   nodes: number[];
@@ -47,6 +49,11 @@ interface Trial {
   conclude: () => Advice | null;
 }
 
+interface Count {
+  count: number;
+  of: number;
+}
+
 interface Tried {
   change: Change;
   timing: RoundTiming;
@@ -59,6 +66,8 @@ const clamp = (value: number, lo: number, hi: number): number => Math.min(hi, Ma
 
 /** A node's outage cuts another one when that has less than this share of what it had. */
 const CUT = 0.5;
+/** A change helps when it takes away at least this share of the losses. */
+const LEAST_HELP = 0.25;
 /** A link that is as good as there. */
 const SOUND = 0.9;
 
@@ -208,48 +217,68 @@ export class Advisor {
   }
 
   /** Messages of the weakest pair that its node had. */
-  private had(tally: FloodTally, timing: RoundTiming, { slot, place }: Pair): { count: number; of: number } {
+  private had(tally: FloodTally, timing: RoundTiming, { slot, place }: Pair): Count {
     const id = this.timing.slots[slot].id;
     const message = tally.messages.find(({ slots: [first] }) => timing.slots[first].id === id);
     return { count: message?.received[place] ?? 0, of: message?.sent ?? 0 };
   }
 
-  /** What helped the weakest node, the best of each family, best first. */
+  /** What helped the weakest node, the best of each family, best first; and what did not. */
   private changes(): Advice[] {
-    const { scenario, timing, survey, weakest, before } = this;
+    const { timing, weakest, before } = this;
     if (!weakest || !before?.finished) return [];
     const now = this.had(before, timing, weakest);
+    const helps = Math.max(1, LEAST_HELP * (now.of - now.count));
     const outcomes = this.tried
       .filter(({ tally }) => tally.finished)
       .map((tried) => ({ ...tried, then: this.had(tried.tally, tried.timing, weakest) }))
-      .filter(({ then }) => then.count > now.count)
       .sort((a, b) => b.then.count - a.then.count || b.timing.reserveS - a.timing.reserveS);
-    const families = new Set<string>();
-    return outcomes.flatMap(({ change, timing: changed, then }): Advice[] => {
-      if (families.has(change.family)) return [];
-      families.add(change.family);
-      const node = survey.nodes[weakest.place];
-      const share = ({ count, of }: { count: number; of: number }) => (of > 0 ? count / of : 0);
-      return [
-        {
-          kind: "change",
-          severity: "hint",
-          nodes: [...new Set([node, ...change.nodes])],
-          slot: timing.slots[weakest.slot].id,
-          text: `${change.text}: ${nodeWords(scenario, node)} would have ${percent(share(then))} of the ${messagesOf(timing, weakest.slot)} instead of ${percent(share(now))}. ${costWords(timing, changed)}`,
-          figures: [
-            { label: "delivered now", value: share(now), unit: "" },
-            { label: "delivered then", value: share(then), unit: "" },
-            { label: "floods", value: then.of, unit: "" },
-            { label: "time added to the round", value: timing.reserveS - changed.reserveS, unit: "s" },
-            { label: "reserve then", value: changed.reserveS, unit: "s" },
-          ],
-          edits: change.edits,
-        },
-      ];
-    });
+    const best = outcomes.filter(({ change }, i) => outcomes.findIndex((other) => other.change.family === change.family) === i);
+    const good = best.filter(({ then }) => then.count - now.count >= helps);
+    const idle = best.filter(({ then }) => then.count - now.count < helps);
+    return [...good.map((outcome) => this.helpful(outcome, now, weakest)), ...this.unhelpful(idle, weakest)];
+  }
+
+  private helpful({ change, timing: changed, then }: Tried & { then: Count }, now: Count, weakest: Pair): Advice {
+    const { scenario, timing, survey } = this;
+    const node = survey.nodes[weakest.place];
+    return {
+      kind: "change",
+      severity: "hint",
+      nodes: [...new Set([node, ...change.nodes])],
+      slot: timing.slots[weakest.slot].id,
+      text: `${change.text}: ${nodeWords(scenario, node)} would have ${percent(share(then))} of the ${messagesOf(timing, weakest.slot)} instead of ${percent(share(now))}. ${costWords(timing, changed)}`,
+      figures: [
+        { label: "delivered now", value: share(now), unit: "" },
+        { label: "delivered then", value: share(then), unit: "" },
+        { label: "floods", value: then.of, unit: "" },
+        { label: "time added to the round", value: timing.reserveS - changed.reserveS, unit: "s" },
+        { label: "reserve then", value: changed.reserveS, unit: "s" },
+      ],
+      edits: change.edits,
+    };
+  }
+
+  private unhelpful(idle: readonly Tried[], weakest: Pair): Advice[] {
+    const { scenario, timing, survey } = this;
+    if (idle.length === 0) return [];
+    const node = survey.nodes[weakest.place];
+    const tried = listWords(idle.map(({ change }) => change.short));
+    return [
+      {
+        kind: "no-help",
+        severity: "hint",
+        nodes: [node],
+        slot: timing.slots[weakest.slot].id,
+        text: `Tried for ${nodeWords(scenario, node)}, without much effect: ${tried}.`,
+        figures: [],
+        edits: [],
+      },
+    ];
   }
 }
+
+const share = ({ count, of }: Count): number => (of > 0 ? count / of : 0);
 
 const RANKS = { problem: 0, warning: 1, hint: 3 };
 const rank = ({ kind, severity }: Advice): number => (kind === "change" ? 2 : RANKS[severity]);

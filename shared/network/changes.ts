@@ -11,6 +11,8 @@ export interface Change {
   /** Of one family only the best is offered. */
   family: "transmissions" | "hops" | "slack" | "copies" | "channels" | "relay";
   text: string;
+  /** Within a list of what was tried. */
+  short: string;
   edits: Edit[];
   /** Nodes that it is about. */
   nodes: number[];
@@ -27,15 +29,33 @@ export function changesFor(scenario: Scenario, timing: RoundTiming, ids: readonl
   const changes: Change[] = [];
   if (round.transmissions < 10) {
     const n = round.transmissions + 1;
-    changes.push({ family: "transmissions", text: `${n} instead of ${n - 1} transmissions per node`, edits: inRound("transmissions", n), nodes: [] });
+    changes.push({
+      family: "transmissions",
+      text: `${n} instead of ${n - 1} transmissions per node`,
+      short: "one more transmission per node",
+      edits: inRound("transmissions", n),
+      nodes: [],
+    });
   }
   const hops = Math.min(20, Math.max(round.hops + 1, deepest));
   if (hops > round.hops) {
-    changes.push({ family: "hops", text: `A hop bound of ${hops} instead of ${round.hops}`, edits: inRound("hops", hops), nodes: [] });
+    changes.push({
+      family: "hops",
+      text: `A hop bound of ${hops} instead of ${round.hops}`,
+      short: `a hop bound of ${hops}`,
+      edits: inRound("hops", hops),
+      nodes: [],
+    });
   }
   if (round.slackSteps < 20) {
     const slack = round.slackSteps + 1;
-    changes.push({ family: "slack", text: slack === 1 ? "One slack step" : `${slack} slack steps`, edits: inRound("slackSteps", slack), nodes: [] });
+    changes.push({
+      family: "slack",
+      text: slack === 1 ? "One slack step" : `${slack} slack steps`,
+      short: "one more slack step",
+      edits: inRound("slackSteps", slack),
+      nodes: [],
+    });
   }
   return [...changes, ...secondSlot(scenario, timing, weakest), ...otherChannels(scenario), ...relays(scenario, timing, ids, weakest, node)];
 }
@@ -49,6 +69,7 @@ function secondSlot(scenario: Scenario, timing: RoundTiming, { slot }: Pair): Ch
     {
       family: "copies",
       text: `A second slot for the ${message === "other" ? `message "${timing.slots[slot].label}"` : label}`,
+      short: "a second slot",
       edits: [{ path, value: 2 }],
       nodes: [],
     },
@@ -82,7 +103,7 @@ function otherChannels({ floor, radio }: Scenario): Change[] {
   if (disturbed.length === 0 || free.length === 0) return [];
   const by = [...new Set(disturbed.flatMap(({ overlaps }) => overlaps.map(({ name }) => name)))];
   const text = `Only ${free.length === 1 ? "the channel" : "channels"} that ${listWords(by)} ${by.length > 1 ? "do" : "does"} not reach, ${rangesWords(free)}`;
-  return [{ family: "channels", text, edits: [{ path: ["radio", "channels", "list"], value: free }], nodes: [] }];
+  return [{ family: "channels", text, short: "other channels", edits: [{ path: ["radio", "channels", "list"], value: free }], nodes: [] }];
 }
 
 /** One more node midway between the weak one and those that it hears best, or the sender. */
@@ -107,6 +128,7 @@ function relays(scenario: Scenario, timing: RoundTiming, ids: readonly number[],
       {
         family: "relay",
         text: `A relay at ${xM} m across and ${yM} m down, midway between ${nodeWords(scenario, other)} and ${nodeWords(scenario, node)}`,
+        short: "a relay midway to one of its neighbours or to the sender",
         edits: [{ path: ["floor", "nodes"], value: [...floor.nodes, relay] }],
         nodes: [node, other],
       },

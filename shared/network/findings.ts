@@ -58,9 +58,19 @@ function weakNodes(scenario: Scenario, timing: RoundTiming, tally: FloodTally, p
   return Array.from(worst.values(), ({ slot, place, count, of, ratio }): Advice => {
     const node = tally.nodes[place];
     const [lo, hi] = clopperPearson(count, of);
-    const best = linksTo(meanLinks(scenario, 0, timing.slots[slot].payloadBytes), node).slice(0, NEIGHBOURS);
-    const links = best.map(({ from, prr }) => `from ${nodeWords(scenario, from)}, ${percent(prr)}`);
-    const neighbours = best.length > 0 ? `Best links to it: ${links.join("; ")}.` : "No link reaches it.";
+    const links = meanLinks(scenario, 0, timing.slots[slot].payloadBytes);
+    const best = linksTo(links, node).slice(0, NEIGHBOURS);
+    const source = timing.slots[slot].from;
+    const out = links
+      .filter(({ from, to, prr }) => from === source && to !== node && prr >= 0.01)
+      .sort((a, b) => b.prr - a.prr)
+      .slice(0, NEIGHBOURS);
+    const named = (rows: readonly LinkRow[], end: "from" | "to") =>
+      rows.map((row) => `${end} ${nodeWords(scenario, row[end])}, ${percent(row.prr)}`).join("; ");
+    // Where the sender's way into the floor is the narrower one, it is the one to look at.
+    const narrow = source !== null && (out[0]?.prr ?? 0) < (best[0]?.prr ?? 0);
+    const sender = narrow ? ` Best links from its sender, ${nodeWords(scenario, source)}: ${named(out, "to") || "none"}.` : "";
+    const neighbours = best.length > 0 ? `Best links to it: ${named(best, "from")}.${sender}` : "No link reaches it.";
     const moves = scenario.floor?.nodes[place].wayPoints.length ? " Links are those at the start; the node moves." : "";
     const sure = hi < target ? `less than the ${wanted(target)} wanted` : `by this count less than the ${wanted(target)} wanted`;
     return {

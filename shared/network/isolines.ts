@@ -77,6 +77,8 @@ export function isolines(grid: Grid, values: ArrayLike<number>, level: number): 
     out.push(px, py);
   };
 
+  // Half a cell is as little as the grid can tell from nothing.
+  const speck = (grid.widthM * grid.depthM) / (columns - 1) / (rows - 1) / 2;
   const rings: number[][] = [];
   const done = new Set<number>();
   for (const start of next.keys()) {
@@ -87,9 +89,19 @@ export function isolines(grid: Grid, values: ArrayLike<number>, level: number): 
       point(edge, ring);
     }
     if (ring.length > 2 && ring[0] === ring[ring.length - 2] && ring[1] === ring[ring.length - 1]) ring.length -= 2;
-    if (ring.length >= 6) rings.push(ring);
+    if (Math.abs(areaOf(ring)) >= speck) rings.push(ring);
   }
   return { rings, shores: rings.flatMap((ring) => shoresOf(ring, grid)) };
+}
+
+/** Signed, m². */
+function areaOf(ring: readonly number[]): number {
+  let twice = 0;
+  for (let i = 0; i < ring.length; i += 2) {
+    const j = (i + 2) % ring.length;
+    twice += ring[i] * ring[j + 1] - ring[j] * ring[i + 1];
+  }
+  return twice / 2;
 }
 
 function shoresOf(ring: readonly number[], { widthM, depthM }: Grid): number[][] {
