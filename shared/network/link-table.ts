@@ -35,7 +35,7 @@ export interface LinkRow {
 }
 
 /** Interferers that are followed on and off one by one; weaker ones count with their mean power. */
-const MOST_INTERFERERS = 8;
+const MOST_INTERFERERS = 6;
 
 /**
  * All ordered pairs, sender by sender in the floor's order, at an instant, for packets with so many bytes of payload (the
