@@ -110,15 +110,18 @@ async function administer(clusterUrl: string, statement: string): Promise<void> 
   }
 }
 
-/** A fresh, migrated database. Uses the cluster at HOLDFAST_TEST_CLUSTER_URL, or starts one of its own. */
-export async function createTestDatabase(clusterUrl = process.env.HOLDFAST_TEST_CLUSTER_URL): Promise<TestDatabase> {
+/** A fresh database, migrated unless told otherwise. Uses the cluster at HOLDFAST_TEST_CLUSTER_URL, or starts one of its own. */
+export async function createTestDatabase(
+  clusterUrl = process.env.HOLDFAST_TEST_CLUSTER_URL,
+  migrate: (url: string) => Promise<unknown> = migrateDatabase,
+): Promise<TestDatabase> {
   const cluster = clusterUrl ? null : await startTestCluster();
   const admin = clusterUrl ?? (cluster as TestCluster).url;
   const name = `holdfast_test_${randomBytes(6).toString("hex")}`;
   await administer(admin, `create database ${name}`);
   const url = new URL(admin);
   url.pathname = `/${name}`;
-  await migrateDatabase(url.href);
+  await migrate(url.href);
   return {
     url: url.href,
     remove: () => (cluster ? cluster.remove() : administer(admin, `drop database if exists ${name} with (force)`)),
