@@ -58,14 +58,13 @@ export interface RibbonScale {
   xOf(seconds: number): number;
 }
 
-/** All that happens has to be shown, and at least what lies before untilS. */
+/** The longest instant that has to be shown. */
+export const drawnUntilS = (timing: RoundPicture): number =>
+  Math.max(timing.periodS, slotsEndS(timing) + timing.guardS, ...timing.loops.flatMap((loop) => [loop.actAtS, loop.computeUntilS]));
+
+/** All that happens, and at least what lies before untilS. */
 export function ribbonScale(timing: RoundPicture, left: number, right: number, untilS = 0): RibbonScale {
-  const endS = Math.max(
-    untilS,
-    timing.periodS,
-    slotsEndS(timing) + timing.guardS,
-    ...timing.loops.flatMap((loop) => [loop.actAtS, loop.computeUntilS]),
-  );
+  const endS = Math.max(untilS, drawnUntilS(timing));
   const xOf = (seconds: number) => left + (seconds / endS) * (right - left);
   return { left, right, endS, post: xOf(timing.periodS), xOf };
 }

@@ -29,7 +29,16 @@ const nameOf = (loop: LoopTiming): string => (loop.everyRounds > 1 ? `${loop.nam
 /** Room that the lanes of several loops take. */
 export function lanesLayout(timing: RoundPicture, width: number, measure: Measure): LanesLayout {
   const beside = width >= 560;
-  const nameWidth = beside ? Math.min(LONGEST_NAME, Math.max(...timing.loops.map(({ name }) => measure(name, "axis")))) : 0;
+  const nameWidth = beside
+    ? Math.min(
+        LONGEST_NAME,
+        Math.max(
+          ...timing.loops.map((loop) =>
+            Math.max(measure(loop.name, "strong"), loop.everyRounds > 1 ? measure(`rounds ${roundsText(loop)}`, "axis") : 0),
+          ),
+        ),
+      )
+    : 0;
   const figureWidth = Math.max(measure("latency τ", "axis"), ...timing.loops.map(({ latencyS }) => measure(ms(latencyS), "strong"))) + 4;
   const pitch = beside ? (timing.loops.some(({ everyRounds }) => everyRounds > 1) ? 34 : 25) : 38;
   return { beside, nameWidth, figureWidth, pitch, height: timing.loops.length * pitch + 18 };

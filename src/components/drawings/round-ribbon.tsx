@@ -37,7 +37,7 @@ const ms = (seconds: number) => withUnit(fixed(seconds * 1000, 2), "ms");
 /** Height of the stairs: of one line, and of each where slots of different rounds share a place. */
 const STAIRS = 44;
 const STAIRS_OF_MANY = 27;
-const LINE_GAP = 11;
+const LINE_GAP = 18;
 
 interface Head {
   name: string;
@@ -272,7 +272,7 @@ function StairShape({ stair, base, height, number, selected, onSelect, known }: 
           </text>
         ))}
       <path d={`M${wake.from.toFixed(1)} ${base + 0.5}H${wake.until.toFixed(1)}`} className="wake" />
-      {number !== null && right - left >= (number > 9 ? 14 : 8) && (
+      {number !== null && (right - left >= (number > 9 ? 18 : 11) || (number % 5 === 0 && right - left >= 4)) && (
         <text x={(left + right) / 2} y={base - height - 3} className="txb halo2" textAnchor="middle">
           {number}
         </text>

@@ -13,6 +13,8 @@ export interface DialogProps {
   actions?: ReactNode;
   cancel?: string | null;
   broad?: boolean;
+  /** As wide as a picture of a round needs. */
+  wide?: boolean;
   /** Over other dialogs, and not closed by a press beside it or by Escape. */
   above?: boolean;
 }
@@ -23,7 +25,7 @@ function lasting(element: Element | null): Element | null {
   return button ? document.getElementById(button) : element;
 }
 
-export function Dialog({ open, onOpenChange, title, text, children, actions, cancel = "Cancel", broad, above }: DialogProps) {
+export function Dialog({ open, onOpenChange, title, text, children, actions, cancel = "Cancel", broad, wide, above }: DialogProps) {
   const shut = above ? (event: Event) => event.preventDefault() : undefined;
   // A press that begins on a text inside and ends on the veil (selecting words) closes nothing.
   const veil = useRef<HTMLDivElement>(null);
@@ -38,7 +40,7 @@ export function Dialog({ open, onOpenChange, title, text, children, actions, can
       <Radix.Portal>
         <Radix.Overlay className={`veil ${above ? "topmost" : ""}`} ref={veil}>
           <Radix.Content
-            className={`dialog ${broad ? "broad" : ""}`}
+            className={`dialog ${wide ? "wide" : broad ? "broad" : ""}`}
             aria-describedby={undefined}
             onCloseAutoFocus={(event) => {
               event.preventDefault();

@@ -33,7 +33,12 @@ export interface Bench {
 const LONG_MS = 500;
 
 /** Runs what is edited as soon as it is edited: the newest edit wins, older runs are given up. */
-export function useBench(engine: EngineClient | null, scenario: Scenario | null, timing: RoundTiming | null, seed: number | null): Bench {
+export function useBench(
+  engine: Pick<EngineClient, "run" | "cancel"> | null,
+  scenario: Scenario | null,
+  timing: RoundTiming | null,
+  seed: number | null,
+): Bench {
   const [run, setRun] = useState<BenchRun | null>(null);
   const [progress, setProgress] = useState<EngineProgress | null>(null);
   const [cancelled, setCancelled] = useState(false);

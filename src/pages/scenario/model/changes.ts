@@ -13,8 +13,10 @@ import {
   leafText,
 } from "./describe.ts";
 import { fieldSpec } from "./field-spec.ts";
+import { FLOOR_LISTS, FLOOR_OWNERS, FLOOR_WHOLES } from "./floor-words.ts";
 import { getAt, type Path, patternOf, sameJson } from "./json-path.ts";
 import { inputAt, signalNamed, stateAt } from "./machine.ts";
+import { ROUND_LISTS, ROUND_OWNERS, ROUND_WHOLES } from "./round-words.ts";
 
 export interface Change {
   path: string;
@@ -35,6 +37,8 @@ const lower = (text: string): string => text.charAt(0).toLowerCase() + text.slic
 
 /** Lists whose entries come and go: how to name an entry, and how to say all of it. */
 const LISTS: Record<string, { name: (json: unknown, path: Path) => string; say: (json: unknown, path: Path) => string }> = {
+  ...FLOOR_LISTS,
+  ...ROUND_LISTS,
   pushes: { name: (_, path) => nth("Push", path), say: (json, path) => describePush(json, Number(path.at(-1))) },
   changes: { name: (_, path) => nth("Change in mid-run", path), say: (json, path) => describeChange(json, Number(path.at(-1))) },
   limits: { name: (_, path) => nth("Limit", path), say: (json, path) => describeLimit(json, Number(path.at(-1))) },
@@ -87,6 +91,8 @@ function ownerOf(json: unknown, path: Path): string {
   if (/^losses\.process\.(measurement|command)\./.test(pattern)) return path[2] === "measurement" ? "Measurement" : "Command";
   if (pattern.startsWith("losses.process.channel")) return "Channel";
   if (pattern === "losses.process.measurement" || pattern === "losses.process.command") return "";
+  const owner = [...FLOOR_OWNERS, ...ROUND_OWNERS].find(([beginning]) => pattern.startsWith(beginning));
+  if (owner) return owner[1];
   if (pattern.startsWith("round.beacon.")) return "Beacon";
   if (pattern.startsWith("radio.") || pattern.startsWith("round.")) return "Round";
   return "";
@@ -107,6 +113,8 @@ function wholeText(json: unknown, path: Path): string {
   const list = typeof path.at(-1) === "number" ? LISTS[patternOf(path.slice(0, -1))] : undefined;
   if (list) return list.say(json, path);
   if (pattern === "losses.process") return describeProcess(value);
+  const whole = (FLOOR_WHOLES[pattern] ?? ROUND_WHOLES[pattern])?.(value);
+  if (whole) return whole;
   if (pattern.endsWith("encoding")) return describeEncoding(json, path);
   if (pattern === "round.beacon") return `${leafText(json, [...path, "payloadBytes"])}`;
   if (Array.isArray(value) && value.length > 0 && value.every((one) => one === 0 || one === 1))

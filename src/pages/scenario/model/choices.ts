@@ -46,6 +46,8 @@ export const PROCESS = [
   choice("gilbert-elliott", "In bursts, each message", "Gilbert-Elliott, one channel per message"),
   choice("gilbert-elliott-shared", "In bursts, both messages", "Gilbert-Elliott, one channel for all"),
   choice("given", "Given sequences", "Round by round, 1 delivered, 0 lost"),
+  choice("flood", "Floods over the floor", "Every flood is drawn step by step over the links of the floor"),
+  choice("replay", "Reception log, replayed", "Packet after packet as it was received, one a round"),
 ];
 export const STREAMS = [choice("own", "own"), choice("shared", "shared")];
 export const THEN = [choice("error", "an error"), choice("delivered", "delivered"), choice("repeat", "repeat")];
@@ -55,6 +57,18 @@ export const PHY = [...PHY_TIMINGS].reverse().map(({ phy, label }) => choice(phy
 export const RELAY = [
   choice("alternating", "alternating", "Send, listen, send, ..."),
   choice("back-to-back", "back-to-back", "All sends in a row after the first reception"),
+];
+
+export const HOPPING = [
+  choice("none", "stays on the first", "Of the list, only the first is used"),
+  choice("per-slot", "with every slot", "A flood stays on its channel"),
+  choice("per-step", "with every step", "One flood meets several channels"),
+];
+export const RECEPTION = [choice("formula", "formula"), choice("table", "table")];
+export const COPIES = [choice("1", "one slot"), choice("2", "two slots")];
+export const BEACON_MISSED = [
+  choice("no", "node takes part", "The round is known without it"),
+  choice("yes", "node sits out", "It neither sends, relays nor receives in that round"),
 ];
 
 export const PROFILE = [choice("steps", "steps"), choice("ramps", "ramps"), choice("sine", "sine")];
@@ -92,6 +106,10 @@ const BY_PATTERN: Record<string, readonly Choice[]> = {
   "losses.process.then": THEN,
   "losses.streams": STREAMS,
   "radio.phy": PHY,
+  "radio.channels.hopping": HOPPING,
+  "radio.reception.type": RECEPTION,
+  "round.otherLoops[].placement": PLACEMENT,
+  "round.otherLoops[].commandTravels": TRAVELS,
   "round.relay": RELAY,
   "pushes[].type": PUSH,
   "limits[].type": LIMIT,

@@ -1,5 +1,6 @@
 /** Parts of a scenario in a few words: for folded sections, list entries and lists of changes. Takes drafts as they are. */
 
+import type { LossProcess } from "#shared/scenario/schema.ts";
 import { counted, significant, withUnit } from "#src/lib/format.ts";
 import {
   ACKNOWLEDGEMENT,
@@ -18,6 +19,7 @@ import {
 import { fieldSpec } from "./field-spec.ts";
 import { getAt, type Path, patternOf } from "./json-path.ts";
 import { channelNamed, isHanging, plantOf, signalNamed } from "./machine.ts";
+import { replayText } from "./round-words.ts";
 import { MILLISECONDS, PERCENT, toScreen, valueText } from "./screen-unit.ts";
 
 type Entry = Record<string, unknown>;
@@ -98,8 +100,10 @@ export function describeSilence(json: unknown): string {
   return `${wordOf(SILENCE, entry(silence).reaction)} after ${entry(silence).afterLost} lost`;
 }
 
-export function describeTiming(latencyS: number | null): string {
-  return latencyS === null ? "" : `latency ${valueText(Number(latencyS.toPrecision(6)), MILLISECONDS)}`;
+export function describeTiming(timing: { latencyS: number; everyRounds: number } | null): string {
+  if (timing === null) return "";
+  const latency = `latency ${valueText(Number(timing.latencyS.toPrecision(6)), MILLISECONDS)}`;
+  return timing.everyRounds > 1 ? `every ${timing.everyRounds} rounds, ${latency}` : latency;
 }
 
 const share = (value: unknown): string => (typeof value === "number" ? valueText(value, PERCENT) : "none");
@@ -130,6 +134,8 @@ export function describeProcess(process: unknown): string {
   if (type === "gilbert-elliott") return `in bursts, ${ratioText(measurement)} and ${ratioText(command)}`;
   if (type === "gilbert-elliott-shared") return `in bursts for both, ${ratioText(channel)}`;
   if (type === "given") return `given: ${bits(measurement)}; ${bits(command)}`;
+  if (type === "flood") return "by floods over the floor";
+  if (type === "replay") return replayText(process as Extract<LossProcess, { type: "replay" }>);
   return type === "none" ? "none" : lower(wordOf(PROCESS, type));
 }
 

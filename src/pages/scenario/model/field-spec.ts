@@ -7,8 +7,10 @@ import type { Signal } from "#shared/plants/plant.ts";
 import { schemaAt } from "#shared/scenario/parse.ts";
 import { type QuantityMeta, quantityMeta } from "#shared/scenario/quantity.ts";
 import { scenarioSchema } from "#shared/scenario/schema.ts";
+import { FLOOR_RULES } from "./floor-rules.ts";
 import { getAt, type Path, patternOf } from "./json-path.ts";
 import { channelNamed, inputAt, isHanging, outputNamed, plantOf, signalNamed, stateAt } from "./machine.ts";
+import { RADIO_RULES } from "./radio-rules.ts";
 import { MICROSECONDS, MILLIMETRES, MILLISECONDS, numberText, PERCENT, type ScreenUnit, screenUnit, siUnit, toScreen } from "./screen-unit.ts";
 
 export interface FieldSpec {
@@ -43,7 +45,7 @@ const squared = (unit: string): string =>
 const smallLength = (unit: string): ScreenUnit => (unit === "m" ? MILLIMETRES : screenUnit(unit));
 const ofSignal = (signal: Signal | undefined): ScreenUnit => screenUnit(signal?.unit ?? "");
 
-interface Rule {
+export interface Rule {
   label?: (json: unknown, path: Path) => string;
   symbol?: string | ((json: unknown, path: Path) => string | undefined);
   unit?: ScreenUnit | ((json: unknown, path: Path) => ScreenUnit);
@@ -80,6 +82,8 @@ const pushUnit = (json: unknown, path: Path): ScreenUnit => {
 const parameterSpec = (json: unknown, path: Path) => fieldSpec(json, ["loops", 0, "plant", String(sibling(json, path, "parameter"))]);
 
 const RULES: Record<string, Rule> = {
+  ...FLOOR_RULES,
+  ...RADIO_RULES,
   name: { label: say("Name") },
   description: { label: say("Description") },
   "run.durationS": { label: say("Length") },
@@ -122,8 +126,8 @@ const RULES: Record<string, Rule> = {
   "loops[].sensor.signals[].noiseStd": { label: say("Noise, RMS"), unit: (json, path) => smallLength(sensorSignal(json, path)?.unit ?? "") },
   "loops[].sensor.signals[].encoding": { label: say("Encoded") },
   "loops[].sensor.signals[].encoding.bits": { label: say("Encoded on"), unit: siUnit("bits") },
-  "loops[].sensor.signals[].encoding.lo": { label: say("From"), unit: (json, path) => siUnit(sensorSignal(json, path)?.unit ?? "") },
-  "loops[].sensor.signals[].encoding.hi": { label: say("Up to"), unit: (json, path) => siUnit(sensorSignal(json, path)?.unit ?? "") },
+  "loops[].sensor.signals[].encoding.lo": { label: say("From"), unit: (json, path) => ofSignal(sensorSignal(json, path)) },
+  "loops[].sensor.signals[].encoding.hi": { label: say("Up to"), unit: (json, path) => ofSignal(sensorSignal(json, path)) },
   "loops[].sensor.noise.type": { label: say("Noise values") },
   "loops[].sensor.noise.values": { label: say("Given noise") },
   "loops[].sensor.noise.then": { label: say("Run longer than that") },
@@ -219,8 +223,6 @@ const RULES: Record<string, Rule> = {
   "loops[].references[].profile.amplitude": { label: say("Amplitude"), unit: (json, path) => ofSignal(driven(json, path)) },
   "loops[].references[].profile.phaseRad": { label: say("Phase"), unit: screenUnit("rad") },
 
-  "radio.phy": { label: say("PHY") },
-  "radio.turnaroundS": { label: say("Turnaround"), unit: MICROSECONDS },
   "round.periodS": { label: say("Period"), symbol: "T", unit: MILLISECONDS },
   "round.hops": { label: say("Hops, at most"), symbol: "H" },
   "round.transmissions": { label: say("Transmissions"), symbol: "N" },

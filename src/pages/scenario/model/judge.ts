@@ -4,11 +4,12 @@ import { checkScenario } from "#shared/scenario/check.ts";
 import type { Issue } from "#shared/scenario/issues.ts";
 import { parseScenario } from "#shared/scenario/parse.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
-import { counted, listed, withUnit } from "#src/lib/format.ts";
+import { counted, countText, listed, withUnit } from "#src/lib/format.ts";
 import type { Draft } from "./draft.ts";
 import { type FieldSpec, fieldSpec, rangeText } from "./field-spec.ts";
 import { getAt, type Path, parsePath } from "./json-path.ts";
 import { plantOf } from "./machine.ts";
+import { runsFacts } from "./round-words.ts";
 import { MILLISECONDS, valueText } from "./screen-unit.ts";
 
 export interface FieldIssue {
@@ -57,6 +58,16 @@ function inWordsOfTheForm(issue: Issue, json: unknown): FieldIssue {
     const lowest = [...at.slice(0, -1), "lo"];
     const bound = (where: Path) => valueText(Number(getAt(json, where)), fieldSpec(json, where).unit);
     return say(`The highest value ${bound(at)} is not above the lowest ${bound(lowest)}.`, "Enter a larger one, or leave one of them empty.");
+  }
+  if (code === "sequence-too-short" && path.endsWith(".runs")) {
+    const message = String(at.at(-2));
+    const { packets } = runsFacts(getAt(json, at) as number[]);
+    return packets === 0
+      ? say(`Nothing is recorded for the ${message}.`, "Use a reception log, or choose another process.")
+      : say(
+          `${countText(packets)} packets are recorded for the ${message}, and the run has more rounds.`,
+          "Shorten the run, or choose below what follows.",
+        );
   }
   if (code === "sequence-too-short") {
     const given = getAt(json, at);

@@ -33,7 +33,8 @@ const put = (...changes: Change[]): Edit => ({ kind: "put", json: (changes.at(-1
 
 export const append = (json: unknown, path: Path, value: unknown): Edit => put(inserted(json, path, listAt(json, path).length, value));
 export const remove = (json: unknown, path: Path, index: number): Edit => put(removed(json, path, index));
-export const duplicate = (json: unknown, path: Path, index: number): Edit => put(inserted(json, path, index + 1, listAt(json, path)[index]));
+export const duplicate = (json: unknown, path: Path, index: number, copyOf: (entry: unknown) => unknown = (entry) => entry): Edit =>
+  put(inserted(json, path, index + 1, copyOf(listAt(json, path)[index])));
 export const move = (json: unknown, path: Path, from: number, target: number): Edit => put(moved(json, path, from, target));
 
 /** Sensor signals are the order of the message; the filter's noise figures and given noise columns go along with them. */

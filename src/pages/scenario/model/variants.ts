@@ -3,10 +3,14 @@
  * with when it is chosen for the first time. What was set in a form before is kept by the page for the session.
  */
 import { designLoop } from "#shared/control/design.ts";
+import { receptionRatio } from "#shared/network/reception.ts";
 import { roundTiming } from "#shared/network/round.ts";
+import type { Phy } from "#shared/scenario/round-schema.ts";
 import type { Law, Scenario } from "#shared/scenario/schema.ts";
+import { FLOOR_FIRST } from "./floor-variants.ts";
 import { getAt, type Path, patternOf } from "./json-path.ts";
 import { outputNamed, plantOf } from "./machine.ts";
+import { runsFacts } from "./round-words.ts";
 
 type Node = Record<string, unknown>;
 const node = (value: unknown): Node => (value !== null && typeof value === "object" ? (value as Node) : {});
@@ -83,6 +87,10 @@ function presentLoss(json: unknown, message: "measurement" | "command"): number 
   const process = node(getAt(json, ["losses", "process"]));
   const part = process.type === "gilbert-elliott-shared" ? process.channel : process[message];
   if (typeof part === "number") return part;
+  if (process.type === "replay") {
+    const { packets, lost } = runsFacts(node(part).runs as number[]);
+    return packets > 0 ? lost / packets : 0.05;
+  }
   if (Array.isArray(part) && part.length > 0) return part.filter((bit) => bit === 0).length / part.length;
   const { goodToBad, badToGood, lossInGood, lossInBad } = node(part);
   const sum = number(goodToBad, 0) + number(badToGood, 0);
@@ -107,10 +115,32 @@ function firstProcess(type: string, json: unknown): Node {
       return { type, channel: bursts(loss("measurement")) };
     case "given":
       return { type, measurement: [1, 1, 0, 1, 1, 1, 1, 0, 1, 1], command: [1, 1, 1, 1, 0, 1, 1, 1, 1, 1], then: "repeat" };
+    case "flood":
+      return { type };
+    // Nothing is recorded before a log is chosen, and nothing is made up.
+    case "replay":
+      return { type, log: null, measurement: { link: "", runs: [] }, command: { link: "", runs: [] }, then: "repeat" };
     default:
       return { type: "none" };
   }
 }
+
+/** A table begins as the formula's own curve, from almost nothing to almost all, row by row. */
+function firstReception(type: string, json: unknown): Node {
+  if (type !== "table") return { type, codingGainS2Db: 4, codingGainS8Db: 8 };
+  const phy = getAt(json, ["radio", "phy"]) as Phy;
+  const present = node(getAt(json, ["radio", "reception"]));
+  const formula = { type: "formula" as const, codingGainS2Db: number(present.codingGainS2Db, 4), codingGainS8Db: number(present.codingGainS8Db, 8) };
+  const bytes = number(getAt(json, ["radio", "headerBytes"]), 4) + FIRST_PAYLOAD;
+  const all = Array.from({ length: 81 }, (_, i) => i / 2 - 20).map((snrDb) => ({
+    snrDb,
+    prr: Number(receptionRatio(phy, formula, bytes, 10 ** (snrDb / 10)).toFixed(4)),
+  }));
+  const from = Math.max(0, all.findIndex(({ prr }) => prr > 0) - 1);
+  const until = all.findIndex(({ prr }) => prr === 1);
+  return { type, name: "", rows: all.slice(from, until < 0 ? undefined : until + 1) };
+}
+const FIRST_PAYLOAD = 16;
 
 export const firstChannel = (json: unknown): string => plantOf(json)?.channels[0]?.name ?? "cart";
 
@@ -175,7 +205,9 @@ const FIRST: Record<string, (type: string, json: unknown, path: Path, known: Kno
     type === "given"
       ? { type, values: [Array((getAt(json, ["loops", 0, "sensor", "signals"]) as unknown[] | undefined)?.length ?? 1).fill(0)], then: "repeat" }
       : { type },
+  ...FLOOR_FIRST,
   "losses.process": (type, json) => firstProcess(type, json),
+  "radio.reception": (type, json) => firstReception(type, json),
   "pushes[]": (type, json, path) => firstPush(type, json, path),
   "limits[]": (type, json, path) => firstLimit(type, json, path),
   "loops[].references[].profile": (type, json, path) => firstProfile(type, json, path),

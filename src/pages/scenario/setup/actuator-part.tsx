@@ -4,6 +4,7 @@ import { plantOf } from "../model/machine.ts";
 import { EncodingFields } from "./encoding-fields.tsx";
 import { ChoiceAt, NumberAt, SwitchAt } from "./fields.tsx";
 import { useForm } from "./form.tsx";
+import { CopiesAt } from "./node-fields.tsx";
 
 const ACTUATOR = ["loops", 0, "actuator"] as const;
 const at = (...keys: (string | number)[]) => [...ACTUATOR, ...keys];
@@ -41,6 +42,7 @@ export function ActuatorPart() {
           <EncodingFields path={at("inputs", i, "encoding")} first={{ lo: input.lo, hi: input.hi }} />
         </div>
       ))}
+      <CopiesAt path={at("copies")} />
       <p className="sub3">Drive</p>
       <NumberAt path={at("lagS")} />
       <NumberAt path={at("deadTimeS")} />

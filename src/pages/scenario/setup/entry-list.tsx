@@ -22,6 +22,8 @@ interface EntryListProps {
   none?: string;
   ordered?: boolean;
   copies?: boolean;
+  /** Entries with an id of their own: what a copy is. */
+  copyOf?: (entry: unknown) => unknown;
   /** Fewest and most entries. */
   least?: number;
   most: number;
@@ -33,7 +35,7 @@ interface EntryListProps {
 
 /** A list of the set-up: entries fold; they are added, copied, removed and, where the order matters, moved by keyboard too. */
 export function EntryList(props: EntryListProps) {
-  const { path, noun, first, none, ordered = false, copies = false, least = 0, most, edits, addWord } = props;
+  const { path, noun, first, none, ordered = false, copies = false, copyOf, least = 0, most, edits, addWord } = props;
   const { draft, edit, readOnly } = useForm();
   const issue = useIssue(path);
   const box = useRef<HTMLDivElement>(null);
@@ -58,7 +60,7 @@ export function EntryList(props: EntryListProps) {
     focusAt(count, "input");
   };
   const copy = (index: number) => {
-    edit(duplicate(draft.json, path, index));
+    edit(duplicate(draft.json, path, index, copyOf));
     shift((at) => (at > index ? at + 1 : at));
     setOpen((before) => new Set([...before, index + 1]));
     focusAt(index + 1, "input");

@@ -33,9 +33,11 @@ interface NumberAtProps {
   /** What an empty field means; without it a number is needed. */
   empty?: string;
   hint?: ReactNode;
+  /** Where a rule of the scenario leaves less than the field itself would permit. */
+  range?: string;
 }
 
-export function NumberAt({ path, label, empty, hint }: NumberAtProps) {
+export function NumberAt({ path, label, empty, hint, range }: NumberAtProps) {
   const { draft, edit, endStep, takeBack, readOnly } = useForm();
   const issue = useIssue(path);
   const spec = fieldSpec(draft.json, path);
@@ -72,7 +74,7 @@ export function NumberAt({ path, label, empty, hint }: NumberAtProps) {
       value={text}
       onText={type}
       unit={spec.unit.text}
-      range={fieldRangeText(spec)}
+      range={range ?? fieldRangeText(spec)}
       placeholder={empty}
       problem={asProblem(issue)}
       hint={hint}

@@ -20,7 +20,7 @@ import { TimingPart } from "./timing-part.tsx";
 
 const at = (key: string) => `loops[0].${key}`;
 const PLACEMENT = ["placement", "computeS", "acknowledgement", "limits"].map((key) => at(`controller.${key}`));
-const ACTUATOR = ["inputs", "lagS", "deadTimeS", "busTransferS"].map((key) => at(`actuator.${key}`));
+const ACTUATOR = ["inputs", "lagS", "deadTimeS", "busTransferS", "copies"].map((key) => at(`actuator.${key}`));
 
 /** One plant with its sensor, controller and actuator: what is set most often first, the rest in parts that fold. */
 export function LoopSection({ timing }: { timing: RoundTiming | null }) {
@@ -52,7 +52,7 @@ export function LoopSection({ timing }: { timing: RoundTiming | null }) {
       <Part title="Silence" sum={describeSilence(json)} owns={[at("actuator.silence")]}>
         <SilenceFields />
       </Part>
-      <Part title="Timing" sum={describeTiming(timing?.loops[0].latencyS ?? null)} owns={[at("timing")]}>
+      <Part title="Timing" sum={describeTiming(timing?.loops[0] ?? null)} owns={[at("timing")]}>
         <TimingPart timing={timing} />
       </Part>
     </SetupSection>

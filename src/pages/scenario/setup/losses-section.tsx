@@ -5,6 +5,7 @@ import { getAt, type Path } from "../model/json-path.ts";
 import { EntryList } from "./entry-list.tsx";
 import { ChoiceAt, NumberAt, PickAt } from "./fields.tsx";
 import { useForm } from "./form.tsx";
+import { FloodPart, ReplayPart, UseLog } from "./received-part.tsx";
 import { SequenceAt } from "./sequence-field.tsx";
 import { SetupSection } from "./setup-section.tsx";
 
@@ -38,6 +39,9 @@ export function LossesSection() {
           <PickAt path={[...PROCESS_PATH, "then"]} options={THEN} />
         </>
       )}
+      {type === "flood" && <FloodPart />}
+      {type === "replay" && <ReplayPart />}
+      <UseLog />
       {drawn && <ChoiceAt path={["losses", "streams"]} options={STREAMS} />}
       <p className="sub3">Outages</p>
       <EntryList

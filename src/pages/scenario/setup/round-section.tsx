@@ -1,14 +1,20 @@
+import { useState } from "react";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Saving } from "#shared/network/savings.ts";
+import type { RoundSettings } from "#shared/scenario/round-schema.ts";
 import { RoundRibbon } from "#src/components/drawings/round-ribbon.tsx";
 import { Button } from "#src/components/ui/button.tsx";
 import { counted, msText } from "#src/lib/format.ts";
-import { PHY, RELAY, wordOf } from "../model/choices.ts";
+import { BEACON_MISSED, PHY, RELAY, wordOf } from "../model/choices.ts";
 import { getAt } from "../model/json-path.ts";
+import { boundOf, boundText } from "../model/round-words.ts";
 import { applySaving } from "../model/savings.ts";
-import { ChoiceAt, NumberAt, PickAt, SwitchAt } from "./fields.tsx";
+import { PlacementsDialog } from "../placements/placements-dialog.tsx";
+import { ChoiceAt, NumberAt, SwitchAt } from "./fields.tsx";
 import { useForm } from "./form.tsx";
+import { Part } from "./part.tsx";
 import { SetupSection } from "./setup-section.tsx";
+import { OtherLoops, OtherMessages } from "./sharers-part.tsx";
 
 function sum(json: unknown, timing: RoundTiming | null): string {
   const period = msText(Number(getAt(json, ["round", "periodS"])), 5);
@@ -17,7 +23,12 @@ function sum(json: unknown, timing: RoundTiming | null): string {
 }
 
 export function RoundSection({ timing }: { timing: RoundTiming | null }) {
-  const { json } = useForm().draft;
+  const { draft, edit } = useForm();
+  const { json } = draft;
+  const [comparing, setComparing] = useState(false);
+  const beacon = getAt(json, ["round", "beacon"]) as RoundSettings["beacon"] | undefined;
+  const bound = boundOf(json, timing);
+  const listed = (key: "otherLoops" | "messages") => (getAt(json, ["round", key]) as unknown[] | undefined)?.length ?? 0;
   return (
     <SetupSection id="round" title="Round" sum={sum(json, timing)}>
       <NumberAt path={["round", "periodS"]} />
@@ -29,21 +40,39 @@ export function RoundSection({ timing }: { timing: RoundTiming | null }) {
               Reserve {msText(timing.reserveS)}; the shortest period is {msText(timing.shortestPeriodS, 5)}.
             </p>
           )}
+          {bound && timing.fits && <p className="note second">{boundText(bound)}</p>}
         </div>
       )}
       {timing && !timing.fits && <Savings timing={timing} />}
-      <PickAt path={["radio", "phy"]} options={PHY} />
+      <Button small onClick={() => setComparing(true)}>
+        Compare placements of the controller
+      </Button>
+      {comparing && <PlacementsDialog onClose={() => setComparing(false)} />}
       <NumberAt path={["round", "hops"]} />
       <NumberAt path={["round", "transmissions"]} />
       <ChoiceAt path={["round", "relay"]} options={RELAY} />
       <NumberAt path={["round", "slackSteps"]} />
-      <NumberAt path={["radio", "headerBytes"]} />
-      <NumberAt path={["radio", "turnaroundS"]} empty="standard" />
       <NumberAt path={["round", "wakeUpS"]} />
       <NumberAt path={["round", "gapS"]} />
       <NumberAt path={["round", "clockPpm"]} />
       <SwitchAt path={["round", "beacon"]} off="none" on="opens the round" first={() => ({ payloadBytes: 4, needed: false })} />
-      {getAt(json, ["round", "beacon"]) !== null && <NumberAt path={["round", "beacon", "payloadBytes"]} />}
+      {beacon && (
+        <>
+          <NumberAt path={["round", "beacon", "payloadBytes"]} />
+          <ChoiceAt
+            path={["round", "beacon", "needed"]}
+            options={BEACON_MISSED}
+            value={beacon.needed ? "yes" : "no"}
+            onChoose={(next) => edit({ kind: "set", path: ["round", "beacon", "needed"], value: next === "yes" })}
+          />
+        </>
+      )}
+      <Part title="Other loops in the round" sum={listed("otherLoops") === 0 ? "none" : String(listed("otherLoops"))} owns={["round.otherLoops"]}>
+        <OtherLoops />
+      </Part>
+      <Part title="Other messages" sum={listed("messages") === 0 ? "none" : String(listed("messages"))} owns={["round.messages"]}>
+        <OtherMessages />
+      </Part>
     </SetupSection>
   );
 }
@@ -64,7 +93,7 @@ function Savings({ timing }: { timing: RoundTiming }) {
                 {words(saving, draft.json)}
                 <span className="second">
                   {" "}
-                  saves {msText(saving.savesS)}
+                  {saving.change === "period" ? `adds ${msText(saving.savesS)}` : `saves ${msText(saving.savesS)}`}
                   {saving.savesS >= missing && saving.change !== "period" && ", enough"}
                 </span>
               </span>

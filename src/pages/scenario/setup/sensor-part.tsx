@@ -8,6 +8,7 @@ import { EncodingFields } from "./encoding-fields.tsx";
 import { EntryList } from "./entry-list.tsx";
 import { NumberAt, PickAt } from "./fields.tsx";
 import { useForm } from "./form.tsx";
+import { CopiesAt } from "./node-fields.tsx";
 import { SequenceAt } from "./sequence-field.tsx";
 
 const SENSOR = ["loops", 0, "sensor"] as const;
@@ -53,6 +54,7 @@ export function SensorPart() {
           <PickAt path={[...SENSOR, "noise", "then"]} options={NOISE_THEN} />
         </>
       )}
+      <CopiesAt path={[...SENSOR, "copies"]} />
       <NumberAt path={[...SENSOR, "busTransferS"]} />
     </>
   );

@@ -5,6 +5,7 @@ import { LoopSection } from "./loop-section.tsx";
 import { LossesSection } from "./losses-section.tsx";
 import { MachineSection } from "./machine-section.tsx";
 import { PushesSection } from "./pushes-section.tsx";
+import { RadioSection } from "./radio-section.tsx";
 import { ReferenceSection } from "./reference-section.tsx";
 import { RoundSection } from "./round-section.tsx";
 import { RunSection } from "./run-section.tsx";
@@ -17,6 +18,7 @@ export function Setup({ timing }: { timing: RoundTiming | null }) {
       <MachineSection />
       <LoopSection timing={timing} />
       <LossesSection />
+      <RadioSection timing={timing} />
       <RoundSection timing={timing} />
       <ReferenceSection />
       <PushesSection />

@@ -2,6 +2,7 @@ import type { RoundTiming } from "#shared/network/round.ts";
 import { msText } from "#src/lib/format.ts";
 import { TRAVELS } from "../model/choices.ts";
 import { ChoiceAt, NumberAt } from "./fields.tsx";
+import { Rhythm } from "./rhythm.tsx";
 
 const TIMING = ["loops", 0, "timing"] as const;
 
@@ -10,6 +11,7 @@ export function TimingPart({ timing }: { timing: RoundTiming | null }) {
   const span = own && `${msText(own.earliestActS - own.sampleAtS, 5)} to ${msText(own.latestActS - own.sampleAtS, 5)}`;
   return (
     <>
+      <Rhythm path={TIMING} />
       <NumberAt path={[...TIMING, "sampleAtS"]} />
       <ChoiceAt path={[...TIMING, "commandTravels"]} options={TRAVELS} />
       <NumberAt

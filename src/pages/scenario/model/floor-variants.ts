@@ -1,0 +1,39 @@
+/** What the forms of the floor's parts begin with when they are chosen for the first time. */
+import { getAt, type Path } from "./json-path.ts";
+
+type First = (type: string, json: unknown, path: Path) => unknown;
+
+const PATH_LOSS: Record<string, unknown> = {
+  "free-space": {},
+  "log-distance": { exponent: 3, lossAt1mDb: null },
+  "p1238-8": { environment: "commercial" },
+  "p1238-10": { environment: "industrial-nlos" },
+  "indoor-factory": { clutter: "DL" },
+};
+const ACTIVITY: Record<string, unknown> = {
+  always: {},
+  periodic: { onS: 0.01, offS: 0.02, phaseS: 0 },
+  random: { onShare: 0.3, meanOnS: 0.005 },
+};
+const COHERENCE: Record<string, unknown> = { speed: { leastMPerS: 0.5 }, time: { coherenceS: 0.05 } };
+
+export const FLOOR_FIRST: Record<string, First> = {
+  "floor.links.pathLoss": (type) => ({ type, ...(PATH_LOSS[type] as object) }),
+  "floor.interferers[].activity": (type) => ({ type, ...(ACTIVITY[type] as object) }),
+  "floor.links.fading.coherence": (type) => ({ type, ...(COHERENCE[type] as object) }),
+  "floor.links": (type, json) => {
+    if (type === "matrix") {
+      const count = (getAt(json, ["floor", "nodes"]) as unknown[] | undefined)?.length ?? 0;
+      return { type, prr: Array.from({ length: count }, (_, i) => Array.from({ length: count }, (__, j) => (i === j ? 0 : 0.9))) };
+    }
+    return {
+      type: "budget",
+      pathLoss: { type: "log-distance", exponent: 3, lossAt1mDb: null },
+      shadowing: { sigmaDb: 0, correlationM: 10, seed: 1 },
+      fading: null,
+      noiseFigureDb: 6,
+      captureDb: 3,
+      concurrencyPenaltyDb: 3,
+    };
+  },
+};
