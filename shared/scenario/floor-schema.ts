@@ -113,11 +113,11 @@ export const linksSchema = z.discriminatedUnion("type", [
         seed: count("seed of the hall", "", 0, 4_294_967_295).default(1),
       })
       .default({ sigmaDb: 0, correlationM: 10, seed: 1 }),
-    /** Rician with unit mean power, constant over a slot, for every pair of nodes and channel; null: none. */
+    /** Rician with unit mean power for every pair of nodes and channel, constant over a slot, going on from round to round; null: none. */
     fading: z
       .strictObject({
         kDb: quantity("Rice factor K", "dB", -40, 40),
-        /** From slot to slot: by the faster node's speed (Clarke), or by a coherence time. */
+        /** How fast it changes: by the faster node's speed (Clarke), or by a coherence time. */
         coherence: z.discriminatedUnion("type", [
           z.strictObject({ type: z.literal("speed"), leastMPerS: quantity("speed of the surroundings", "m/s", 0, 50).default(0.5) }),
           z.strictObject({ type: z.literal("time"), coherenceS: quantity("coherence time", "s", 1e-4, 3600) }),

@@ -1,4 +1,5 @@
 /** What the page may ask of the engine worker. Types only. Outcomes are data: comlink loses fields of thrown errors. */
+import type { ContourOptions, FloodContours } from "#shared/network/contours.ts";
 import type { FloodRecord } from "#shared/network/floods.ts";
 import type { LinkRow } from "#shared/network/link-table.ts";
 import type { FloodSurvey, SurveyOptions } from "#shared/network/survey.ts";
@@ -14,7 +15,7 @@ export type WorkerOutcome = RunOutcome | { ok: false; cancelled: true };
 
 /** What a longer job came to. A job is given up when a newer one of its kind is asked for, or by cancelTask. */
 export type TaskOutcome<T> = { ok: true; value: T } | { ok: false; issues: Issue[] } | { ok: false; cancelled: true };
-export type TaskKind = "floods" | "links" | "survey";
+export type TaskKind = "floods" | "links" | "survey" | "contours";
 /** 0 to 1. */
 export type TaskProgress = (share: number) => void;
 
@@ -24,6 +25,8 @@ export interface FloorTasks {
   floods(scenario: unknown, seed: number | null, onProgress?: TaskProgress): Promise<TaskOutcome<FloodRecord>>;
   /** Many floods in figures with intervals, and what would help. */
   survey(scenario: unknown, options: SurveyOptions, onProgress?: TaskProgress): Promise<TaskOutcome<FloodSurvey>>;
+  /** By which step half of the slot's floods reach a place of the plan; null where links are given and places mean nothing. */
+  contours(scenario: unknown, slotId: string, options: ContourOptions): Promise<TaskOutcome<FloodContours | null>>;
   /** All ordered pairs of nodes at an instant, for the longest payload of the round. */
   links(scenario: unknown, atS: number): Promise<TaskOutcome<LinkRow[]>>;
 }

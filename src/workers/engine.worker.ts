@@ -3,7 +3,7 @@ import { prepareFloor } from "#shared/network/prepare.ts";
 import { digestRun } from "#shared/simulation/digest.ts";
 import { prepareRun } from "#shared/simulation/simulate.ts";
 import type { EngineProgress, EngineWorker, TaskKind, TaskOutcome, TaskProgress, WorkerOutcome } from "./contract.ts";
-import { floodsJob, type Job, linksJob, type Prepared, surveyJob } from "./floor-tasks.ts";
+import { contoursJob, floodsJob, type Job, linksJob, type Prepared, surveyJob } from "./floor-tasks.ts";
 
 /** Rounds between two looks at the clock, and how long a stretch may last before messages are heard again. */
 const ROUNDS = 50;
@@ -95,6 +95,7 @@ const engine: EngineWorker = {
   },
   floods: (scenario, seed, onProgress) => task("floods", scenario, (prepared) => floodsJob(prepared, seed), onProgress),
   survey: (scenario, options, onProgress) => task("survey", scenario, (prepared) => surveyJob(prepared, options), onProgress),
+  contours: (scenario, slotId, options) => task("contours", scenario, (prepared) => contoursJob(prepared, slotId, options)),
   links: (scenario, atS) => task("links", scenario, (prepared) => linksJob(prepared, atS)),
   async digest(scenario, seed) {
     const outcome = await inStretches(scenario, seed, () => true);

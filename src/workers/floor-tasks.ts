@@ -1,4 +1,5 @@
 /** Longer jobs on a floor, cut into pieces between which a worker hears messages. A job yields how far it is, 0 to 1. */
+import { type ContourOptions, type FloodContours, floodContours } from "#shared/network/contours.ts";
 import { FloodProcess, type FloodRecord } from "#shared/network/floods.ts";
 import { type LinkRow, meanLinks } from "#shared/network/link-table.ts";
 import type { PreparedFloor } from "#shared/network/prepare.ts";
@@ -33,6 +34,10 @@ export function* surveyJob({ scenario }: Prepared, options: SurveyOptions): Job<
     yield survey.progress;
   }
   return survey.result();
+}
+
+export function* contoursJob({ scenario, timing }: Prepared, slotId: string, options: ContourOptions): Job<FloodContours | null> {
+  return floodContours(scenario, timing, slotId, options);
 }
 
 export function* linksJob({ scenario, timing }: Prepared, atS: number): Job<LinkRow[]> {

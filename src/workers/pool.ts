@@ -57,6 +57,7 @@ export function createEngine(): EngineClient {
   return {
     floods: (scenario, seed, onProgress) => task(remote.floods(scenario, seed, telling(onProgress))),
     survey: (scenario, options, onProgress) => task(remote.survey(scenario, options, telling(onProgress))),
+    contours: (scenario, slotId, options) => task(remote.contours(scenario, slotId, options)),
     links: (scenario, atS) => task(remote.links(scenario, atS)),
     cancelTask: (kind) => void remote.cancelTask(kind),
     run: (scenario, seed, onProgress) =>
