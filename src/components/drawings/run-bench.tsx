@@ -13,6 +13,7 @@ import { LimitStrip } from "./limit-strip.tsx";
 import { Machine, trailText } from "./machine.tsx";
 import { PlotTools } from "./plot-tools.tsx";
 import { RoundRibbon } from "./round-ribbon.tsx";
+import { tellingInstant } from "./telling-instant.ts";
 import { Transport } from "./transport.tsx";
 
 export interface RunBenchProps {
@@ -27,15 +28,6 @@ export interface RunBenchProps {
   /** Further buttons on the line below the plots. */
   actions?: ReactNode;
   stackRef?: Ref<PlotStackHandle>;
-}
-
-/** Where a still picture tells most: the decisive instant of the limit that was used most, else the first push. */
-export function tellingInstant(result: RunResult): number {
-  const first = result.events[0]?.atS ?? 0;
-  const told = result.limits.flatMap(({ atS, used, unit }) => (atS !== null && unit !== "s" ? [{ atS, used }] : [])).sort((a, b) => b.used - a.used);
-  // The largest excursion, not the end of a settling. What happened after something was done to the machine tells more than how it began.
-  const decisive = told.find(({ atS }) => atS > first) ?? told[0];
-  return decisive?.atS ?? result.events.find(({ kind }) => kind === "push")?.atS ?? 0;
 }
 
 /** A cursor for this run, at the instant that tells most. Where the screen stays, it stays too. */

@@ -23,6 +23,8 @@ const PATHS = {
   arrow: <path d="M2.4 8h11M9.6 4.2L13.4 8l-3.8 3.8" />,
   play: <path d="M4.6 2.8v10.4L13 8z" />,
   pause: <path d="M5.2 3v10M10.8 3v10" />,
+  "step-back": <path d="M12.5 3v10L5 8zM3.2 3v10" />,
+  "step-on": <path d="M3.5 3v10L11 8zM12.8 3v10" />,
   "to-start": <path d="M3.6 3v10M12.6 3v10L6 8z" />,
   theme: (
     <>

@@ -73,6 +73,7 @@ function OfRun({ run }: { run: RunDetail }) {
             label={run.scenarioName}
             points={[
               { to: bench, word: "Bench", end: true },
+              { to: paths.scenarioFloor(team.id, run.scenarioId), word: "Floor" },
               { to: runs, word: "Runs" },
             ]}
           />
@@ -128,6 +129,7 @@ function Whole({ run, scenario, record }: { run: RunDetail; scenario: Scenario; 
         label={run.scenarioName}
         points={[
           { to: bench, word: "Bench", end: true },
+          { to: paths.scenarioFloor(team.id, run.scenarioId), word: "Floor" },
           { to: paths.scenarioRuns(team.id, run.scenarioId), word: "Runs" },
           { to: paths.run(team.id, run.id), word: "This run" },
         ]}

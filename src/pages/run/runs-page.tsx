@@ -77,6 +77,7 @@ export function RunsPage() {
         label={name}
         points={[
           { to: here, word: "Bench", end: true },
+          { to: paths.scenarioFloor(team.id, scenarioId), word: "Floor" },
           { to: paths.scenarioRuns(team.id, scenarioId), word: "Runs", count: filtered ? undefined : list.data?.total },
         ]}
       />

@@ -1,11 +1,11 @@
-import { useMemo, useState } from "react";
-import { Link, useNavigate } from "react-router-dom";
+import { lazy, Suspense, useMemo, useState } from "react";
+import { Link, useMatch, useNavigate } from "react-router-dom";
 import type { RevisionDetail } from "#shared/api/revisions.ts";
 import type { ScenarioResponse } from "#shared/api/scenarios.ts";
 import { plantTitle } from "#shared/plants/registry.ts";
 import { useRevision } from "#src/api/revisions/get-revision.ts";
 import { DocumentTitle } from "#src/app/document-title.tsx";
-import { paths } from "#src/app/paths.ts";
+import { paths, patterns } from "#src/app/paths.ts";
 import { useTeam } from "#src/app/session.tsx";
 import { Button, LinkButton } from "#src/components/ui/button.tsx";
 import { QueryError } from "#src/components/ui/query-error.tsx";
@@ -17,6 +17,7 @@ import { counted, instantText } from "#src/lib/format.ts";
 import { KeepRun } from "./bench/keep-run.tsx";
 import { LiveBench } from "./bench/live-bench.tsx";
 import { useBench } from "./bench/use-bench.ts";
+import { useBenchCursor } from "./bench/use-bench-cursor.ts";
 import { ChangesDialog } from "./dialogs/changes-dialog.tsx";
 import { describeChanges } from "./model/changes.ts";
 import { cleanDraft } from "./model/draft.ts";
@@ -42,6 +43,8 @@ export function OldRevision({ data, revision }: { data: ScenarioResponse; revisi
   return <Loading what={`Revision ${revision} opens`} />;
 }
 
+const FloorView = lazy(async () => ({ default: (await import("#src/pages/floor/floor-view.tsx")).FloorView }));
+
 const nothing = () => {};
 
 function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetail }) {
@@ -57,9 +60,12 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
   const judged = useMemo(() => judge(control.draft), [control]);
   const changes = useMemo(() => describeChanges(scenario, data.latest.scenario), [scenario, data.latest]);
   const bench = useBench(engine, judged.scenario, judged.timing, seed);
+  const cursor = useBenchCursor(bench.run?.result ?? null);
+  const onFloor = useMatch(patterns.scenarioFloor) !== null;
   const here = paths.scenario(team.id, data.id);
+  const atThis = `?revision=${detail.number}`;
   return (
-    <div className="workshop" data-view={view}>
+    <div className="workshop" data-view={onFloor ? "floor" : view}>
       <DocumentTitle>{`${scenario.name}, revision ${detail.number}`}</DocumentTitle>
       <div className="title flex-wrap!">
         <div>
@@ -87,7 +93,8 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
       <Way
         label={scenario.name}
         points={[
-          { to: here, word: "Bench", end: true },
+          { to: `${here}${atThis}`, word: "Bench", end: true },
+          { to: `${paths.scenarioFloor(team.id, data.id)}${atThis}`, word: "Floor" },
           { to: paths.scenarioRuns(team.id, data.id), word: "Runs" },
         ]}
       />
@@ -99,30 +106,54 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
           {counted(changes.length, "setting")} changed since
         </Button>
       </Tell>
-      <div className="lay">
-        <SetupForm control={control} issues={judged.issues} good={judged.scenario} readOnly folds={folds}>
-          <Setup timing={judged.timing} />
-        </SetupForm>
-        <LiveBench
-          bench={bench}
-          timing={judged.timing}
-          issues={judged.issues}
-          lastGood={null}
-          seed={seed}
-          onSeed={setSeed}
-          onFirstIssue={() => setView("setup")}
-          actions={
-            <KeepRun
-              engine={engine}
-              scenarioId={data.id}
-              revision={detail.number}
-              run={bench.run}
-              impossible={team.may("make-runs") ? null : "Your role does not keep runs."}
+      <SetupForm control={control} issues={judged.issues} good={judged.scenario} readOnly folds={folds}>
+        {onFloor ? (
+          <Suspense fallback={<Loading what="The floor opens" />}>
+            <FloorView
+              {...{ bench, timing: judged.timing, engine, seed, cursor }}
+              onSeed={setSeed}
+              shown={null}
+              onReveal={nothing}
+              mayUpload={false}
             />
-          }
-        />
-      </div>
-      <PhoneBar name={scenario.name} teamId={team.id} scenarioId={data.id} view={view} issues={judged.issues.length} onView={setView} />
+          </Suspense>
+        ) : (
+          <div className="lay">
+            <Setup timing={judged.timing} />
+            <LiveBench
+              bench={bench}
+              timing={judged.timing}
+              issues={judged.issues}
+              lastGood={null}
+              seed={seed}
+              cursor={cursor}
+              onSeed={setSeed}
+              onFirstIssue={() => setView("setup")}
+              actions={
+                <KeepRun
+                  engine={engine}
+                  scenarioId={data.id}
+                  revision={detail.number}
+                  run={bench.run}
+                  impossible={team.may("make-runs") ? null : "Your role does not keep runs."}
+                />
+              }
+            />
+          </div>
+        )}
+      </SetupForm>
+      <PhoneBar
+        name={scenario.name}
+        teamId={team.id}
+        scenarioId={data.id}
+        view={onFloor ? "floor" : view}
+        issues={judged.issues.length}
+        search={atThis}
+        onView={(next) => {
+          setView(next);
+          if (onFloor) navigate(`${here}${atThis}`);
+        }}
+      />
       {comparing && (
         <ChangesDialog title={`From revision ${detail.number} to ${data.latest.number}`} changes={changes} onClose={() => setComparing(false)} />
       )}

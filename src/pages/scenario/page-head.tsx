@@ -33,6 +33,8 @@ interface PageHeadProps {
   onExport: () => void;
   onImport: () => void;
   onRename: (() => void) | null;
+  /** Beside the pages: what is known of the floor. */
+  tail?: string;
 }
 
 export function PageHead(props: PageHeadProps) {
@@ -105,8 +107,10 @@ export function PageHead(props: PageHeadProps) {
       </div>
       <Way
         label={name}
+        tail={phone ? undefined : props.tail}
         points={[
           { to: paths.scenario(teamId, scenarioId), word: "Bench", end: true },
+          { to: paths.scenarioFloor(teamId, scenarioId), word: "Floor" },
           { to: paths.scenarioRuns(teamId, scenarioId), word: "Runs", count: runs },
         ]}
       />

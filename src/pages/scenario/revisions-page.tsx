@@ -59,6 +59,7 @@ export function RevisionsPage() {
         label={name}
         points={[
           { to: here, word: "Bench", end: true },
+          { to: paths.scenarioFloor(team.id, scenarioId), word: "Floor" },
           { to: paths.scenarioRuns(team.id, scenarioId), word: "Runs" },
           { to: paths.scenarioRevisions(team.id, scenarioId), word: "Revisions", count: list.data.total },
         ]}

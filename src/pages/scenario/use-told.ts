@@ -1,5 +1,6 @@
 import { useCallback, useEffect, useRef, useState } from "react";
 import { describeChanges } from "./model/changes.ts";
+import { isWithin } from "./model/json-path.ts";
 import { sectionOf } from "./model/sections.ts";
 import type { Folds } from "./setup/setup-section.tsx";
 import type { DraftControl } from "./use-draft.ts";
@@ -14,7 +15,7 @@ export function useTold({ draft, undo, redo }: Pick<DraftControl, "draft" | "und
     if (!current) return;
     const [first, ...more] = describeChanges(current.json, draft.json);
     if (!first) return setTold(`${current.word}.`);
-    setOpen(sectionOf(first.path), true);
+    if (!isWithin(first.path, "floor")) setOpen(sectionOf(first.path), true);
     setTold(`${current.word}: ${first.label} is ${first.after}${more.length > 0 ? `, and ${more.length} more` : ""}.`);
   }, [draft, setOpen]);
   const { json } = draft;

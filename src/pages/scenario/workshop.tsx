@@ -1,5 +1,5 @@
-import { useCallback, useEffect, useMemo, useRef, useState } from "react";
-import { useLocation, useNavigate } from "react-router-dom";
+import { lazy, Suspense, useCallback, useEffect, useMemo, useRef, useState } from "react";
+import { useLocation, useMatch, useNavigate } from "react-router-dom";
 import { rolesThatMay } from "#shared/api/permissions.ts";
 import type { ScenarioResponse } from "#shared/api/scenarios.ts";
 import { plantTitle } from "#shared/plants/registry.ts";
@@ -8,9 +8,10 @@ import type { Scenario } from "#shared/scenario/schema.ts";
 import { useRunList } from "#src/api/runs/list-runs.ts";
 import { useDuplicateScenario } from "#src/api/scenarios/duplicate-scenario.ts";
 import { DocumentTitle } from "#src/app/document-title.tsx";
-import { paths } from "#src/app/paths.ts";
+import { paths, patterns } from "#src/app/paths.ts";
 import { useSession, useTeam } from "#src/app/session.tsx";
 import { failureText } from "#src/components/ui/query-error.tsx";
+import { Loading } from "#src/components/ui/states.tsx";
 import { Tell } from "#src/components/ui/tell.tsx";
 import { useToast } from "#src/components/ui/toast.tsx";
 import { downloadJson } from "#src/lib/download.ts";
@@ -18,6 +19,7 @@ import { listed } from "#src/lib/format.ts";
 import { KeepRun } from "./bench/keep-run.tsx";
 import { LiveBench } from "./bench/live-bench.tsx";
 import { useBench } from "./bench/use-bench.ts";
+import { useBenchCursor } from "./bench/use-bench-cursor.ts";
 import { ChangesDialog } from "./dialogs/changes-dialog.tsx";
 import { ConflictDialog } from "./dialogs/conflict-dialog.tsx";
 import { ImportDialog } from "./dialogs/import-dialog.tsx";
@@ -26,7 +28,8 @@ import { SaveDialog } from "./dialogs/save-dialog.tsx";
 import { type Change, describeChanges } from "./model/changes.ts";
 import { cleanDraft } from "./model/draft.ts";
 import { type DraftStore, keepCopy, readCopy, type StoredDraft } from "./model/draft-store.ts";
-import { getAt } from "./model/json-path.ts";
+import { floorText } from "./model/floor-words.ts";
+import { getAt, isWithin } from "./model/json-path.ts";
 import { fromRule, judge } from "./model/judge.ts";
 import { lastGoodText } from "./model/last-good.ts";
 import { sectionOf } from "./model/sections.ts";
@@ -53,6 +56,9 @@ interface WorkshopProps {
 
 type Open = { kind: "save" | "import" | "changes" } | { kind: "saved-changes"; title: string; changes: readonly Change[] } | null;
 
+/** Fetched when a floor is first looked at. */
+const FloorView = lazy(async () => ({ default: (await import("#src/pages/floor/floor-view.tsx")).FloorView }));
+
 const NEWEST_RUN = { page: 1, pageSize: 1 } as const;
 
 /** The scenario under edit: set-up on one side, the live bench on the other. */
@@ -68,6 +74,8 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
   const [seed, setSeed] = useState<number | null>(null);
   const [open, setOpen] = useState<Open>(null);
   const [view, setView] = useState<PhoneView>("bench");
+  const onFloor = useMatch(patterns.scenarioFloor) !== null;
+  const [shownOnFloor, setShownOnFloor] = useState<{ path: string } | null>(null);
   const [copy, setCopy] = useState(() => readCopy(data.id, user.id));
   const runs = useRunList(team.id, data.id, NEWEST_RUN);
   const duplicate = useDuplicateScenario(team.id);
@@ -80,6 +88,7 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
   // biome-ignore lint/correctness/useExhaustiveDependencies: only when the scenario's own seed changes
   useEffect(() => setSeed(null), [ownSeed]);
   const bench = useBench(engine, judged.scenario, judged.timing, seed);
+  const cursor = useBenchCursor(bench.run?.result ?? null);
   const issues = useMemo(() => [...judged.issues, ...bench.refused.map(fromRule)], [judged, bench.refused]);
   const changes = useMemo(() => describeChanges(control.base.scenario, draft.json), [control.base, draft]);
   const unfinished = Object.values(draft.typed).filter(({ problem }) => problem !== null).length;
@@ -106,16 +115,22 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
     setCopy(null);
   };
 
-  useRestored(control.edit);
-
   const reveal = useCallback(
     (path: string) => {
+      if (isWithin(path, "floor")) {
+        setShownOnFloor({ path });
+        navigate(paths.scenarioFloor(team.id, data.id));
+        return;
+      }
+      if (onFloor) navigate(paths.scenario(team.id, data.id));
       setView("setup");
       folds.setOpen(sectionOf(path), true);
       revealField(path);
     },
-    [folds],
+    [folds, navigate, onFloor, team.id, data.id],
   );
+
+  useBrought(control.edit, reveal);
 
   const cannotSave =
     issues.length > 0
@@ -150,8 +165,8 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
           : null;
 
   return (
-    <div className="workshop" data-view={view}>
-      <DocumentTitle>{name}</DocumentTitle>
+    <div className="workshop" data-view={onFloor ? "floor" : view}>
+      <DocumentTitle>{onFloor ? `${name}, floor` : name}</DocumentTitle>
       <p className="vh" role="status">
         {history.told}
       </p>
@@ -191,6 +206,7 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
         onExport={download}
         onImport={() => setOpen({ kind: "import" })}
         onRename={trying ? null : () => reveal("name")}
+        tail={onFloor && judged.scenario?.floor ? floorText(judged.scenario.floor) : undefined}
       />
       <DraftNotices control={control} />
       {copy && (
@@ -224,22 +240,45 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
           </span>
         </Tell>
       )}
-      <div className="lay">
-        <SetupForm control={control} issues={issues} good={good.current} readOnly={false} folds={folds}>
-          <Setup timing={judged.timing} />
-        </SetupForm>
-        <LiveBench
-          bench={bench}
-          timing={judged.timing}
-          issues={issues}
-          lastGood={lastGoodText(issues, bench.run?.scenario)}
-          seed={seed}
-          onSeed={setSeed}
-          onFirstIssue={() => issues[0] && reveal(issues[0].path)}
-          actions={<KeepRun engine={engine} scenarioId={data.id} revision={control.base.revision} run={bench.run} impossible={cannotKeep} />}
-        />
-      </div>
-      <PhoneBar name={name} teamId={team.id} scenarioId={data.id} view={view} issues={issues.length} onView={setView} />
+      <SetupForm control={control} issues={issues} good={good.current} readOnly={false} folds={folds}>
+        {onFloor ? (
+          <Suspense fallback={<Loading what="The floor opens" />}>
+            <FloorView
+              {...{ bench, timing: judged.timing, engine, seed, cursor }}
+              onSeed={setSeed}
+              shown={shownOnFloor}
+              onReveal={reveal}
+              mayUpload={team.may("edit-scenarios") && data.mayEdit}
+            />
+          </Suspense>
+        ) : (
+          <div className="lay">
+            <Setup timing={judged.timing} />
+            <LiveBench
+              bench={bench}
+              timing={judged.timing}
+              issues={issues}
+              lastGood={lastGoodText(issues, bench.run?.scenario)}
+              seed={seed}
+              cursor={cursor}
+              onSeed={setSeed}
+              onFirstIssue={() => issues[0] && reveal(issues[0].path)}
+              actions={<KeepRun engine={engine} scenarioId={data.id} revision={control.base.revision} run={bench.run} impossible={cannotKeep} />}
+            />
+          </div>
+        )}
+      </SetupForm>
+      <PhoneBar
+        name={name}
+        teamId={team.id}
+        scenarioId={data.id}
+        view={onFloor ? "floor" : view}
+        issues={issues.length}
+        onView={(next) => {
+          setView(next);
+          if (onFloor) navigate(paths.scenario(team.id, data.id));
+        }}
+      />
 
       {open?.kind === "save" && (
         <SaveDialog
@@ -292,21 +331,32 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
   );
 }
 
-/** An old revision that was chosen to go on from arrives with the address. */
-function useRestored(edit: ReturnType<typeof useDraft>["edit"]) {
+interface Brought {
+  restore?: { revision: number; scenario: unknown };
+  losses?: { process: unknown; from: string };
+}
+
+/** An old revision that was chosen to go on from, or the losses of a reception log, arrive with the address. */
+function useBrought(edit: ReturnType<typeof useDraft>["edit"], reveal: (path: string) => void) {
   const location = useLocation();
   const navigate = useNavigate();
   const toast = useToast();
   const done = useRef<unknown>(null);
   useEffect(() => {
-    const restore = (location.state as { restore?: { revision: number; scenario: unknown } } | null)?.restore;
-    if (!restore || done.current === restore) return;
-    done.current = restore;
-    const parsed = parseScenario(restore.scenario);
-    if (parsed.ok) {
+    const { restore, losses } = (location.state ?? {}) as Brought;
+    const brought = restore ?? losses;
+    if (!brought || done.current === brought) return;
+    done.current = brought;
+    navigate(location.pathname, { replace: true, state: null });
+    if (restore) {
+      const parsed = parseScenario(restore.scenario);
+      if (!parsed.ok) return;
       edit({ kind: "replace", draft: cleanDraft(parsed.value) });
       toast({ text: `Revision ${restore.revision} is on the bench as a draft; undo brings back what was.` });
+    } else if (losses) {
+      edit({ kind: "set", path: ["losses", "process"], value: losses.process });
+      reveal("losses.process.type");
+      toast({ text: `The losses of “${losses.from}” are in the draft, unsaved; undo brings back what was.` });
     }
-    navigate(location.pathname, { replace: true, state: null });
-  }, [location, edit, navigate, toast]);
+  }, [location, edit, reveal, navigate, toast]);
 }

@@ -3,6 +3,7 @@ import type { RoundTiming } from "#shared/network/round.ts";
 import { verdictSentence } from "#shared/simulation/verdict-text.ts";
 import { RoundRibbon } from "#src/components/drawings/round-ribbon.tsx";
 import { RunBench } from "#src/components/drawings/run-bench.tsx";
+import type { PlotCursor } from "#src/components/plots/plot-cursor.ts";
 import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
 import { Mark, VerdictLine } from "#src/components/ui/mark.tsx";
 import { Empty, Loading } from "#src/components/ui/states.tsx";
@@ -20,6 +21,8 @@ interface LiveBenchProps {
   /** Was the last good value of the only bad field: "with plan at 6 steps". */
   lastGood: string | null;
   seed: number | null;
+  /** Shared with the floor; without it the plots have their own. */
+  cursor?: PlotCursor | null;
   onSeed: (seed: number | null) => void;
   onFirstIssue: () => void;
   /** Beside the seed: keeping the run. */
@@ -32,7 +35,7 @@ const Pictures = memo(RunBench);
 const LARGEST_SEED = 4_294_967_295;
 
 /** Verdict, limits, machine, plots, tapes and round of what is being edited. */
-export function LiveBench({ bench, timing, issues, lastGood, seed, onSeed, onFirstIssue, actions }: LiveBenchProps) {
+export function LiveBench({ bench, timing, issues, lastGood, seed, cursor, onSeed, onFirstIssue, actions }: LiveBenchProps) {
   const { run, progress, broken, cancelled } = bench;
   const stale = issues.length > 0;
   return (
@@ -58,7 +61,7 @@ export function LiveBench({ bench, timing, issues, lastGood, seed, onSeed, onFir
           <span className="ml-auto">{actions}</span>
         </div>
         {run ? (
-          <Pictures scenario={run.scenario} timing={run.timing} result={run.result} stale={stale} />
+          <Pictures scenario={run.scenario} timing={run.timing} result={run.result} stale={stale} cursor={cursor ?? undefined} />
         ) : stale ? (
           <>
             <Empty title="No result yet" text="The bench runs as soon as every marked field is put right." />

@@ -1,7 +1,8 @@
 import { act, render, screen, within } from "@testing-library/react";
 import { userEvent } from "@testing-library/user-event";
 import { describe, expect, it } from "vitest";
-import { RunBench, tellingInstant } from "#src/components/drawings/run-bench.tsx";
+import { RunBench } from "#src/components/drawings/run-bench.tsx";
+import { tellingInstant } from "#src/components/drawings/telling-instant.ts";
 import { createPlotCursor } from "#src/components/plots/plot-cursor.ts";
 import { type Making, madeRun } from "../../helpers/made-run.ts";
 

@@ -1,0 +1,3 @@
+export const pictureKeys = {
+  all: (teamId: string) => ["teams", teamId, "pictures"] as const,
+};

@@ -1,0 +1,64 @@
+/** Marks of nodes and interferers; the same in the plan, in its key and in tables. */
+import type { ReactNode } from "react";
+
+/** plain: no flood is shown. sends and receives: at the present step. */
+export type NodeState = "plain" | "starts" | "has" | "receives" | "sends" | "waiting" | "lost" | "off";
+
+export const STATE_WORDS: Record<NodeState, string> = {
+  plain: "",
+  starts: "starts the flood",
+  has: "has the message",
+  receives: "receives now",
+  sends: "sends now",
+  waiting: "not yet",
+  lost: "lost",
+  off: "out of service",
+};
+
+/** A disc with a notch cut from its top: lost always looks cut out. Radius r. */
+function notched(r: number): string {
+  const half = r * 0.36;
+  const top = -Math.sqrt(r * r - half * half);
+  const f = (value: number) => value.toFixed(2);
+  return `M${f(-half)} ${f(top)}V${f(-r * 0.08)}H${f(half)}V${f(top)}A${r} ${r} 0 1 1 ${f(-half)} ${f(top)}Z`;
+}
+
+const R = 9.5;
+
+/** The mark around (0, 0), number inside. */
+export function NodeShape({ state, label, r = R }: { state: NodeState; label?: ReactNode; r?: number }) {
+  const lost = state === "lost";
+  return (
+    <>
+      {state === "sends" && <circle r={r + 3.5} className="pl-ring" />}
+      {lost ? <path d={notched(r)} className="pl-lost" /> : <circle r={r} className={`pl-${state}`} />}
+      {state === "off" && <path d={`M${-r * 0.72} ${r * 0.72}L${r * 0.72} ${-r * 0.72}`} className="pl-offbar" />}
+      {label !== undefined && (
+        <text
+          y={lost ? 4.2 : 4.2}
+          x={lost ? r + 5 : 0}
+          textAnchor={lost ? "start" : "middle"}
+          className={`pl-nt ${state === "starts" || state === "receives" ? "inv" : ""} ${lost ? "out halo2" : ""}`}
+        >
+          {label}
+        </text>
+      )}
+    </>
+  );
+}
+
+/** In a line of text or a table. */
+export function StateMark({ state, size = 18 }: { state: NodeState; size?: number }) {
+  return (
+    <svg width={size} height={size} viewBox="-9 -9 18 18" aria-hidden="true" className="mk">
+      <NodeShape state={state} r={state === "sends" ? 4.6 : 6.4} />
+    </svg>
+  );
+}
+
+export const InterfererShape = () => (
+  <>
+    <rect x="-10" y="-10" width="20" height="20" className="pl-int" />
+    <path d="M1.4 -6.2L-3.6 0.8H0.2L-1.2 6.2L4.4 -1.4H0.6Z" className="pl-intl" />
+  </>
+);
