@@ -3,7 +3,12 @@ import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RoundTiming } from "./round.ts";
 
 /** Enough digits to tell 99.9 from 100. */
-export const percent = (share: number): string => `${(share * 100).toFixed(share > 0.98 && share < 1 ? 2 : share > 0 && share < 1 ? 1 : 0)} %`;
+export function percent(share: number): string {
+  if (share <= 0 || share >= 1) return share > 0 ? "100 %" : "0 %";
+  let digits = share > 0.98 ? 2 : 1;
+  while (digits < 6 && Number((share * 100).toFixed(digits)) >= 100) digits++;
+  return `${(share * 100).toFixed(digits)} %`;
+}
 
 /** 0.999 as "99.9 %", with the digits that somebody typed. */
 export const wanted = (share: number): string => `${Number((share * 100).toFixed(6))} %`;
