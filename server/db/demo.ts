@@ -1,5 +1,6 @@
-/** The demo team: an invented company, its people and scenarios. Laid out once, on the first start. */
+/** The demo team: an invented company, its people, reception logs and scenarios. Each part is laid out once, on the first start that knows it. */
 import type { Role } from "#shared/api/permissions.ts";
+import { type ColumnMapping, type LinkTrace, linkName } from "#shared/reception/types.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 
 export const DEMO_PASSWORD = "hold-fast-2026";
@@ -24,12 +25,19 @@ export const DEMO_PEOPLE: readonly DemoPerson[] = [
   { name: "Tove Saltby", email: TOVE, roles: { northquay: ["administrator"], saltmarsh: ["engineer"] } },
 ];
 
+/** A reception log as it was laid out. */
+export interface LaidOutLog {
+  id: string;
+  name: string;
+  links: LinkTrace[];
+}
+
 interface DemoRevision {
   by: string;
   hoursAgo: number;
   note: string;
-  /** What was different then from the example; left out: nothing. */
-  then?: (scenario: Scenario) => void;
+  /** What was different then from the example; left out: nothing. `log` gives a log of this part by its file. */
+  then?: (scenario: Scenario, log: (file: string) => LaidOutLog) => void;
 }
 export interface DemoScenario {
   team: TeamKey;
@@ -38,11 +46,26 @@ export interface DemoScenario {
   /** Oldest first; the first one's author owns the scenario. */
   revisions: DemoRevision[];
 }
+export interface DemoLog {
+  team: TeamKey;
+  /** File in examples/logs/. */
+  file: string;
+  name: string;
+  mapping: Partial<ColumnMapping>;
+  by: string;
+  hoursAgo: number;
+}
+interface DemoPart {
+  /** In the database's settings, with the time when it was laid out. */
+  key: string;
+  logs: DemoLog[];
+  /** In the order of their last change. */
+  scenarios: DemoScenario[];
+}
 
 const DAY = 24;
 
-/** In the order of their last change. */
-export const DEMO_SCENARIOS: readonly DemoScenario[] = [
+const SCENARIOS: DemoScenario[] = [
   {
     team: "saltmarsh",
     example: "balancer-rig-1.json",
@@ -138,4 +161,88 @@ export const DEMO_SCENARIOS: readonly DemoScenario[] = [
       { by: ROWAN, hoursAgo: 2, note: "Every command carries a plan for the rounds after it" },
     ],
   },
+];
+
+/** The numbered links of a log, one packet a round. */
+function replay({ id, name, links }: LaidOutLog, measurement: number, command: number): Scenario["losses"]["process"] {
+  const link = (index: number) => ({ link: linkName(links[index]), runs: links[index].runs });
+  return { type: "replay", log: { id, name }, measurement: link(measurement), command: link(command), then: "repeat" };
+}
+
+const QUIET = "quiet-shift.csv";
+const PRESS = "press-running.csv";
+const LOGS: DemoLog[] = [
+  {
+    team: "northquay",
+    file: QUIET,
+    name: "Hall 2, quiet shift",
+    mapping: {
+      number: { column: "round", kind: "round", wrapsAt: null },
+      time: { column: "t_ms", unit: "ms" },
+      source: "source",
+      receiver: "receiver",
+      received: "ok",
+      rssi: "rssi_dbm",
+    },
+    by: ROWAN,
+    hoursAgo: 2 * DAY + 7,
+  },
+  {
+    team: "northquay",
+    file: PRESS,
+    name: "Hall 2, press running",
+    mapping: {
+      number: { column: "seq", kind: "sequence", wrapsAt: null },
+      time: { column: "time", unit: "iso" },
+      source: "src",
+      receiver: "dst",
+      rssi: "rssi",
+    },
+    by: TOVE,
+    hoursAgo: 1 * DAY + 6,
+  },
+];
+
+const ON_THE_FLOOR: DemoScenario[] = [
+  {
+    team: "northquay",
+    example: "balancer-rig-2-bursts.json",
+    revisions: [
+      {
+        by: TOVE,
+        hoursAgo: 2 * DAY + 5,
+        note: "What nodes 7 and 4 received on a quiet shift, packet by packet",
+        then: (scenario, log) => {
+          scenario.name = "Balancer rig 2, as recorded";
+          scenario.description = "Rig 2 under what was received in hall 2. Revision 1 replays a quiet shift, revision 2 one with the press running.";
+          scenario.losses.process = replay(log(QUIET), 0, 1);
+        },
+      },
+      {
+        by: TOVE,
+        hoursAgo: 1 * DAY + 5,
+        note: "The same with the press running: both messages lost where node 1 lost node 5",
+        then: (scenario, log) => {
+          scenario.name = "Balancer rig 2, as recorded";
+          scenario.description = "Rig 2 under what was received in hall 2. Revision 1 replays a quiet shift, revision 2 one with the press running.";
+          scenario.losses.process = replay(log(PRESS), 0, 0);
+        },
+      },
+    ],
+  },
+  {
+    team: "northquay",
+    example: "film-line-2-shared-round.json",
+    revisions: [{ by: ADA, hoursAgo: 22, note: "Ratios between the eight nodes as counted on Monday" }],
+  },
+  {
+    team: "northquay",
+    example: "balancer-rig-1-floor.json",
+    revisions: [{ by: ROWAN, hoursAgo: 3, note: "Nodes as they hang on the pillars; the truck keeps to its lane" }],
+  },
+];
+
+export const DEMO_PARTS: readonly DemoPart[] = [
+  { key: "demo", logs: [], scenarios: SCENARIOS },
+  { key: "demo-floor", logs: LOGS, scenarios: ON_THE_FLOOR },
 ];

@@ -5,9 +5,9 @@ import pg from "pg";
 import pino from "pino";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { connect } from "#server/db/client.ts";
-import { DEMO_PASSWORD, DEMO_PEOPLE, DEMO_SCENARIOS } from "#server/db/demo.ts";
+import { DEMO_PARTS, DEMO_PASSWORD, DEMO_PEOPLE } from "#server/db/demo.ts";
 import { migrateDatabase } from "#server/db/migrate.ts";
-import { activity, memberships, revisions, runs, scenarios, teams, users } from "#server/db/schema.ts";
+import { activity, memberships, receptionLogs, revisions, runs, scenarios, teams, users } from "#server/db/schema.ts";
 import { seedDemo } from "#server/db/seed.ts";
 import { readEnv } from "#server/env.ts";
 import { sessionSecret } from "#server/http/session.ts";
@@ -40,7 +40,7 @@ describe("the database at the first start", () => {
   let database: TestDatabase;
   const counts = async (url: string) => {
     const { db, pool } = connect(url, pino({ level: "silent" }));
-    const tables = { teams, users, memberships, scenarios, revisions, runs, activity };
+    const tables = { teams, users, memberships, scenarios, revisions, runs, receptionLogs, activity };
     const entries = await Promise.all(Object.entries(tables).map(async ([name, table]) => [name, await db.$count(table)] as const));
     await pool.end();
     return Object.fromEntries(entries);
@@ -76,13 +76,15 @@ describe("the database at the first start", () => {
       const laidOut = await Promise.all([seedDemo(database.url), seedDemo(database.url)]);
       expect(laidOut.sort()).toEqual([false, true]);
       const first = await counts(database.url);
+      const parts = DEMO_PARTS.flatMap((part) => part.scenarios);
       expect(await seedDemo(database.url)).toBe(false);
       expect(await counts(database.url)).toEqual(first);
       expect(first).toMatchObject({
         teams: 2,
         users: DEMO_PEOPLE.length,
-        scenarios: DEMO_SCENARIOS.length,
-        revisions: DEMO_SCENARIOS.reduce((sum, entry) => sum + entry.revisions.length, 0),
+        scenarios: parts.length,
+        revisions: parts.reduce((sum, entry) => sum + entry.revisions.length, 0),
+        receptionLogs: 2,
       });
     },
     SLOW,
