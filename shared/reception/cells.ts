@@ -28,8 +28,15 @@ export function decimalNumber(cell: string, decimal: "." | ","): number {
   return plain(text);
 }
 
-/** Number() also takes "0x1f" and "Infinity". */
-const plain = (text: string): number => (/^[-+]?(\d+\.?\d*|\.\d+)([eE][-+]?\d+)?$/.test(text) ? Number(text) : Number.NaN);
+/** Number() also takes "0x1f" and "Infinity": letters other than an exponent's are refused. */
+function plain(text: string): number {
+  for (let at = 0; at < text.length; at++) {
+    const code = text.charCodeAt(at);
+    // + - . 0 to 9 E e
+    if (!((code >= 48 && code <= 57) || code === 46 || code === 45 || code === 43 || code === 101 || code === 69)) return Number.NaN;
+  }
+  return Number(text);
+}
 
 export interface Instant {
   /** Seconds; since 1970 for a date. */

@@ -48,6 +48,8 @@ export interface LinkOptions {
 const SURE = 64;
 /** A row that comes late by more than this, for a number that is already there, may be a restart. */
 const RECENT = 8;
+/** A restarted counter is first heard of at one of these numbers, unless its first packets were lost. */
+const NEAR_ZERO = 16;
 /** Missing numbers in a row that are reported as a gap, beside being counted as lost. */
 export const GAP_PACKETS = 50;
 /** More than this is a restart with another number, not a loss, when no time says otherwise. */
@@ -149,7 +151,7 @@ export class LinkReader {
     const back = -held.step;
     if (back >= 0 && back <= this.late) {
       const elapsed = held.timeS - this.timeS;
-      const later = Number.isNaN(elapsed) ? held.number <= 2 * RECENT : elapsed > 0;
+      const later = Number.isNaN(elapsed) ? held.number <= NEAR_ZERO : elapsed > 0;
       if (later && after > 0 && after <= RECENT) this.restart(held);
       else if (this.window.isBefore(back) && !(elapsed < 0)) this.stray(held, next);
       else this.comesLate(held, back);
@@ -171,16 +173,19 @@ export class LinkReader {
 
   /** A confirmed jump: an outage, or a restart? */
   private leap(held: Packet & { step: number }): void {
-    const { wrapsAt } = this.options.counter;
     const expected = this.stepsByTime(held);
-    const outage =
-      held.step < 0
-        ? false
-        : Number.isNaN(expected)
-          ? held.step <= MOST_LOST && !(wrapsAt && (held.step > wrapsAt / 2 || (held.number < this.lastRaw && held.step > wrapsAt / 4)))
-          : expected < 0 || expected >= held.step / 2;
+    const outage = held.step > 0 && (Number.isNaN(expected) ? !this.looksLikeRestart(held) : expected < 0 || expected >= held.step / 2);
     if (outage) this.forward(held, held.step);
     else this.restart(held);
+  }
+
+  /** Without a time: counters begin anew near 0, and hardly ever are so many packets lost in a row. */
+  private looksLikeRestart(held: { number: number; step: number }): boolean {
+    const { wrapsAt } = this.options.counter;
+    if (held.step > MOST_LOST) return true;
+    if (!wrapsAt) return false;
+    const wrapped = held.number < this.lastRaw;
+    return held.step > wrapsAt / 2 || (wrapped && (held.number <= NEAR_ZERO || held.step > wrapsAt / 4));
   }
 
   // ------------------------------------------------------------ what the clock says

@@ -37,6 +37,8 @@ export function logReader(mapping: ColumnMapping): LogReader {
   let columns: Columns | null = null;
   let issues: Issue[] | null = null;
   let width = 0;
+  /** Cells up to the last one that a packet cannot do without; an RSSI may be left out at the end of a row. */
+  let needed = 0;
   let linkCount = 0;
   let lastLink: LinkReader | null = null;
   let counted = 0;
@@ -44,8 +46,7 @@ export function logReader(mapping: ColumnMapping): LogReader {
   function trouble(kind: TroubleKind, line: number, link: string, value: string, message: () => string): void {
     const { first } = report.troubles[kind];
     report.troubles[kind].count++;
-    if (first.length < MAX_TROUBLES)
-      first.push({ line, link, message: message(), value: kept(value.length > 80 ? `${value.slice(0, 79)}…` : value) });
+    if (first.length < MAX_TROUBLES) first.push({ line, link, message: kept(message()), value: kept(short(value)) });
   }
 
   const splitter = csvRows(mapping.delimiter, takeRow);
@@ -60,26 +61,28 @@ export function logReader(mapping: ColumnMapping): LogReader {
         return;
       }
       columns = resolved.columns;
+      needed = 1 + Math.max(...Object.entries(columns).map(([what, at]) => (what === "rssi" ? -1 : at)));
       if (mapping.header) return;
     }
     // An empty line of a spreadsheet still has its delimiters.
-    if (row.cells.every((cell) => cell === "")) return;
+    if (row.cells[0] === "" && row.cells.every(isEmpty)) return;
     report.rows++;
     if (read(row, columns)) {
       linkOf(row, columns)?.take(packet);
     }
   }
 
+  function bad(line: number, value: string, message: () => string): false {
+    trouble("bad-row", line, "", value, message);
+    return false;
+  }
+
   /** Fills `packet`; false when the row cannot be used. */
   function read(row: CsvRow, at: Columns): boolean {
     const { cells, line } = row;
-    const bad = (value: string, message: () => string): false => {
-      trouble("bad-row", line, "", value, message);
-      return false;
-    };
-    if (row.unclosed) return bad(cells.join(mapping.delimiter), () => "A quote is opened and not closed; the row is left out.");
-    if (cells.length < width || (cells.length > width && cells.slice(width).some((cell) => cell.trim() !== ""))) {
-      return bad(cells.join(mapping.delimiter), () => `The row has ${cells.length} cells, the first row has ${width}; it is left out.`);
+    if (row.unclosed) return bad(line, cells.join(mapping.delimiter), () => "A quote is opened and not closed; the row is left out.");
+    if (cells.length < needed || (cells.length > width && cells.slice(width).some((cell) => cell.trim() !== ""))) {
+      return bad(line, cells.join(mapping.delimiter), () => `The row has ${cells.length} cells, the first row has ${width}; it is left out.`);
     }
     packet.line = line;
     packet.received = true;
@@ -87,16 +90,25 @@ export function logReader(mapping: ColumnMapping): LogReader {
       const cell = cells[at.received];
       const said = yesOrNo(cell);
       if (said === null)
-        return bad(cell, () => `"${cell}" does not say whether the packet was received; permitted: ${RECEIVED_WORDS}. The row is left out.`);
+        return bad(
+          line,
+          cell,
+          () => `"${short(cell)}" does not say whether the packet was received; permitted: ${RECEIVED_WORDS}. The row is left out.`,
+        );
       packet.received = mapping.receivedMarks === "received" || saysItself(cell) ? said : !said;
     }
     if (at.number >= 0) {
       const cell = cells[at.number];
       const number = wholeNumber(cell);
       const { wrapsAt } = shared;
-      if (Number.isNaN(number)) return bad(cell, () => `"${cell}" is no packet number; permitted: whole numbers from 0. The row is left out.`);
+      if (Number.isNaN(number))
+        return bad(line, cell, () => `"${short(cell)}" is no packet number; permitted: whole numbers from 0. The row is left out.`);
       if (shared.fixed && wrapsAt && number >= wrapsAt) {
-        return bad(cell, () => `Packet number ${cell} lies outside of the counter; permitted: 0 to ${wrapsAt - 1}. The row is left out.`);
+        return bad(
+          line,
+          cell,
+          () => `Packet number ${short(cell)} lies outside of the counter; permitted: 0 to ${wrapsAt - 1}. The row is left out.`,
+        );
       }
       packet.number = number;
       packet.text = cell;
@@ -115,18 +127,19 @@ export function logReader(mapping: ColumnMapping): LogReader {
         packet.timeText = cell;
       } else if (packet.received || cell.trim() !== "") {
         bad(
+          line,
           cell,
           () =>
-            `"${cell}" is no time ${mapping.time?.unit === "iso" ? "(YYYY-MM-DD hh:mm:ss)" : `in ${mapping.time?.unit}`}; the packet counts, its time does not.`,
+            `"${short(cell)}" is no time ${mapping.time?.unit === "iso" ? "(YYYY-MM-DD hh:mm:ss)" : `in ${mapping.time?.unit}`}; the packet counts, its time does not.`,
         );
       }
     }
     packet.rssiDbm = Number.NaN;
     if (at.rssi >= 0 && packet.received) {
-      const cell = cells[at.rssi];
+      const cell = cells[at.rssi] ?? "";
       packet.rssiDbm = decimalNumber(cell, mapping.decimal);
       if (Number.isNaN(packet.rssiDbm) && cell.trim() !== "") {
-        bad(cell, () => `"${cell}" is no RSSI in dBm; the packet counts, its RSSI does not.`);
+        bad(line, cell, () => `"${short(cell)}" is no RSSI in dBm; the packet counts, its RSSI does not.`);
       }
     }
     return true;
@@ -195,10 +208,15 @@ export function logReader(mapping: ColumnMapping): LogReader {
   return { push: splitter.push, finish };
 }
 
+const isEmpty = (cell: string): boolean => cell === "";
+
 const counterOf = (mapping: ColumnMapping): Counter => ({
   wrapsAt: mapping.number?.wrapsAt ?? null,
   fixed: (mapping.number?.wrapsAt ?? null) !== null,
 });
+
+/** A cell may be a whole page. */
+const short = (text: string): string => (text.length > 80 ? `${text.slice(0, 79)}…` : text);
 
 /** Slices of a file keep the whole piece of it alive; what is kept has to be a text of its own. */
 const kept = (text: string): string => JSON.parse(JSON.stringify(text)) as string;

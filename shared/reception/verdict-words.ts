@@ -162,8 +162,11 @@ function streaks({ counts, lossRatio }: LinkFit): string {
 function pValues({ runs, ljungBox, transitions }: IndependenceTest): string {
   const parts = [];
   if (runs) parts.push(`runs test p ${pText(runs.p)}`);
-  if (ljungBox) parts.push(`Ljung-Box p ${pText(ljungBox.p)}`);
-  if (transitions && transitions.smallestExpected >= 5) parts.push(`successive outcomes p ${pText(transitions.p)}`);
+  // Where losses are rare the other two are no good approximation, and do not count.
+  if (transitions && transitions.smallestExpected >= 5) {
+    if (ljungBox) parts.push(`Ljung-Box p ${pText(ljungBox.p)}`);
+    parts.push(`successive outcomes p ${pText(transitions.p)}`);
+  }
   return parts.join(", ");
 }
 

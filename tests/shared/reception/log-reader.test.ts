@@ -129,6 +129,16 @@ describe("numbers that do not simply count on", () => {
     expect(counts(content)).toEqual({ reset: 1 });
     expect(content.report.troubles.reset.first[0]).toMatchObject({ line: 102, value: "0" });
   });
+  it("takes a fall to 0 for a restart also where the counter could have come round with many losses", () => {
+    const content = read(numbers(...span(55_000, 55_050), ...span(0, 20)), { number: { column: "seq", wrapsAt: 65_536 } });
+    expect(runs(content)).toEqual([[70]]);
+    expect(counts(content)).toEqual({ reset: 1 });
+  });
+  it("counts losses over a wrap of the counter", () => {
+    const content = read(numbers(...span(65_400, 65_450), ...span(100, 120)), { number: { column: "seq", wrapsAt: 65_536 } });
+    expect(runs(content)).toEqual([[50, 186, 20]]);
+    expect(counts(content)).toEqual({ wrapped: 1, gap: 1 });
+  });
   it("recognises a restart soon after the beginning, whose numbers were all there already", () => {
     const content = read(numbers(...span(0, 300), ...span(0, 100)), SEQ);
     expect(runs(content)).toEqual([[400]]);
@@ -235,6 +245,12 @@ describe("rows that cannot be read", () => {
     ]);
     expect(content.report).toMatchObject({ rows: 8, rowsUsed: 4 });
     expect(content.links[0].rssi?.count).toBe(2);
+  });
+  it("may leave the RSSI out at their end", () => {
+    const content = read("seq,ok,rssi\n0,1,-70\n1,0\n2,1\n", { number: { column: "seq" }, received: "ok", rssi: "rssi" });
+    expect(runs(content)).toEqual([[1, 1, 1]]);
+    expect(content.links[0].rssi?.count).toBe(1);
+    expect(counts(content)).toEqual({});
   });
   it("are no trouble when they are empty or only end with a delimiter", () => {
     const content = read("seq,t\n0,1,\n,\n1,2,\n\n", { number: { column: "seq" } });

@@ -1,4 +1,5 @@
 import { describe, expect, it } from "vitest";
+import { uniformStream } from "#shared/math/random.ts";
 import { binomialAtMost } from "#shared/math/statistics.ts";
 import { measureForClaim, shownReliability, slowerThanRound } from "#shared/reception/claim.ts";
 import { fitLink } from "#shared/reception/fit.ts";
@@ -119,6 +120,37 @@ describe("the verdict in words", () => {
   it("names rounds at the ends that only others saw", () => {
     expect(words(traceOf([0, 40, 500], { lostBefore: 40 })).sentences.join(" ")).toMatch(/40 rounds at the ends count as lost/);
   });
+});
+
+describe("how often the verdict errs", () => {
+  /** A Gilbert-Elliott channel that starts stationary; independent when goodToBad + badToGood = 1. */
+  const drawn = (packets: number, goodToBad: number, badToGood: number, seed: number): number[] => {
+    const uniform = uniformStream(seed, "verdict");
+    let bad = uniform() < goodToBad / (goodToBad + badToGood);
+    const runs = [0];
+    for (let k = 0; k < packets; k++) {
+      if ((runs.length % 2 === 0) === bad) runs[runs.length - 1]++;
+      else runs.push(1);
+      const u = uniform();
+      bad = bad ? u >= badToGood : u < goodToBad;
+    }
+    return runs;
+  };
+  const shareOf = (verdict: string, packets: number, goodToBad: number, badToGood: number): number => {
+    const seeds = Array.from({ length: 300 }, (_, seed) => seed);
+    return seeds.filter((seed) => testIndependence({ runs: drawn(packets, goodToBad, badToGood, seed) }).verdict === verdict).length / seeds.length;
+  };
+
+  it.each([
+    [5000, 0.02],
+    [1000, 0.05],
+    [2000, 0.2],
+    [2000, 0.5],
+  ])("raises a false alarm over %i independent packets at loss %d at most once in twenty logs", (packets, loss) => {
+    expect(shareOf("independent", packets, loss, 1 - loss)).toBeGreaterThanOrEqual(0.95);
+  });
+  it("finds bursts of two packets in five thousand nearly always", () => expect(shareOf("bursts", 5000, 0.02, 0.5)).toBeGreaterThan(0.99));
+  it("finds losses that keep apart nearly always", () => expect(shareOf("apart", 3000, 0.3, 0.8)).toBeGreaterThan(0.99));
 });
 
 describe("the hours of the day", () => {
