@@ -3,8 +3,8 @@ import type { LogDetail } from "#shared/api/logs.ts";
 import { Button, LinkButton } from "#src/components/ui/button.tsx";
 import { ProblemNote, TextField } from "#src/components/ui/field.tsx";
 import { Tell } from "#src/components/ui/tell.tsx";
-import { bytesText } from "#src/lib/format.ts";
 import { nameOfFile } from "../model/log-words.ts";
+import { ProgressBar } from "./progress.tsx";
 import type { Saving } from "./use-save.ts";
 
 interface SavePartProps {
@@ -54,10 +54,14 @@ export function SavePart({ fileName, saving, impossible, onSave, onCancel, logPa
       </form>
       {busy && (
         <div className="lg-progress">
-          <label>
-            <span>{progressText(saving)}</span>
-            <progress {...(saving.state === "server" ? {} : { value: saving.bytes, max: Math.max(1, saving.ofBytes) })} />
-          </label>
+          {saving.state === "server" ? (
+            <label>
+              <span>The server reads the file</span>
+              <progress />
+            </label>
+          ) : (
+            <ProgressBar what={saving.state === "packing" ? "Packing" : "Sending, packed"} progress={saving.progress} />
+          )}
           <Button small onClick={onCancel}>
             Stop
           </Button>
@@ -77,10 +81,4 @@ export function SavePart({ fileName, saving, impossible, onSave, onCancel, logPa
       )}
     </section>
   );
-}
-
-function progressText(saving: Saving): string {
-  if (saving.state === "packing") return `Packing: ${bytesText(saving.bytes)} of ${bytesText(saving.ofBytes)}`;
-  if (saving.state === "sending") return `Sending: ${bytesText(saving.bytes)} of ${bytesText(saving.ofBytes)}, packed`;
-  return "The server reads the file";
 }

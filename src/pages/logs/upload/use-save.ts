@@ -6,11 +6,12 @@ import { useUploadLog } from "#src/api/logs/upload-log.ts";
 import { failureText } from "#src/components/ui/query-error.tsx";
 import type { LogClient } from "#src/workers/log-client.ts";
 import type { LogReading } from "#src/workers/log-contract.ts";
+import { createProgress, type Progress } from "./progress.tsx";
 
 export type Saving =
   | { state: "idle" }
-  | { state: "packing"; bytes: number; ofBytes: number }
-  | { state: "sending"; bytes: number; ofBytes: number }
+  | { state: "packing"; progress: Progress }
+  | { state: "sending"; progress: Progress }
   | { state: "server" }
   | { state: "failed"; message: string }
   | { state: "saved"; log: LogDetail; existed: boolean; differences: string[] };
@@ -45,22 +46,26 @@ export function useSave(client: LogClient | null, teamId: string, onSaved: (save
       if (!signal.aborted) setSaving(next);
     };
     try {
-      show({ state: "packing", bytes: 0, ofBytes: file.size });
-      const packed = await client.pack(file, ({ bytes, ofBytes }) => show({ state: "packing", bytes, ofBytes }));
+      const packing = createProgress(file.size);
+      show({ state: "packing", progress: packing });
+      const packed = await client.pack(file, packing.tell);
       if (signal.aborted) return;
       if (!packed.ok) {
         setSaving("message" in packed ? { state: "failed", message: packed.message } : { state: "idle" });
         return;
       }
-      const { size } = packed.packed;
-      show({ state: "sending", bytes: 0, ofBytes: size });
+      const sending = createProgress(packed.packed.size);
+      show({ state: "sending", progress: sending });
       const { log, existed } = await uploading.mutateAsync({
         name,
         fileName: file.name,
         mapping,
         packed: packed.packed,
         signal,
-        onProgress: (bytes, ofBytes) => show(bytes >= ofBytes ? { state: "server" } : { state: "sending", bytes, ofBytes }),
+        onProgress: (bytes, ofBytes) => {
+          sending.tell({ bytes, ofBytes });
+          if (bytes >= ofBytes) show({ state: "server" });
+        },
       });
       if (signal.aborted) return;
       const saved = { state: "saved", log, existed, differences: differencesOf(reading, log) } as const;

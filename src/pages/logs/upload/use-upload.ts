@@ -2,16 +2,18 @@
 import { useCallback, useEffect, useMemo, useRef, useState } from "react";
 import type { ColumnMapping } from "#shared/reception/types.ts";
 import type { LogClient } from "#src/workers/log-client.ts";
-import type { LogPreview, LogProgress, LogReading } from "#src/workers/log-contract.ts";
+import type { LogPreview, LogReading } from "#src/workers/log-contract.ts";
 import { blankColumns, type Columns, columnsOf, type MappingProblem, mappingOf } from "../model/columns.ts";
 import { columnsKey, rememberedMapping, rememberMapping } from "../model/remembered.ts";
+
+import { createProgress, type Progress } from "./progress.tsx";
 
 /** Where the columns' roles come from. */
 export type Origin = "guessed" | "as-last-time" | "own";
 
 export type Reading =
   | { state: "waiting" }
-  | { state: "reading"; progress: LogProgress }
+  | { state: "reading"; progress: Progress }
   | { state: "done"; reading: LogReading; mapping: ColumnMapping }
   | { state: "cancelled" }
   | { state: "failed"; message: string };
@@ -87,17 +89,16 @@ export function useUpload(client: LogClient | null, file: File, personId: string
     const mapping = JSON.parse(mappingText) as ColumnMapping;
     let wanted = true;
     const show = (next: Reading) => wanted && setReading(next);
-    show({ state: "reading", progress: { bytes: 0, ofBytes: file.size } });
-    client
-      .read(file, mapping, (progress) => show({ state: "reading", progress }))
-      .then(
-        (read) => {
-          if (read.ok) show({ state: "done", reading: read.reading, mapping });
-          else if ("message" in read) show({ state: "failed", message: read.message });
-          else show({ state: "cancelled" });
-        },
-        (error: Error) => show({ state: "failed", message: error.message }),
-      );
+    const progress = createProgress(file.size);
+    show({ state: "reading", progress });
+    client.read(file, mapping, progress.tell).then(
+      (read) => {
+        if (read.ok) show({ state: "done", reading: read.reading, mapping });
+        else if ("message" in read) show({ state: "failed", message: read.message });
+        else show({ state: "cancelled" });
+      },
+      (error: Error) => show({ state: "failed", message: error.message }),
+    );
     return () => {
       wanted = false;
       client.cancel();

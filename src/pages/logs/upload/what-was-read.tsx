@@ -3,9 +3,9 @@ import { counted, countText, durationText } from "#shared/reception/words.ts";
 import { Button } from "#src/components/ui/button.tsx";
 import { ProblemNote } from "#src/components/ui/field.tsx";
 import { Scroller } from "#src/components/ui/table.tsx";
-import { bytesText } from "#src/lib/format.ts";
 import type { LogReading } from "#src/workers/log-contract.ts";
 import { lossText, packetsText } from "../model/log-words.ts";
+import { ProgressBar } from "./progress.tsx";
 import type { UploadControl } from "./use-upload.ts";
 
 const FEW_LINKS = 12;
@@ -14,15 +14,9 @@ const FEW_LINKS = 12;
 export function WhatWasRead({ control }: { control: UploadControl }) {
   const { reading } = control;
   if (reading.state === "reading") {
-    const { bytes, ofBytes } = reading.progress;
     return (
       <div className="lg-progress">
-        <label>
-          <span>
-            Reading the whole file: {bytesText(bytes)} of {bytesText(ofBytes)}
-          </span>
-          <progress value={bytes} max={Math.max(1, ofBytes)} />
-        </label>
+        <ProgressBar what="Reading the whole file" progress={reading.progress} />
         <Button small onClick={control.cancelReading}>
           Stop reading
         </Button>
