@@ -14,7 +14,7 @@ import { FloodTally } from "./tally.ts";
 export interface Figure {
   label: string;
   value: number;
-  /** "" for shares and counts. */
+  /** "": a share, 0 to 1. */
   unit: string;
 }
 
@@ -251,7 +251,7 @@ export class Advisor {
       figures: [
         { label: "delivered now", value: share(now), unit: "" },
         { label: "delivered then", value: share(then), unit: "" },
-        { label: "floods", value: then.of, unit: "" },
+        { label: "tried with", value: then.of, unit: "floods" },
         { label: "time added to the round", value: timing.reserveS - changed.reserveS, unit: "s" },
         { label: "reserve then", value: changed.reserveS, unit: "s" },
       ],

@@ -118,8 +118,8 @@ function deepNodes(scenario: Scenario, timing: RoundTiming, tally: FloodTally): 
       slot: null,
       text: `${capital(listWords(nodes.map((id) => nodeWords(scenario, id))))} ${are} deeper than the hop bound of ${timing.hops}: half of the floods reach ${them} in step ${step} or only then, so ${nodes.length > 1 ? "they have" : "it has"} fewer tries than the bound promises.`,
       figures: [
-        { label: "hop bound", value: timing.hops, unit: "" },
-        { label: "latest median step", value: step, unit: "" },
+        { label: "hop bound", value: timing.hops, unit: "steps" },
+        { label: "latest median step", value: step, unit: "steps" },
       ],
       edits: step <= 20 ? [{ path: ["round", "hops"], value: step }] : [],
     },
@@ -157,8 +157,8 @@ function sharedLosses(tally: FloodTally): Advice[] {
         slot: null,
         text: `${timing.name} lost measurement and command of the same sampling ${bothLost} times in ${samplings}; independent losses would do so about ${independent < 10 ? independent.toFixed(1) : independent.toFixed(0)} times. What assumes independent losses is too hopeful on this floor.`,
         figures: [
-          { label: "both lost", value: bothLost, unit: "" },
-          { label: "if independent", value: independent, unit: "" },
+          { label: "both lost", value: bothLost, unit: "times" },
+          { label: "if independent", value: independent, unit: "times" },
         ],
         edits: [],
       },
@@ -181,7 +181,7 @@ function spells(scenario: Scenario, timing: RoundTiming, tally: FloodTally): Adv
       nodes: [],
       slot: null,
       text: `Floods with ${listWords(dependent.map(({ slot }) => messagesOf(timing, slot)))} come in good and bad spells: nodes move, or fading or interference outlasts a round. The true intervals are wider, by a factor of up to about ${factor.toFixed(1)}.`,
-      figures: [{ label: "factor", value: factor, unit: "" }],
+      figures: [{ label: "wider by", value: factor, unit: "times" }],
       edits: [],
     },
   ];
@@ -199,7 +199,7 @@ function tooFew(pairs: readonly Pair[], tally: FloodTally, target: number): Advi
       nodes,
       slot: null,
       text: `${tally.done} rounds are too few to show ${wanted(target)}: even without a loss it takes ${needed} floods until the 95 % interval lies above it.`,
-      figures: [{ label: "floods needed", value: needed, unit: "" }],
+      figures: [{ label: "floods needed", value: needed, unit: "floods" }],
       edits: [],
     },
   ];

@@ -64,7 +64,7 @@ describe("advice", () => {
       expect(figure(change, "delivered then")).toBeGreaterThan(figure(change, "delivered now"));
       const changed = withEdits(scenario, change.edits);
       // Who makes the change gets what was promised: the same random numbers, so the same floods.
-      const survey = surveyFloods(changed, { rounds: figure(change, "floods"), seed: 1, withoutAdvice: true });
+      const survey = surveyFloods(changed, { rounds: figure(change, "tried with"), seed: 1, withoutAdvice: true });
       const nodes = survey.slots
         .filter(({ id }) => id === change.slot || id === `${change.slot}/2`)
         .map(({ nodes }) => nodes.find(({ node }) => node === weak.nodes[0]));
