@@ -9,10 +9,13 @@ import { migrate } from "drizzle-orm/node-postgres/migrator";
 import pg from "pg";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { z } from "zod";
-import { DEMO_PASSWORD } from "#server/db/demo.ts";
+import { DEMO_PARTS, DEMO_PASSWORD } from "#server/db/demo.ts";
 import { migrateDatabase } from "#server/db/migrate.ts";
+import { seedDemo } from "#server/db/seed.ts";
 import { refreshSummaries } from "#server/features/scenarios/refresh.ts";
 import { SUMMARY_VERSION, summarise } from "#server/features/scenarios/summary.ts";
+import { errorBodySchema } from "#shared/api/errors.ts";
+import { logListResponse } from "#shared/api/logs.ts";
 import { revisionDetailSchema, revisionListResponse } from "#shared/api/revisions.ts";
 import { createRunResponse, runDetailSchema, runListResponse } from "#shared/api/runs.ts";
 import { roundSummarySchema, type ScenarioItem, scenarioListResponse, scenarioResponse } from "#shared/api/scenarios.ts";
@@ -163,5 +166,35 @@ describe("what an older version kept", () => {
     const { scenario } = copy.latest;
     const saved = await agent.post(`${team}/scenarios/${id}/revisions`).send({ baseRevision: 2, scenario }).expect(201);
     expect(bodyOf(scenarioResponse, saved).revision).toBe(3);
+  });
+
+  it("gets the parts of the demo that came later, once", async () => {
+    expect(await seedDemo(database.url)).toBe(true);
+    expect(await seedDemo(database.url)).toBe(false);
+    const { items: all } = bodyOf(scenarioListResponse, await agent.get(`${team}/scenarios`).query({ pageSize: 100 }).expect(200));
+    const later = DEMO_PARTS[1].scenarios.length;
+    // One of them is the copy that was made above.
+    expect(all).toHaveLength(items.length + later + 1);
+    const { items: logs } = bodyOf(logListResponse, await agent.get(`${team}/logs`).query({ sort: "name", direction: "ascending" }).expect(200));
+    expect(logs.map(({ name, author, scenarios }) => [name, author.name, scenarios])).toEqual([
+      ["Hall 2, press running", "Tove Saltby", 1],
+      ["Hall 2, quiet shift", "Rowan Fennick", 1],
+    ]);
+    for (const { id } of logs) {
+      const { error } = bodyOf(errorBodySchema, await agent.delete(`${team}/logs/${id}`).expect(409));
+      expect(error.uses?.map(({ name }) => name)).toEqual(["Balancer rig 2, as recorded"]);
+    }
+  });
+
+  it("gets nothing more where the demo team has been removed", async () => {
+    const empty = await createTestDatabase();
+    const bare = new pg.Client({ connectionString: empty.url });
+    await bare.connect();
+    await bare.query("insert into settings (key, value) values ('demo', 'long ago')");
+    expect(await seedDemo(empty.url)).toBe(false);
+    expect((await bare.query("select key from settings order by key")).rows.map(({ key }) => key)).toEqual(DEMO_PARTS.map(({ key }) => key));
+    expect((await bare.query("select count(*)::int as teams from teams")).rows[0].teams).toBe(0);
+    await bare.end();
+    await empty.remove();
   });
 });

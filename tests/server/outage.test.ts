@@ -4,9 +4,12 @@ import { setTimeout as pause } from "node:timers/promises";
 import supertest from "supertest";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { errorBodySchema } from "#shared/api/errors.ts";
+import { uploadLogParameters, uploadLogResponse } from "#shared/api/logs.ts";
 import { healthResponse, sessionResponse } from "#shared/api/session.ts";
 import { createTestDatabase, startTestCluster, type TestCluster } from "../helpers/database.ts";
 import { bodyOf, createScenario, type Harness, PASSWORD, SLOW, scenarioNamed, startHarness } from "./harness.ts";
+import { png } from "./pictures.ts";
+import { csvText, MAPPING } from "./reception-csv.ts";
 
 let cluster: TestCluster;
 let harness: Harness;
@@ -18,6 +21,8 @@ afterAll(async () => {
   await harness?.close();
   await cluster?.remove();
 }, SLOW);
+
+const parameters = new URLSearchParams(uploadLogParameters({ name: "Hall 2", fileName: "", mapping: MAPPING }));
 
 /** Between server and database; frozen, it takes connections and lets nothing through. */
 async function startProxy(to: string) {
@@ -65,6 +70,8 @@ describe("a stopped database", () => {
     const { engineer } = harness.people;
     const { id } = await createScenario(harness, scenarioNamed("Before"));
     const scenarios = `/api/teams/${harness.team.id}/scenarios`;
+    const logs = `/api/teams/${harness.team.id}/logs`;
+    const pictures = `/api/teams/${harness.team.id}/pictures`;
     const requests = (): [string, supertest.Test][] => [
       ["the session", engineer.agent.get("/api/session")],
       ["the session of a visitor", supertest(harness.express).get("/api/session")],
@@ -73,6 +80,9 @@ describe("a stopped database", () => {
       ["a scenario", engineer.agent.get(`${scenarios}/${id}`)],
       ["saving", engineer.agent.post(`${scenarios}/${id}/revisions`).send({ baseRevision: 1, scenario: scenarioNamed("During") })],
       ["a visitor", supertest(harness.express).get(scenarios)],
+      ["the logs", engineer.agent.get(logs)],
+      ["uploading a log", engineer.agent.post(`${logs}?${parameters}`).set("Content-Type", "text/csv").send(csvText(10))],
+      ["uploading a picture", engineer.agent.post(`${pictures}?name=x.png`).set("Content-Type", "image/png").send(png(4, 4))],
     ];
 
     for (let outage = 1; outage <= 2; outage++) {
@@ -96,6 +106,37 @@ describe("a stopped database", () => {
       const saved = await engineer.agent.post(`${scenarios}/${id}/revisions`).send({ baseRevision: outage, scenario: scenarioNamed("After") });
       expect(saved.status).toBe(201);
     }
+  }, 60_000);
+
+  it("that stops while a log is on its way takes the log with it, and takes the same one when it is back", async () => {
+    const { engineer } = harness.people;
+    const file = Buffer.from(csvText(5_000, 3));
+    const server = harness.express.listen(0, "127.0.0.1");
+    await new Promise((resolve) => server.once("listening", resolve));
+    const signedIn = await engineer.agent.post("/api/session").send({ email: engineer.email, password: PASSWORD });
+    const send = (chunks: () => AsyncGenerator<Buffer>) =>
+      fetch(`http://127.0.0.1:${(server.address() as AddressInfo).port}/api/teams/${harness.team.id}/logs?${parameters}`, {
+        method: "POST",
+        headers: { "Content-Type": "text/csv", Cookie: signedIn.headers["set-cookie"][0].split(";")[0] },
+        body: chunks(),
+        duplex: "half",
+      } as unknown as RequestInit);
+    const broken = await send(async function* () {
+      yield file.subarray(0, 70_000);
+      await cluster.halt();
+      yield file.subarray(70_000);
+    });
+    expect(broken.status).toBe(503);
+    expect(bodyOf(errorBodySchema, { body: await broken.json() }).error.code).toBe("database-unavailable");
+    await cluster.start();
+    await eventually(async () => (await supertest(harness.express).get("/api/health")).status === 200, 5_000);
+    const again = await send(async function* () {
+      yield file;
+    });
+    expect(again.status).toBe(201);
+    expect(bodyOf(uploadLogResponse, { body: await again.json() })).toMatchObject({ existed: false, log: { rows: 10_000 } });
+    server.closeAllConnections();
+    await new Promise((resolve) => server.close(resolve));
   }, 60_000);
 
   it("that falls silent is given up on in time, and used again when it answers", async () => {
