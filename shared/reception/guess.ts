@@ -1,7 +1,7 @@
 /** What a file looks like: its delimiter, decimal sign and header, and which column is probably what. A guess; the user has the last word. */
 import { decimalNumber, readInstant, saysItself, wholeNumber, yesOrNo } from "./cells.ts";
 import { csvRows } from "./csv-rows.ts";
-import { type ColumnMapping, DELIMITERS, type Mapped } from "./types.ts";
+import { type ColumnMapping, DELIMITERS, MAX_PREAMBLE, type Mapped } from "./types.ts";
 
 export interface LogPreview {
   delimiter: ColumnMapping["delimiter"];
@@ -22,11 +22,19 @@ export interface MappingGuess {
 /** From the beginning of a file (64 kB are plenty). The last line may be cut off. */
 export function previewLog(text: string, rowsWanted = 50): LogPreview {
   const delimiter = guessDelimiter(text);
-  const rows = firstRows(text, delimiter, rowsWanted + 1);
+  const all = firstRows(text, delimiter, rowsWanted + MAX_PREAMBLE);
+  const rows = all.slice(preambleRows(all), preambleRows(all) + rowsWanted + 1);
   const decimal = guessDecimal(rows, delimiter);
   const header = rows.length > 0 && looksLikeHeader(rows, decimal) ? rows[0].map((cell) => cell.trim()) : null;
   const sample = header ? rows.slice(1) : rows.slice(0, rowsWanted);
   return { delimiter, decimal, header, rows: sample, guess: guessMapping(header, sample, { delimiter, decimal }) };
+}
+
+/** Loggers write a few lines about themselves before the header: rows at the beginning that are narrower than the usual one. */
+export function preambleRows(rows: readonly (readonly string[])[]): number {
+  const usual = mostFrequent(rows.map((cells) => cells.length));
+  const first = rows.findIndex((cells) => cells.length >= usual);
+  return first > 0 && first <= MAX_PREAMBLE ? first : 0;
 }
 
 /** The first rows of a text, split as the reader will split them. */

@@ -13,6 +13,7 @@ import {
   type LogContent,
   linkName,
   MAX_LINKS,
+  MAX_PREAMBLE,
   MAX_TROUBLES,
   type ReadReport,
   TROUBLE_KINDS,
@@ -36,6 +37,9 @@ export function logReader(mapping: ColumnMapping): LogReader {
   const instant: Instant = { seconds: 0, hour: -1 };
   let columns: Columns | null = null;
   let issues: Issue[] | null = null;
+  /** Why the first row is not where the table begins. */
+  let refused: Issue[] | null = null;
+  const preamble: { line: number; text: string }[] = [];
   let width = 0;
   /** Cells up to the last one that a packet cannot do without; an RSSI may be left out at the end of a row. */
   let needed = 0;
@@ -54,15 +58,8 @@ export function logReader(mapping: ColumnMapping): LogReader {
   function takeRow(row: CsvRow): void {
     if (issues) return;
     if (!columns) {
-      width = row.cells.length;
-      const resolved = resolveColumns(mapping, mapping.header ? row.cells : null, width);
-      if (!resolved.ok) {
-        issues = resolved.issues;
-        return;
-      }
-      columns = resolved.columns;
-      needed = 1 + Math.max(...Object.entries(columns).map(([what, at]) => (what === "rssi" ? -1 : at)));
-      if (mapping.header) return;
+      columns = beginning(row);
+      if (!columns || mapping.header) return;
     }
     // An empty line of a spreadsheet still has its delimiters.
     if (row.cells[0] === "" && row.cells.every(isEmpty)) return;
@@ -75,6 +72,23 @@ export function logReader(mapping: ColumnMapping): LogReader {
   function bad(line: number, value: string, message: () => string): false {
     trouble("bad-row", line, "", value, message);
     return false;
+  }
+
+  /** The columns when the table begins with this row. Rows before it, such as a logger's remarks, are left out. */
+  function beginning({ cells, line }: CsvRow): Columns | null {
+    const resolved = resolveColumns(mapping, mapping.header ? cells : null, cells.length);
+    if (!resolved.ok) {
+      // What the first row lacks is the answer when none fits.
+      refused ??= resolved.issues;
+      if (preamble.length < MAX_PREAMBLE) preamble.push({ line, text: cells.join(mapping.delimiter) });
+      else issues = refused;
+      return null;
+    }
+    for (const { line: before, text } of preamble) bad(before, text, () => "The line stands before the table; it is left out.");
+    report.rows += preamble.length;
+    width = cells.length;
+    needed = 1 + Math.max(...Object.entries(resolved.columns).map(([what, at]) => (what === "rssi" ? -1 : at)));
+    return resolved.columns;
   }
 
   /** Fills `packet`; false when the row cannot be used. */
@@ -192,7 +206,8 @@ export function logReader(mapping: ColumnMapping): LogReader {
 
   function finish(): LogOutcome {
     splitter.end();
-    if (issues) return { ok: false, issues };
+    const wrong = issues ?? (columns ? null : refused);
+    if (wrong) return { ok: false, issues: wrong };
     if (!columns) return { ok: false, issues: [{ code: "empty-log", path: "file", message: "The file has no rows." }] };
     const readers = [...links.values()].flatMap((bySource) => [...bySource.values()]);
     const traces = readers.map((reader) => reader.finish());

@@ -8,6 +8,8 @@ import { count, quantity } from "#shared/scenario/quantity.ts";
 export const MAX_LINKS = 2000;
 /** Troubles of one kind that are kept with their line; all are counted. */
 export const MAX_TROUBLES = 200;
+/** Lines that a logger may write before the header. */
+export const MAX_PREAMBLE = 20;
 
 // ---------------------------------------------------------------- mapping
 

@@ -19,6 +19,12 @@ describe("guessing what a log looks like", () => {
     const { rows } = previewLog(text.slice(0, 1500), 400);
     expect(rows.every((row) => row.length === 2)).toBe(true);
   });
+  it("passes over what a logger writes before the header", () => {
+    const rows = Array.from({ length: 20 }, (_, k) => `${k},${20 * k},3`);
+    const seen = previewLog(["# logger 2", "firmware 1.4", "seq,t_ms,src", ...rows].join("\n"));
+    expect(seen).toMatchObject({ delimiter: ",", header: ["seq", "t_ms", "src"], guess: { mapping: { number: { column: "seq" }, source: "src" } } });
+    expect(seen.rows[0]).toEqual(["0", "0", "3"]);
+  });
   it("takes columns by their names, with units from their endings", () => {
     expect(guess("Round;Time [ms];Sender;Receiver;Received;RSSI (dBm)\n5;100;3;7;1;-70\n6;120;3;7;0;\n")).toMatchObject({
       number: { column: "Round", kind: "round" },

@@ -246,6 +246,19 @@ describe("rows that cannot be read", () => {
     expect(content.report).toMatchObject({ rows: 8, rowsUsed: 4 });
     expect(content.links[0].rssi?.count).toBe(2);
   });
+  it("may stand before the header, as a logger's remarks do", () => {
+    const content = read("# logger 2\nfirmware 1.4, bay 3\nseq,t,from\n0,0,a\n1,0.02,a\n3,0.06,a\n", {
+      number: { column: "seq" },
+      time: { column: "t" },
+      source: "from",
+    });
+    expect(runs(content)).toEqual([[2, 1, 1]]);
+    expect(content.report).toMatchObject({ rows: 5, rowsUsed: 3 });
+    expect(content.report.troubles["bad-row"].first).toMatchObject([
+      { line: 1, value: "# logger 2", message: "The line stands before the table; it is left out." },
+      { line: 2, value: "firmware 1.4, bay 3" },
+    ]);
+  });
   it("may leave the RSSI out at their end", () => {
     const content = read("seq,ok,rssi\n0,1,-70\n1,0\n2,1\n", { number: { column: "seq" }, received: "ok", rssi: "rssi" });
     expect(runs(content)).toEqual([[1, 1, 1]]);
