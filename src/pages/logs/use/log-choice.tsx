@@ -1,4 +1,4 @@
-import { useEffect, useId, useMemo, useState } from "react";
+import { Fragment, useEffect, useId, useMemo, useState } from "react";
 import type { LogDetail } from "#shared/api/logs.ts";
 import { slowerThanRound } from "#shared/reception/claim.ts";
 import { type LinkTrace, linkName } from "#shared/reception/types.ts";
@@ -54,6 +54,14 @@ const KIND_WORDS: Record<UseKind, { title: string; text: string }> = {
   "bernoulli-upper": { title: "Each message by itself, on the safe side", text: "Independent losses at the upper end of the 95 % interval." },
 };
 
+const MESSAGES = ["Measurement", "Command"] as const;
+
+/** null: no packet of the link. */
+function readStart(text: string, packets: number): number | null {
+  const start = Number(text.trim());
+  return text.trim() !== "" && Number.isInteger(start) && start >= 0 && start < packets ? start : null;
+}
+
 /** The link in the other direction, else the second, else the same. */
 function otherWay(links: readonly LinkTrace[], from: number): number {
   const { source, receiver } = links[from] ?? { source: "", receiver: "" };
@@ -68,19 +76,19 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
   const [measurement, setMeasurement] = useState(link);
   const [command, setCommand] = useState(() => otherWay(links, link));
   const [kind, setKind] = useState<UseKind>("replay");
-  const [startText, setStartText] = useState("0");
+  /** Of measurement and command. */
+  const [startTexts, setStartTexts] = useState<readonly [string, string]>(["0", "0"]);
   const [then, setThen] = useState<"repeat" | "delivered" | "error">("repeat");
 
   const chosen = useMemo(() => [measurement, command].map((at) => links[at] as LinkTrace), [links, measurement, command]);
   const every = useMemo(() => chosen.map(({ intervalS }) => everyOf(intervalS, periodS)), [chosen, periodS]);
   const figures = useMemo(() => chosen.map((one, i) => figuresOf(one, every[i])), [chosen, every]);
   const { rounds, reserve } = roundsToEmbed(durationS, periodS);
-  const shortest = Math.min(...chosen.map(({ packets }) => packets));
-  const start = Number(startText.trim());
-  const startWrong = startText.trim() === "" || !Number.isInteger(start) || start < 0 || start > shortest - 1;
+  const starts = startTexts.map((text, i) => readStart(text, chosen[i]?.packets ?? 0));
+  const wrong = starts.indexOf(null);
   const replayed = useMemo(
-    () => chosen.map((one, i) => replayFrom(one.runs, startWrong ? 0 : start, rounds + reserve, every[i])),
-    [chosen, every, startWrong, start, rounds, reserve],
+    () => chosen.map((one, i) => replayFrom(one.runs, readStart(startTexts[i] ?? "", one.packets) ?? 0, rounds + reserve, every[i])),
+    [chosen, every, startTexts, rounds, reserve],
   );
   const tooFew = replayed.find(({ packets }) => packets < rounds);
 
@@ -95,7 +103,8 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
       const process = fittedProcess(kind, ofMeasurement, ofCommand);
       return { process, problem: process ? null : noChain };
     }
-    if (startWrong) return { process: null, problem: `A replay starts at a packet from 0 to ${countText(shortest - 1)}.` };
+    if (wrong >= 0)
+      return { process: null, problem: `A replay starts at a packet of the link: 0 to ${countText((chosen[wrong]?.packets ?? 1) - 1)}.` };
     const [first, second] = chosen.map((one) => linkName(one).slice(0, 120));
     return {
       process: replayProcess({
@@ -106,7 +115,7 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
       }),
       problem: null,
     };
-  }, [figures, replayed, kind, noChain, startWrong, shortest, chosen, log.id, log.name, tooFew, then]);
+  }, [figures, replayed, kind, noChain, wrong, chosen, log.id, log.name, tooFew, then]);
   useEffect(() => onOutcome(outcome), [outcome, onOutcome]);
 
   const group = useId();
@@ -115,8 +124,12 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
     word: `${linkName(one)}: ${one.packets > 0 ? lossText(one.lost / one.packets) : "no packet"} lost`,
   }));
   const burst = useMemo(() => longestBurst(indexRuns(chosen[0]?.runs ?? [])), [chosen]);
-  const widest = Math.max(...every);
-  const beforeBurst = burst ? Math.max(0, Math.min(burst.from - BEFORE_BURST * widest, shortest - (rounds + reserve) * widest)) : 0;
+  const startBeforeBurst = () => {
+    const need = (rounds + reserve) * Math.max(...every);
+    const from = burst ? Math.max(0, Math.min(burst.from - BEFORE_BURST * (every[0] ?? 1), (chosen[0]?.packets ?? 0) - need)) : 0;
+    setStartTexts([String(from), String(Math.max(0, Math.min(from, (chosen[1]?.packets ?? 1) - 1)))]);
+  };
+  const together = measurement === command && startTexts[0] === startTexts[1];
   return (
     <>
       <PickField
@@ -126,9 +139,6 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
         onChoose={(value) => setMeasurement(Number(value))}
       />
       <PickField label="Stands for the command" options={options} value={String(command)} onChoose={(value) => setCommand(Number(value))} />
-      {measurement === command && links.length > 1 && (
-        <p className="note second">One link for both: in a replay both messages are lost in the same rounds.</p>
-      )}
       <h3 id={group}>Its losses come into the scenario</h3>
       <div className="lg-kinds" role="radiogroup" aria-labelledby={group}>
         {KINDS.map((value) => (
@@ -149,31 +159,40 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
       </div>
       {kind === "replay" && (
         <div className="mt-2">
-          <Field
-            label="Starts at packet"
-            value={startText}
-            onText={setStartText}
-            inputMode="numeric"
-            range={`0 to ${countText(Math.max(0, shortest - 1))}`}
-            problem={
-              startWrong
-                ? { title: `“${startText}” is not a packet of both links.`, text: `Permitted: whole numbers from 0 to ${countText(shortest - 1)}.` }
-                : null
-            }
-          />
+          {MESSAGES.map((message, i) => {
+            const last = Math.max(0, (chosen[i]?.packets ?? 1) - 1);
+            const text = startTexts[i] ?? "";
+            return (
+              <Field
+                key={message}
+                label={`${message} starts at packet`}
+                value={text}
+                onText={(next) => setStartTexts(([first, second]) => (i === 0 ? [next, second] : [first, next]))}
+                inputMode="numeric"
+                range={`0 to ${countText(last)}`}
+                problem={
+                  starts[i] === null
+                    ? { title: `“${text}” is no packet of this link.`, text: `Permitted: whole numbers from 0 to ${countText(last)}.` }
+                    : null
+                }
+              />
+            );
+          })}
           <div className="flex flex-wrap gap-1.5 py-1">
-            <Button small onClick={() => setStartText("0")}>
+            <Button small onClick={() => setStartTexts(["0", "0"])}>
               First packet
             </Button>
-            <Button
-              small
-              impossible={burst ? null : "No packet of the measurement’s link was lost."}
-              onClick={() => setStartText(String(beforeBurst))}
-            >
+            <Button small impossible={burst ? null : "No packet of the measurement’s link was lost."} onClick={startBeforeBurst}>
               Before the longest burst
             </Button>
           </div>
           <Embedded replayed={replayed} />
+          {together && (
+            <p className="note second">
+              One link from one packet on stands for both: both messages are lost in the same rounds. Start the command elsewhere if they shall not
+              be.
+            </p>
+          )}
           <p className="note second">
             The run needs {counted(rounds, "round")} of {msText(periodS)}; {countText(Math.max(...replayed.map(({ packets }) => packets)))} packets go
             into the scenario, a reserve of {countText(Math.max(0, Math.max(...replayed.map(({ packets }) => packets)) - rounds))}.
@@ -196,12 +215,12 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
       {outcome.process && (
         <div className="lg-sets">
           <p className="strong">What this sets in the losses</p>
-          <dl className="lg-record">
+          <dl>
             {processLines(outcome.process).map(({ name, text }) => (
-              <div key={name}>
-                <dt className="second">{name}</dt>
+              <Fragment key={name}>
+                <dt>{name}</dt>
                 <dd>{text}</dd>
-              </div>
+              </Fragment>
             ))}
           </dl>
           <Pace links={chosen} every={every} periodS={periodS} />
