@@ -1,4 +1,7 @@
 /** What the engine computes, formula by formula, with the published source. Kept beside the docstrings of shared/. */
+import { NETWORK_METHODS } from "./network-methods.ts";
+import { RECEPTION_METHODS } from "./reception-methods.ts";
+
 interface Method {
   title: string;
   text: string;
@@ -75,6 +78,11 @@ export const METHODS: readonly MethodGroup[] = [
         source: "Gilbert, Bell Syst. Tech. J. 39, 1960; Elliott, Bell Syst. Tech. J. 42, 1963",
       },
       {
+        title: "A recording played back",
+        text: "One packet of a reception log a round, as run lengths that the scenario carries itself, so that it stays the same when the log is gone.",
+        source: null,
+      },
+      {
         title: "Random numbers",
         text: "Every stream is named by the scenario’s seed and its use, so that changing the noise leaves the losses as they were, and two designs with the same seed meet the same losses round by round.",
         source: "Generator Alea, Baagøe, 2010",
@@ -87,6 +95,8 @@ export const METHODS: readonly MethodGroup[] = [
       },
     ],
   },
+  ...NETWORK_METHODS,
+  ...RECEPTION_METHODS,
   {
     id: "machine",
     title: "Machine",
