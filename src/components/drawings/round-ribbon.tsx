@@ -235,10 +235,10 @@ function Ribbon({ timing, reachedShare, selected, onSelect, tabled, untilS, widt
   );
 }
 
-/** What the heights of the stairs stand for, in one sentence. `floods`: of how many floods the shares are. */
-export function stairsNote(reachedShare: ReachedShares | undefined, floods?: number): string {
+/** What the heights of the stairs stand for, in one sentence. `rounds`: over how many the shares were counted. */
+export function stairsNote(reachedShare: ReachedShares | undefined, rounds?: number): string {
   return reachedShare
-    ? `Stairs: the share of nodes that have the message after each step${floods === undefined ? "" : `, over ${floods} floods`}; the dotted line is all of them.`
+    ? `Stairs: the share of nodes that have the message after each step${rounds === undefined ? "" : `, over ${rounds} rounds`}; the dotted line is all of them.`
     : "Stairs: the hop that the flood has reached after each step, at the latest, on a line of nodes without loss.";
 }
 

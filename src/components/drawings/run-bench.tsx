@@ -12,7 +12,9 @@ import { CursorTable } from "./cursor-table.tsx";
 import { LimitStrip } from "./limit-strip.tsx";
 import { Machine, trailText } from "./machine.tsx";
 import { PlotTools } from "./plot-tools.tsx";
-import { RoundRibbon } from "./round-ribbon.tsx";
+import type { ReachedShares } from "./ribbon-geometry.ts";
+import { RoundRibbon, stairsNote } from "./round-ribbon.tsx";
+import { spentText } from "./spent.ts";
 import { tellingInstant } from "./telling-instant.ts";
 import { Transport } from "./transport.tsx";
 
@@ -27,6 +29,10 @@ export interface RunBenchProps {
   cursor?: PlotCursor;
   /** Further buttons on the line below the plots. */
   actions?: ReactNode;
+  /** Below the values at the cursor: what else happens at that instant. */
+  beside?: ReactNode;
+  /** What the floods of the run came to, where floods decided. */
+  reached?: { reached: ReachedShares; rounds: number } | null;
   stackRef?: Ref<PlotStackHandle>;
 }
 
@@ -51,13 +57,14 @@ function roundText({ round }: Scenario, timing: RoundTiming): string {
 }
 
 /** Limits, machine, values at the cursor, plots, tapes, time axis and round ribbon: all that stands below the verdict line. */
-export function RunBench({ scenario, timing, result, stale = false, cursor: given, actions, stackRef }: RunBenchProps) {
+export function RunBench({ scenario, timing, result, stale = false, cursor: given, actions, beside, reached, stackRef }: RunBenchProps) {
   const own = useRunCursor(result);
   const host = useRef<HTMLDivElement>(null);
   const narrow = useWidth(host) < 520;
   const [chosen, setChosen] = useState<readonly string[] | null>(null);
   const usual = useMemo(() => usualSignals(scenario, result), [scenario, result]);
   const signals = chosen ?? (narrow ? usual.slice(0, NARROW_SIGNALS) : usual);
+  const spent = useMemo(() => spentText(scenario, timing, result), [scenario, timing, result]);
   return (
     <PlotCursorContext value={given ?? own}>
       <div ref={host} className={stale ? "run-bench stale" : "run-bench"}>
@@ -67,6 +74,7 @@ export function RunBench({ scenario, timing, result, stale = false, cursor: give
             <Machine scenario={scenario} result={result} />
             <Transport result={result} note={trailText(scenario)} />
             <CursorTable scenario={scenario} result={result} />
+            {beside}
           </div>
           <div className="bench-plots">
             <PlotStack scenario={scenario} result={result} signals={signals} stale={stale} ref={stackRef} />
@@ -80,8 +88,10 @@ export function RunBench({ scenario, timing, result, stale = false, cursor: give
             <h2>Round</h2>
             <span className="rt">{roundText(scenario, timing)}</span>
           </div>
-          <RoundRibbon timing={timing} />
-          <p className="note-line">Stairs: the hop that the flood has reached after each step, at the latest, on a line of nodes without loss.</p>
+          <RoundRibbon timing={timing} reachedShare={reached?.reached} />
+          <p className="note-line">
+            {stairsNote(reached?.reached, reached?.rounds)} {spent}
+          </p>
         </section>
       </div>
     </PlotCursorContext>

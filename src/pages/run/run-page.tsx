@@ -1,10 +1,11 @@
-import { useMemo, useRef } from "react";
+import { useEffect, useMemo, useRef, useState } from "react";
 import { Link, useParams } from "react-router-dom";
 import "./run.css";
 import type { RunDetail } from "#shared/api/runs.ts";
 import type { SeriesRecord } from "#shared/api/series.ts";
-import { roundTiming } from "#shared/network/round.ts";
+import { type RoundTiming, roundTiming } from "#shared/network/round.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
+import { ENGINE_VERSION } from "#shared/simulation/version.ts";
 import { useRevision } from "#src/api/revisions/get-revision.ts";
 import { useRun } from "#src/api/runs/get-run.ts";
 import { useSeries } from "#src/api/runs/get-series.ts";
@@ -20,10 +21,13 @@ import { Loading } from "#src/components/ui/states.tsx";
 import { Tell } from "#src/components/ui/tell.tsx";
 import { Way } from "#src/components/ui/way.tsx";
 import { instantText, significant, withUnit } from "#src/lib/format.ts";
+import type { EngineClient } from "#src/workers/pool.ts";
 import { DigestCheck } from "./digest-check.tsx";
 import { EventList } from "./event-list.tsx";
 import { ExportMenu } from "./export-menu.tsx";
 import { LimitTable, MessageTable, SignalTable } from "./figure-tables.tsx";
+import { FloodAtCursor, floodsDecide, useRunFloods } from "./flood-at-cursor.tsx";
+import { NodeTable } from "./node-table.tsx";
 import { isWhole, resultOf } from "./run-record.ts";
 import { runName } from "./run-words.ts";
 import { useRunEngine } from "./use-run-engine.ts";
@@ -116,6 +120,7 @@ function Whole({ run, scenario, record }: { run: RunDetail; scenario: Scenario; 
   const stack = useRef<PlotStackHandle>(null);
   const engine = useRunEngine();
   const bench = paths.scenario(team.id, run.scenarioId);
+  const { flood, reached } = useRunFlood(run, scenario, timing, engine);
   return (
     <>
       <div className="title">
@@ -155,13 +160,14 @@ function Whole({ run, scenario, record }: { run: RunDetail; scenario: Scenario; 
               Files are computed anew and are whole.
             </Tell>
           )}
-          <RunBench scenario={scenario} timing={timing} result={result} cursor={cursor} stackRef={stack} />
+          <RunBench scenario={scenario} timing={timing} result={result} cursor={cursor} stackRef={stack} beside={flood} reached={reached} />
         </div>
       </section>
       <div className="run-parts">
         <div>
           <EventList scenario={scenario} result={result} cursor={cursor} />
           <MessageTable result={result} />
+          <NodeTable scenario={scenario} result={result} />
           <DigestCheck run={run} scenario={scenario} engine={engine} />
         </div>
         <div>
@@ -171,4 +177,34 @@ function Whole({ run, scenario, record }: { run: RunDetail; scenario: Scenario; 
       </div>
     </>
   );
+}
+
+/** The flood under the cursor, drawn anew from revision and seed; only the engine that made the run would draw the same. */
+function useRunFlood(run: RunDetail, scenario: Scenario, timing: RoundTiming, engine: () => EngineClient) {
+  const team = useTeam();
+  const same = run.engine === ENGINE_VERSION;
+  const [client, setClient] = useState<EngineClient | null>(null);
+  const wanted = floodsDecide(scenario) && same;
+  // biome-ignore lint/correctness/useExhaustiveDependencies: the worker starts once, and only where a flood is drawn
+  useEffect(() => {
+    if (wanted) setClient(engine());
+  }, [wanted]);
+  const floods = useRunFloods(
+    client,
+    useMemo(() => ({ scenario, timing, seed: run.seed }), [scenario, timing, run.seed]),
+  );
+  const flood = useMemo(() => {
+    if (!floodsDecide(scenario)) return null;
+    if (!same) {
+      return (
+        <p className="note second">
+          The floods of this run were drawn by engine {run.engine}; this page has engine {ENGINE_VERSION}, which may draw others. They are not shown.
+        </p>
+      );
+    }
+    const floor = paths.scenarioFloor(team.id, run.scenarioId);
+    const floorAt = (round: number, slot: string) => `${floor}?revision=${run.revision}&round=${round}&slot=${encodeURIComponent(slot)}`;
+    return <FloodAtCursor scenario={scenario} timing={timing} floods={floods} floorAt={run.seed === scenario.run.seed ? floorAt : null} />;
+  }, [scenario, timing, run, floods, same, team.id]);
+  return { flood, reached: floods.shares };
 }

@@ -1,4 +1,4 @@
-import { lazy, Suspense, useMemo, useState } from "react";
+import { lazy, Suspense, useCallback, useMemo, useState } from "react";
 import { Link, useMatch, useNavigate } from "react-router-dom";
 import type { RevisionDetail } from "#shared/api/revisions.ts";
 import type { ScenarioResponse } from "#shared/api/scenarios.ts";
@@ -64,6 +64,11 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
   const onFloor = useMatch(patterns.scenarioFloor) !== null;
   const here = paths.scenario(team.id, data.id);
   const atThis = `?revision=${detail.number}`;
+  const floorAt = useCallback(
+    (round: number, slot: string) =>
+      `${paths.scenarioFloor(team.id, data.id)}?revision=${detail.number}&round=${round}&slot=${encodeURIComponent(slot)}`,
+    [team.id, data.id, detail.number],
+  );
   return (
     <div className="workshop" data-view={onFloor ? "floor" : view}>
       <DocumentTitle>{`${scenario.name}, revision ${detail.number}`}</DocumentTitle>
@@ -127,6 +132,8 @@ function Shown({ data, detail }: { data: ScenarioResponse; detail: RevisionDetai
               lastGood={null}
               seed={seed}
               cursor={cursor}
+              engine={engine}
+              floorAt={floorAt}
               onSeed={setSeed}
               onFirstIssue={() => setView("setup")}
               actions={

@@ -164,6 +164,11 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
           ? "The run is still computed."
           : null;
 
+  const floorAt = useCallback(
+    (round: number, slot: string) => `${paths.scenarioFloor(team.id, data.id)}?round=${round}&slot=${encodeURIComponent(slot)}`,
+    [team.id, data.id],
+  );
+
   return (
     <div className="workshop" data-view={onFloor ? "floor" : view}>
       <DocumentTitle>{onFloor ? `${name}, floor` : name}</DocumentTitle>
@@ -261,6 +266,8 @@ export function Workshop({ data, base, store, found, onOtherBase }: WorkshopProp
               lastGood={lastGoodText(issues, bench.run?.scenario)}
               seed={seed}
               cursor={cursor}
+              engine={engine}
+              floorAt={floorAt}
               onSeed={setSeed}
               onFirstIssue={() => issues[0] && reveal(issues[0].path)}
               actions={<KeepRun engine={engine} scenarioId={data.id} revision={control.base.revision} run={bench.run} impossible={cannotKeep} />}

@@ -1,4 +1,4 @@
-import { memo, type ReactNode } from "react";
+import { memo, type ReactNode, useMemo } from "react";
 import type { RoundTiming } from "#shared/network/round.ts";
 import { verdictSentence } from "#shared/simulation/verdict-text.ts";
 import { RoundRibbon } from "#src/components/drawings/round-ribbon.tsx";
@@ -8,7 +8,9 @@ import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
 import { Mark, VerdictLine } from "#src/components/ui/mark.tsx";
 import { Empty, Loading } from "#src/components/ui/states.tsx";
 import { counted, msText, significant, withUnit } from "#src/lib/format.ts";
+import { FloodAtCursor, floodsDecide, useRunFloods } from "#src/pages/run/flood-at-cursor.tsx";
 import type { EngineProgress } from "#src/workers/contract.ts";
+import type { EngineClient } from "#src/workers/pool.ts";
 import { clockText } from "../clock.ts";
 import type { FieldIssue } from "../model/judge.ts";
 import type { Bench, BenchRun } from "./use-bench.ts";
@@ -21,6 +23,10 @@ interface LiveBenchProps {
   /** Was the last good value of the only bad field: "with plan at 6 steps". */
   lastGood: string | null;
   seed: number | null;
+  /** For the flood under the cursor; without it none is drawn. */
+  engine?: EngineClient | null;
+  /** Address of the floor at a round and slot. */
+  floorAt?: (round: number, slotId: string) => string;
   /** Shared with the floor; without it the plots have their own. */
   cursor?: PlotCursor | null;
   onSeed: (seed: number | null) => void;
@@ -35,9 +41,21 @@ const Pictures = memo(RunBench);
 const LARGEST_SEED = 4_294_967_295;
 
 /** Verdict, limits, machine, plots, tapes and round of what is being edited. */
-export function LiveBench({ bench, timing, issues, lastGood, seed, cursor, onSeed, onFirstIssue, actions }: LiveBenchProps) {
+export function LiveBench({ bench, timing, issues, lastGood, seed, engine, floorAt, cursor, onSeed, onFirstIssue, actions }: LiveBenchProps) {
   const { run, progress, broken, cancelled } = bench;
   const stale = issues.length > 0;
+  const floods = useRunFloods(
+    engine ?? null,
+    useMemo(() => run && { ...run, seed: run.result.seed }, [run]),
+  );
+  // The same element for as long as the run is: the pictures are not drawn again at each key.
+  const flood = useMemo(
+    () =>
+      run && floodsDecide(run.scenario) ? (
+        <FloodAtCursor scenario={run.scenario} timing={run.timing} floods={floods} floorAt={floorAt ?? null} />
+      ) : null,
+    [run, floods, floorAt],
+  );
   return (
     <section className="bench sheet doc" aria-label="Live bench" aria-busy={progress !== null}>
       <div className="pad">
@@ -61,7 +79,15 @@ export function LiveBench({ bench, timing, issues, lastGood, seed, cursor, onSee
           <span className="ml-auto">{actions}</span>
         </div>
         {run ? (
-          <Pictures scenario={run.scenario} timing={run.timing} result={run.result} stale={stale} cursor={cursor ?? undefined} />
+          <Pictures
+            scenario={run.scenario}
+            timing={run.timing}
+            result={run.result}
+            stale={stale}
+            cursor={cursor ?? undefined}
+            beside={flood}
+            reached={floods.shares}
+          />
         ) : stale ? (
           <>
             <Empty title="No result yet" text="The bench runs as soon as every marked field is put right." />

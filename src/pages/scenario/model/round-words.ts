@@ -5,6 +5,7 @@ import { type EnergyBound, energyBound } from "#shared/network/energy.ts";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { OtherLoop, OtherMessage, Radio } from "#shared/scenario/round-schema.ts";
 import type { LossProcess, Scenario } from "#shared/scenario/schema.ts";
+import { chargeText, lifeText } from "#src/components/drawings/spent.ts";
 import { counted, countText, msText, percentText, significant, withUnit } from "#src/lib/format.ts";
 import { numbersAsText } from "./channel-text.ts";
 import { HOPPING, wordOf } from "./choices.ts";
@@ -117,19 +118,6 @@ export function describeNodes(json: unknown): string {
   if (!nodes) return "not said";
   const placed = nodesOf(nodes, getAt(json, ["loops", 0, "controller", "placement"]) as "sensor" | "apart" | "actuator");
   return placed ? `${placed.sensor}, ${placed.controller}, ${placed.actuator}` : "not said";
-}
-
-/** "290 days", "2.4 years": as long as a battery lasts. */
-export function lifeText(days: number | null): string {
-  if (days === null) return "without end";
-  if (days >= 730) return `${significant(days / 365.25, 3)} years`;
-  return days >= 2 ? `${significant(days, 3)} days` : withUnit(significant(days * 24, 3), "h");
-}
-
-/** "78.2 µC" */
-export function chargeText(coulomb: number): string {
-  const [factor, unit] = coulomb >= 0.1 ? [1, "C"] : coulomb >= 1e-3 ? [1e3, "mC"] : [1e6, "µC"];
-  return withUnit(significant(coulomb * factor, 3), unit);
 }
 
 /** Charge and life of the node that spends most, as far as the round alone says; null where it cannot be computed. */

@@ -4,9 +4,9 @@ import { roundsOf } from "#shared/scenario/rounds.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
 import { VERDICT_WORDS } from "#shared/simulation/verdict-text.ts";
 import { occupiedS } from "#src/components/drawings/slot-facts.ts";
+import { chargeText, nodesOf } from "#src/components/drawings/spent.ts";
 import type { MarkState } from "#src/components/ui/mark.tsx";
 import { fixed, percentText, quantityText, shownUnit, significant, withUnit } from "#src/lib/format.ts";
-import { chargeText } from "../model/round-words.ts";
 import type { VariantRuns } from "./use-variant-runs.ts";
 import type { Placement, Variant } from "./variants.ts";
 
@@ -66,7 +66,7 @@ function figuresFor(signalLabel: string, unit: string, floods: boolean): Figure[
     none: (variant) => (variant.placement === (message === "measurement" ? "sensor" : "actuator") ? "no radio" : null),
   });
   const charge = (variant: Variant, result: RunResult | null): number | null => {
-    const nodes = result?.figures.nodes ?? [];
+    const nodes = result ? nodesOf(result) : [];
     if (variant.scenario && nodes.length > 0) return Math.max(...nodes.map(({ chargeC }) => chargeC)) / roundsOf(variant.scenario);
     return variant.timing ? energyBound(variant.scenario ?? (variant.json as Parameters<typeof energyBound>[0]), variant.timing).chargeC : null;
   };
@@ -109,7 +109,7 @@ export function placementRows(variants: readonly Variant[], runs: VariantRuns): 
   const results = variants.map(({ placement }) => resultOf(runs, placement));
   const any = variants.map((variant, i) => signalFigures(variant, results[i] ?? null)).find((one) => one !== null);
   const label = results.find((one) => one !== null)?.series.columns.find(({ name }) => name === any?.name)?.label ?? "Signal";
-  const floods = results.some((result) => (result?.figures.nodes ?? []).length > 0);
+  const floods = results.some((result) => result !== null && nodesOf(result).length > 0);
   const rows = figuresFor(label, any?.unit ?? "", floods).map((figure): Row => {
     const reference = present ? figure.value(present, resultOf(runs, present.placement)) : null;
     const cells = variants.map((variant): [Placement, Cell] => {
