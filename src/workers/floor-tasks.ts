@@ -37,10 +37,12 @@ export function* surveyJob({ scenario }: Prepared, options: SurveyOptions): Job<
 }
 
 export function* contoursJob({ scenario, timing }: Prepared, slotId: string, options: ContourOptions): Job<FloodContours | null> {
+  yield 0;
   return floodContours(scenario, timing, slotId, options);
 }
 
 export function* linksJob({ scenario, timing }: Prepared, atS: number): Job<LinkRow[]> {
+  yield 0;
   const longest = timing.slots.reduce((most, { payloadBytes }) => Math.max(most, payloadBytes), 0);
   return meanLinks(scenario, atS, longest);
 }
