@@ -48,6 +48,8 @@ export interface Instant {
 const PER_SECOND = { s: 1, ms: 1e3, us: 1e6, ns: 1e9 } as const;
 /** Seconds since 1970 from here on (September 2001), else a stopwatch. */
 const EPOCH_FROM_S = 1e9;
+/** Some thirty thousand years; a larger figure is no time. */
+const LATEST_S = 1e12;
 const DAY_S = 86_400;
 
 const ISO = /^\s*(\d{4})-(\d\d)-(\d\d)(?:[T ](\d\d):(\d\d)(?::(\d\d)(?:[.,](\d{1,12}))?)?\s*(Z|[-+]\d\d:?\d\d)?)?\s*$/i;
@@ -56,7 +58,7 @@ const ISO = /^\s*(\d{4})-(\d\d)-(\d\d)(?:[T ](\d\d):(\d\d)(?::(\d\d)(?:[.,](\d{1
 export function readInstant(cell: string, unit: keyof typeof PER_SECOND | "iso", decimal: "." | ",", out: Instant): boolean {
   if (unit !== "iso") {
     const value = decimalNumber(cell, decimal) / PER_SECOND[unit];
-    if (!Number.isFinite(value)) return false;
+    if (!(Math.abs(value) <= LATEST_S)) return false;
     out.seconds = value;
     out.hour = value >= EPOCH_FROM_S ? Math.floor((value % DAY_S) / 3600) : -1;
     return true;

@@ -44,7 +44,7 @@ export interface LinkFit {
    * null when losses are not fitted or keep apart.
    */
   allowingForBursts: { packets: number; wilson: Interval } | null;
-  /** null when nothing or everything was lost. */
+  /** null unless the link was seen to go bad and to become good again. */
   gilbertElliott: GilbertElliottFit | null;
   streaks: StreakRow[];
   autocorrelation: Autocorrelation;
@@ -85,7 +85,8 @@ export function fitGilbertElliott(counts: TraceCounts, confidence = 0.95): Gilbe
   const { n00, n01, n10, n11 } = counts;
   const fromGood = n00 + n01;
   const fromBad = n10 + n11;
-  if (fromGood === 0 || fromBad === 0 || n01 + n10 === 0) return null;
+  // A state that was entered and never left has no mean length.
+  if (n01 === 0 || n10 === 0) return null;
   const goodToBad = n01 / fromGood;
   const badToGood = n10 / fromBad;
   const logLikelihood = terms(n00, 1 - goodToBad) + terms(n01, goodToBad) + terms(n10, badToGood) + terms(n11, 1 - badToGood);

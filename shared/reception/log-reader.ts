@@ -7,6 +7,7 @@ import { decimalNumber, type Instant, RECEIVED_WORDS, readInstant, saysItself, w
 import { type Columns, resolveColumns } from "./columns.ts";
 import { type CsvRow, csvRows } from "./csv-rows.ts";
 import { type Counter, LinkReader, type Packet } from "./link-reader.ts";
+import { HIGHEST_DBM, LOWEST_DBM } from "./rssi-meter.ts";
 import {
   type ColumnMapping,
   type LinkTrace,
@@ -151,9 +152,10 @@ export function logReader(mapping: ColumnMapping): LogReader {
     packet.rssiDbm = Number.NaN;
     if (at.rssi >= 0 && packet.received) {
       const cell = cells[at.rssi] ?? "";
-      packet.rssiDbm = decimalNumber(cell, mapping.decimal);
-      if (Number.isNaN(packet.rssiDbm) && cell.trim() !== "") {
-        bad(line, cell, () => `"${short(cell)}" is no RSSI in dBm; the packet counts, its RSSI does not.`);
+      const dbm = decimalNumber(cell, mapping.decimal);
+      if (dbm >= LOWEST_DBM && dbm <= HIGHEST_DBM) packet.rssiDbm = dbm;
+      else if (cell.trim() !== "") {
+        bad(line, cell, () => `"${short(cell)}" is no RSSI; permitted: ${LOWEST_DBM} to ${HIGHEST_DBM} dBm. The packet counts, its RSSI does not.`);
       }
     }
     return true;

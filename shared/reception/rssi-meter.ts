@@ -1,8 +1,9 @@
 import type { RssiSummary } from "./types.ts";
 
-/** Receivers report about -127 to 0 dBm; what lies outside counts at the nearest end. */
-const LOWEST_DBM = -200;
-const LEVELS = 256;
+/** Receivers report about -127 to 0 dBm; 127 is how some say that they do not know. */
+export const LOWEST_DBM = -150;
+export const HIGHEST_DBM = 50;
+const LEVELS = HIGHEST_DBM - LOWEST_DBM + 1;
 
 /** Moments and whole-dB counts of received signal strengths. */
 export class RssiMeter {
@@ -13,6 +14,7 @@ export class RssiMeter {
   private min = 0;
   private max = 0;
 
+  /** dbm: LOWEST_DBM to HIGHEST_DBM. */
   add(dbm: number): void {
     this.count++;
     // Welford (1962): no difference of large sums.
@@ -21,7 +23,7 @@ export class RssiMeter {
     this.squares += off * (dbm - this.mean);
     this.min = this.count === 1 ? dbm : Math.min(this.min, dbm);
     this.max = this.count === 1 ? dbm : Math.max(this.max, dbm);
-    this.levels[Math.max(0, Math.min(LEVELS - 1, Math.round(dbm) - LOWEST_DBM))]++;
+    this.levels[Math.round(dbm) - LOWEST_DBM]++;
   }
 
   summary(): RssiSummary | null {

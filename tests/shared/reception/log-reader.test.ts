@@ -1,7 +1,15 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { logReader } from "#shared/reception/log-reader.ts";
-import { type ColumnMapping, columnMappingSchema, type LogContent, TROUBLE_KINDS } from "#shared/reception/types.ts";
+import { countTrace } from "#shared/reception/trace.ts";
+import {
+  type ColumnMapping,
+  columnMappingSchema,
+  type LogContent,
+  linkTraceSchema,
+  readReportSchema,
+  TROUBLE_KINDS,
+} from "#shared/reception/types.ts";
 
 type MappingInput = Parameters<typeof columnMappingSchema.parse>[0];
 const SEQ: MappingInput = { number: { column: "seq" } };
@@ -240,7 +248,7 @@ describe("rows that cannot be read", () => {
       '4 maybe: "maybe" does not say whether the packet was received; permitted: 1/0, true/false, yes/no, ok/lost, received/lost. The row is left out.',
       "5 3,0.06: The row has 2 cells, the first row has 4; it is left out.",
       '6 later: "later" is no time in s; the packet counts, its time does not.',
-      '7 loud: "loud" is no RSSI in dBm; the packet counts, its RSSI does not.',
+      '7 loud: "loud" is no RSSI; permitted: -150 to 50 dBm. The packet counts, its RSSI does not.',
       "8 6,0.12,1,-70,9: The row has 5 cells, the first row has 4; it is left out.",
     ]);
     expect(content.report).toMatchObject({ rows: 8, rowsUsed: 4 });
@@ -309,6 +317,62 @@ describe("a mapping that does not fit the file", () => {
     expect(content.links).toHaveLength(2000);
     expect(content.report.troubles["bad-row"].count).toBe(100);
     expect(content.report.troubles["bad-row"].first[0].message).toMatch(/more than 2000 links; are source and receiver the right columns/);
+  });
+});
+
+describe("any file at all", () => {
+  const number = fc.oneof(
+    fc.nat(300),
+    fc.integer({ min: 65_500, max: 65_560 }),
+    fc.constantFrom("", "x", "-1", "4294967295", "9007199254740991", "99999999999999999999"),
+  );
+  const time = fc.oneof(
+    fc.double({ min: -10, max: 1e10, noNaN: true }),
+    fc.constantFrom("", "0", "1773208720", "2026-03-11T05:58:40.02Z", "soon"),
+    fc.integer({ min: 0, max: 50 }),
+  );
+  const row = fc
+    .tuple(
+      number,
+      time,
+      fc.constantFrom("a", "b", "", '"q'),
+      fc.constantFrom("1", "0", "ok", "lost", "?", ""),
+      fc.constantFrom("-70", "-71.5", "", "loud", "1e300"),
+    )
+    .map((cells) => cells.join(","));
+  const anyFile = fc
+    .array(fc.oneof({ weight: 20, arbitrary: row }, { weight: 1, arbitrary: fc.string() }), { maxLength: 150 })
+    .map((rows) => ["seq,t,from,ok,rssi", ...rows].join("\n"));
+
+  it("gives content that the schemas take, whose counts agree with its run lengths", () => {
+    fc.assert(
+      fc.property(
+        anyFile,
+        fc.constantFrom("sequence", "round"),
+        fc.constantFrom("s", "iso"),
+        fc.constantFrom(null, 256, 65_536),
+        fc.boolean(),
+        (text, kind, unit, wrapsAt, marked) => {
+          const result = outcome(text, {
+            number: { column: "seq", kind, wrapsAt },
+            time: { column: "t", unit },
+            source: "from",
+            received: marked ? "ok" : null,
+            rssi: "rssi",
+          });
+          if (!result.ok) return;
+          const { links, report } = result.value;
+          expect(readReportSchema.parse(report)).toEqual(report);
+          expect(report.rowsUsed).toBeLessThanOrEqual(report.rows);
+          for (const link of links) {
+            expect(linkTraceSchema.parse(link)).toEqual(link);
+            expect(link.runs.slice(1).every((length) => length > 0)).toBe(true);
+            expect(countTrace(link.runs)).toMatchObject({ packets: link.packets, lost: link.lost });
+          }
+        },
+      ),
+      { seed: 13, numRuns: 600 },
+    );
   });
 });
 

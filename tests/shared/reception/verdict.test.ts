@@ -1,3 +1,4 @@
+import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { uniformStream } from "#shared/math/random.ts";
 import { binomialAtMost } from "#shared/math/statistics.ts";
@@ -122,6 +123,31 @@ describe("the verdict in words", () => {
   });
 });
 
+it("every log gets figures and plain sentences, however short or odd", () => {
+  const anyRuns = fc
+    .tuple(fc.nat(3), fc.array(fc.oneof(fc.integer({ min: 1, max: 4 }), fc.integer({ min: 1, max: 5_000_000 })), { maxLength: 30 }))
+    .map(([first, rest]) => [first, ...rest])
+    .filter((runs) => runs.length > 1 || runs[0] > 0);
+  const leaves = (value: unknown): unknown[] => (value !== null && typeof value === "object" ? Object.values(value).flatMap(leaves) : [value]);
+  fc.assert(
+    fc.property(anyRuns, fc.constantFrom(null, 0.02, 3), (runs, periodS) => {
+      const trace = traceOf(runs);
+      const fit = fitLink(trace);
+      const test = testIndependence(trace);
+      expect(leaves([fit, test]).filter((leaf) => typeof leaf === "number" && !Number.isFinite(leaf))).toEqual([]);
+      const [lo, hi] = fit.clopperPearson;
+      expect(lo).toBeLessThanOrEqual(fit.lossRatio);
+      expect(hi).toBeGreaterThanOrEqual(fit.lossRatio);
+      for (const p of [test.runs?.p, test.ljungBox?.p, test.transitions?.p, fit.gilbertElliott?.pValue]) {
+        if (p !== undefined) expect(p >= 0 && p <= 1, `p = ${p}`).toBe(true);
+      }
+      const { headline, sentences } = words(trace, periodS);
+      for (const text of [headline, ...sentences]) expect(text).not.toMatch(/NaN|Infinity|undefined|null|none/);
+    }),
+    { seed: 5, numRuns: 500 },
+  );
+});
+
 describe("how often the verdict errs", () => {
   /** A Gilbert-Elliott channel that starts stationary; independent when goodToBad + badToGood = 1. */
   const drawn = (packets: number, goodToBad: number, badToGood: number, seed: number): number[] => {
@@ -137,7 +163,7 @@ describe("how often the verdict errs", () => {
     return runs;
   };
   const shareOf = (verdict: string, packets: number, goodToBad: number, badToGood: number): number => {
-    const seeds = Array.from({ length: 300 }, (_, seed) => seed);
+    const seeds = Array.from({ length: 200 }, (_, seed) => seed);
     return seeds.filter((seed) => testIndependence({ runs: drawn(packets, goodToBad, badToGood, seed) }).verdict === verdict).length / seeds.length;
   };
 
