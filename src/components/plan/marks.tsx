@@ -62,3 +62,26 @@ export const InterfererShape = () => (
     <path d="M1.4 -6.2L-3.6 0.8H0.2L-1.2 6.2L4.4 -1.4H0.6Z" className="pl-intl" />
   </>
 );
+
+export type Glyph = "sensor" | "controller" | "actuator" | "beacon";
+export const GLYPH_WORDS: Record<Glyph, string> = { sensor: "sensor", controller: "controller", actuator: "actuator", beacon: "sends the beacon" };
+
+/** What runs on a node, by the marks of the round's lanes: ring = samples, box = computes, triangle = acts; arcs = beacon. */
+export function GlyphShape({ glyph }: { glyph: Glyph }) {
+  switch (glyph) {
+    case "sensor":
+      return <circle r="3.4" className="samp" />;
+    case "controller":
+      return <rect x="-3.6" y="-3.6" width="7.2" height="7.2" className="pl-gbox" />;
+    case "actuator":
+      return <path d="M-4.4 -3.4H4.4L0 4Z" className="act" />;
+    case "beacon":
+      return <path d="M-4.4 1.6A5 5 0 0 1 4.4 1.6M-2 3.4A2.3 2.3 0 0 1 2 3.4" className="pl-garc" />;
+  }
+}
+
+export const GlyphMark = ({ glyph }: { glyph: Glyph }) => (
+  <svg width="14" height="14" viewBox="-7 -7 14 14" aria-hidden="true" className="mk">
+    <GlyphShape glyph={glyph} />
+  </svg>
+);

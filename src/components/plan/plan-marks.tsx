@@ -3,7 +3,7 @@ import { type KeyboardEvent, memo } from "react";
 import { measureWith, pageFace } from "#src/components/plots/measure.ts";
 import { HIDDEN } from "./hidden.ts";
 import { type LabelAsk, type LabelPlace, placeLabels } from "./label-places.ts";
-import { InterfererShape, NodeShape, type NodeState } from "./marks.tsx";
+import { type Glyph, GlyphShape, InterfererShape, NodeShape, type NodeState } from "./marks.tsx";
 import type { PlanScene } from "./plan.tsx";
 import type { Spot } from "./plan-view.ts";
 
@@ -16,6 +16,8 @@ export interface MarkedNode extends Spot {
   state: NodeState;
   /** Ringed: it receives less than it should. */
   weak?: boolean;
+  /** What runs on it, in a row beside the mark. */
+  glyphs?: readonly Glyph[];
   /** Named even where names are close together. */
   important?: boolean;
 }
@@ -120,6 +122,7 @@ export function Marks(props: NodeMarksProps) {
               state={node.state}
               weak={node.weak}
               number={node.id}
+              glyphs={node.glyphs?.join(" ")}
             />
           );
         })}
@@ -150,9 +153,13 @@ interface MarkProps {
   state?: NodeState;
   weak?: boolean;
   number?: number;
+  /** Names with spaces between: a text, so that the same stays the same. */
+  glyphs?: string;
 }
 
-const Mark = memo(function Mark({ thing, words, selected, x, y, onKey, onFocus, text, dx, dy, anchor, state, weak, number }: MarkProps) {
+const GLYPH_PX = 11;
+
+const Mark = memo(function Mark({ thing, words, selected, x, y, onKey, onFocus, text, dx, dy, anchor, state, weak, number, glyphs }: MarkProps) {
   return (
     // biome-ignore lint/a11y/useSemanticElements: a mark of an SVG picture cannot be a button element
     <g
@@ -172,6 +179,7 @@ const Mark = memo(function Mark({ thing, words, selected, x, y, onKey, onFocus, 
       <circle r={selected ? 21 : 17} className="pl-focus" />
       {weak && <circle r="14" className="pl-weak" />}
       {state ? <NodeShape state={state} label={number} /> : <InterfererShape />}
+      {glyphs && <Glyphs names={glyphs.split(" ") as Glyph[]} />}
       {text && (
         <text x={dx} y={dy} textAnchor={anchor} className="pl-name halo2" {...HIDDEN}>
           {text}
@@ -180,3 +188,16 @@ const Mark = memo(function Mark({ thing, words, selected, x, y, onKey, onFocus, 
     </g>
   );
 });
+
+function Glyphs({ names }: { names: readonly Glyph[] }) {
+  return (
+    <g transform="translate(13 -12)">
+      <rect x="-6" y="-6.5" width={names.length * GLYPH_PX + 1} height="13" rx="6" className="pl-gback" />
+      {names.map((glyph, i) => (
+        <g key={glyph} transform={`translate(${i * GLYPH_PX} 0)`}>
+          <GlyphShape glyph={glyph} />
+        </g>
+      ))}
+    </g>
+  );
+}

@@ -71,7 +71,10 @@ export function EmptyFloor({ onLaidOut }: { onLaidOut: () => void }) {
                 Start with an empty plan
               </Button>
             </div>
-            <p className="note muted">The arrangement follows from the size; every place can be changed afterwards.</p>
+            <p className="note muted">
+              The arrangement follows from the size, its links from ITU-R P.1238, industrial, without line of sight; everything can be changed
+              afterwards.
+            </p>
           </div>
           <figure className="fl-sketch">{example?.floor && <Sketch scenario={example} />}</figure>
         </div>

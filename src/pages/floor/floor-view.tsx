@@ -4,8 +4,10 @@ import { apiPaths } from "#shared/api/paths.ts";
 import type { Advice } from "#shared/network/advice.ts";
 import { channelBand, channelsInUse } from "#shared/network/channels.ts";
 import { NO_SLOT, received } from "#shared/network/flood.ts";
+import { prepareFloor } from "#shared/network/prepare.ts";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Floor } from "#shared/scenario/floor-schema.ts";
+import { roundsOf } from "#shared/scenario/rounds.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { useTeam } from "#src/app/session.tsx";
 import { RoundRibbon } from "#src/components/drawings/round-ribbon.tsx";
@@ -76,7 +78,9 @@ export function FloorView(props: FloorViewProps) {
   return floor ? <FloorStudio {...props} floor={floor} fresh={laidOut} /> : <EmptyFloor onLaidOut={() => setLaidOut(true)} />;
 }
 
+/** A node that needs the message should have this share of it. */
 const LEAST_RECEIVED = 0.999;
+const ALL_RECEIVED = 0.9995;
 
 function FloorStudio({
   bench,
@@ -108,13 +112,14 @@ function FloorStudio({
   if (edited) lastTiming.current = edited;
   const timing = edited ?? lastTiming.current;
   const periodS = timing?.periodS ?? 0.02;
-  const rounds = Math.max(1, Math.floor(scenario.run.durationS / periodS + 1e-9));
+  const prepared = useMemo(() => prepareFloor(json), [json]);
+  const rounds = prepared.ok ? roundsOf(prepared.scenario) : 1;
   const { round, setRound } = useRound(cursor, timing, rounds, bench.run?.result.durationS ?? null);
   const [slotId, setSlotId] = useState(search.get("slot"));
   const slotIndex = Math.max(0, indexOfSlot(timing, slotId));
   const slot = timing?.slots[slotIndex] ?? null;
   const atS = round * periodS;
-  const { prepared, links, floods, contours: water } = useFloorWork(engine, json, seed, atS, slot?.id ?? null);
+  const { links, floods, contours: water } = useFloorWork(engine, prepared, json, seed, atS, slot?.id ?? null);
   const record = floods.value;
   const usable = record && timing && record.slots === timing.slots.length ? record : null;
   const flood = useMemo(
@@ -182,10 +187,12 @@ function FloorStudio({
     const { survey, stale } = surveyed;
     const of = survey?.slots.find(({ id }) => id === slot?.id);
     if (!of || stale || !onPlan) return null;
+    // Where nothing is lost the plan says nothing.
+    const lossy = of.nodes.filter(({ ratio }) => ratio < ALL_RECEIVED);
     return new Map(
-      of.nodes.map(({ node, ratio, needed }) => [
+      lossy.map(({ node, ratio, needed }) => [
         node,
-        { text: `${fixed(ratio * 100, ratio > 0.9995 ? 2 : 1)}\u2009%`, weak: needed ? ratio < LEAST_RECEIVED : ratio < 0.5 },
+        { text: `${fixed(ratio * 100, ratio > 0.99 ? 2 : 1)}\u2009%`, weak: needed ? ratio < LEAST_RECEIVED : ratio < 0.5 },
       ]),
     );
   }, [surveyed, slot?.id, onPlan]);
@@ -300,18 +307,19 @@ function FloorStudio({
               plan={plan}
               onWhole={setWhole}
             />
-            {slot && timing && flood && (
+            {slot && timing && prepared.ok && (
               <WaveStrip
                 slots={timing.slots}
                 slot={slot}
                 title={`from ${slot.from === null ? "nobody yet" : shortName(floor, slot.from)}`}
                 contoured={contours !== null}
-                reached={reached}
-                nodes={flood.nodes.length}
+                reached={flood ? reached : null}
+                nodes={flood?.nodes.length ?? floor.nodes.length}
                 step={step}
                 playing={playing}
                 idle={idle}
                 busy={floods.busy}
+                broken={floods.broken}
                 onStep={setChosenStep}
                 onPlay={setPlaying}
                 onSlot={setSlotId}
@@ -437,9 +445,9 @@ function indexOfSlot(timing: RoundTiming | null, id: string | null): number {
 function tellingStep(first: Uint8Array, steps: number): number {
   const counts = new Array<number>(steps + 1).fill(0);
   for (const at of first) if (received(at) && at > 0 && at <= steps) counts[at]++;
-  let best = Math.min(2, steps);
-  for (let s = best; s <= steps; s++) if (counts[s] > counts[best]) best = s;
-  return counts[best] > 0 ? best : steps;
+  let best = 0;
+  for (let s = 2; s <= steps; s++) if (counts[s] > (best > 0 ? counts[best] : 0)) best = s;
+  return best > 0 ? best : counts[1] > 0 ? 1 : steps;
 }
 
 /** A new interferer begins in the middle of the channel in use, where it is felt. */

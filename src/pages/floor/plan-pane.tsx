@@ -20,7 +20,7 @@ import {
   WaterLayer,
   WayLayer,
 } from "#src/components/plan/ground.tsx";
-import { type NodeState, STATE_WORDS } from "#src/components/plan/marks.tsx";
+import { type Glyph, type NodeState, STATE_WORDS } from "#src/components/plan/marks.tsx";
 import { Plan, type PlanHandle, type PlanScene } from "#src/components/plan/plan.tsx";
 import { type MarkedInterferer, type MarkedNode, Marks } from "#src/components/plan/plan-marks.tsx";
 import type { Spot } from "#src/components/plan/plan-view.ts";
@@ -65,7 +65,7 @@ export function PlanPane(props: PlanPaneProps) {
   const { floor, studio, tools, roles, links, states, contours, fouled, step, atS, surveyed, picture, scalingPoints, label, readOnly, plan } = props;
   const { selection, tool, select } = studio;
   const { preview } = tools;
-  const prefix = useId().replaceAll(":", "");
+  const prefix = `pl${useId().replace(/\W/g, "")}`;
   const phone = useMedia("(max-width: 719px)");
   const shown = useMemo(() => withPreview(floor, preview), [floor, preview]);
   const selectedNode = selection?.kind === "node" ? selection.id : null;
@@ -83,6 +83,7 @@ export function PlanPane(props: PlanPaneProps) {
           name: survey && !node.name ? survey.text : survey ? `${node.name} ${survey.text}` : node.name,
           state,
           weak: survey?.weak,
+          glyphs: glyphsOf(roles.get(node.id)),
           important: roles.has(node.id) || survey?.weak,
           words: [
             `Node ${node.id}${node.name ? ` ${node.name}` : ""}`,
@@ -183,6 +184,10 @@ export function PlanPane(props: PlanPaneProps) {
     />
   );
 }
+
+const ORDER: readonly Glyph[] = ["sensor", "controller", "actuator", "beacon"];
+const glyphsOf = (roles: readonly RoleAt[] | undefined): Glyph[] | undefined =>
+  roles && ORDER.filter((glyph) => roles.some(({ role }) => role === glyph));
 
 /** The floor as it looks while something is dragged. */
 function withPreview(floor: Floor, preview: Preview | null): Floor {

@@ -70,15 +70,20 @@ function castAnyhow(json: unknown): unknown {
 }
 
 export interface FloorWork {
-  prepared: PreparedFloor;
   links: Work<LinkRow[]>;
   floods: Work<FloodRecord>;
   /** Water and shores of the slot's floods; null where links are given as ratios. */
   contours: Work<FloodContours | null>;
 }
 
-export function useFloorWork(engine: EngineClient | null, json: unknown, seed: number, atS: number, slotId: string | null): FloorWork {
-  const prepared = useMemo(() => prepareFloor(json), [json]);
+export function useFloorWork(
+  engine: EngineClient | null,
+  prepared: PreparedFloor,
+  json: unknown,
+  seed: number,
+  atS: number,
+  slotId: string | null,
+): FloorWork {
   const scenario = prepared.ok ? prepared.scenario : null;
   const linked = useMemo(() => {
     if (scenario) return scenario;
@@ -94,5 +99,5 @@ export function useFloorWork(engine: EngineClient | null, json: unknown, seed: n
     [engine, scenario, slotId, seed, linksAt],
     scenario,
   );
-  return { prepared, links, floods, contours };
+  return { links, floods, contours };
 }

@@ -47,6 +47,8 @@ export function useSurvey(engine: EngineClient | null, scenario: Scenario | null
         .then(
           (outcome) => {
             if (turn.current !== mine) return;
+            // Progress that is told late is no progress any more.
+            turn.current++;
             setShare(null);
             if (outcome.ok) client.setQueryData(key, { survey: outcome.value, of: scenario } satisfies Kept);
           },

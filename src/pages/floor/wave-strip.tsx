@@ -1,6 +1,6 @@
 import { useEffect, useRef } from "react";
 import type { Slot } from "#shared/network/round.ts";
-import { type NodeState, StateMark } from "#src/components/plan/marks.tsx";
+import { GLYPH_WORDS, type Glyph, GlyphMark, type NodeState, StateMark } from "#src/components/plan/marks.tsx";
 import { useWidth } from "#src/components/plots/measure.ts";
 import { IconButton } from "#src/components/ui/button.tsx";
 import { useMedia } from "#src/lib/use-media.ts";
@@ -12,8 +12,8 @@ interface WaveStripProps {
   title: string;
   /** The plan shows hop contours. */
   contoured: boolean;
-  /** Nodes that have the message after each step. */
-  reached: readonly number[];
+  /** Nodes that have the message after each step; null before the floods are drawn. */
+  reached: readonly number[] | null;
   nodes: number;
   step: number;
   playing: boolean;
@@ -23,6 +23,8 @@ interface WaveStripProps {
   onPlay: (playing: boolean) => void;
   onSlot: (id: string) => void;
   busy: boolean;
+  /** The worker broke. */
+  broken: boolean;
 }
 
 const KEY: { state: NodeState; word: string }[] = [
@@ -34,11 +36,13 @@ const KEY: { state: NodeState; word: string }[] = [
   { state: "lost", word: "lost" },
 ];
 
+const ROLES: readonly Glyph[] = ["sensor", "controller", "actuator", "beacon"];
+
 const STEP_MS = 650;
 
 /** Which slot, step by step: the slot's own stair enlarged is the slider. */
 export function WaveStrip(props: WaveStripProps) {
-  const { slots, slot, title, contoured, reached, nodes, step, playing, idle, onStep, onPlay, onSlot, busy } = props;
+  const { slots, slot, title, contoured, reached, nodes, step, playing, idle, onStep, onPlay, onSlot, busy, broken } = props;
   const reduced = useMedia("(prefers-reduced-motion: reduce)");
   const { steps } = slot;
 
@@ -110,9 +114,23 @@ export function WaveStrip(props: WaveStripProps) {
               {word}
             </span>
           ))}
+          {ROLES.map((glyph) => (
+            <span key={glyph}>
+              <GlyphMark glyph={glyph} />
+              {GLYPH_WORDS[glyph]}
+            </span>
+          ))}
         </span>
       </div>
-      {idle ? (
+      {broken ? (
+        <p className="second fl-idle" role="alert">
+          The floods could not be drawn: the engine stopped. Nothing that you entered is lost; the next edit draws them again.
+        </p>
+      ) : reached === null ? (
+        <p className="second fl-idle" role="status">
+          The floods of this run are drawn …
+        </p>
+      ) : idle ? (
         <p className="second fl-idle">This slot does not occur in this round. Choose another round.</p>
       ) : (
         <StepStair

@@ -8,6 +8,18 @@ import { newNode } from "./floor-edits.ts";
 /** Relays stand about so far apart, m; at most so many of them. */
 const RELAY_EVERY_M = 18;
 const MOST_RELAYS = 40;
+/** Closer than this part of a cell counts as beside. */
+const CROWDED = 0.4;
+/** A hall with machines in it, with the shadowing that the model's source gives. */
+const HALL_LINKS: Floor["links"] = {
+  type: "budget",
+  pathLoss: { type: "p1238-10", environment: "industrial-nlos" },
+  shadowing: { sigmaDb: 9, correlationM: 10, seed: 1 },
+  fading: null,
+  noiseFigureDb: 6,
+  captureDb: 3,
+  concurrencyPenaltyDb: 3,
+};
 
 export const emptyFloor = (name: string, widthM: number, depthM: number): Floor => floorSchema.parse({ name, widthM, depthM });
 
@@ -43,9 +55,13 @@ export function exampleFloor(scenario: Scenario, name: string, widthM: number, d
     for (let column = 0; column < columns; column++) {
       // Every second row is shifted a little: straight rows of racks would hide a straight row of relays.
       const shift = row % 2 === 0 ? -0.12 : 0.12;
-      add(((column + 0.5 + shift) * widthM) / columns, ((row + 0.5) * depthM) / rows, "");
+      const x = ((column + 0.5 + shift) * widthM) / columns;
+      const y = ((row + 0.5) * depthM) / rows;
+      // Beside a node that relays anyway another one helps nobody.
+      const crowded = nodes.some((node) => Math.hypot(node.xM - x, node.yM - y) < CROWDED * Math.min(widthM / columns, depthM / rows));
+      if (!crowded) add(x, y, "");
     }
-  const floor: Floor = { ...emptyFloor(name, widthM, depthM), nodes };
+  const floor: Floor = { ...emptyFloor(name, widthM, depthM), nodes, links: HALL_LINKS };
   let next = setAt(scenario, ["floor"], floor) as Scenario;
   next = setAt(next, ["loops", 0, "nodes"], { sensor, controller, actuator }) as Scenario;
   otherNodes.forEach((one, i) => {

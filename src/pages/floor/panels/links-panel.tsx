@@ -6,20 +6,20 @@ import { Button } from "#src/components/ui/button.tsx";
 import { Section } from "#src/components/ui/section.tsx";
 import { SortHead, type Sorting } from "#src/components/ui/table.tsx";
 import { download } from "#src/lib/download.ts";
-import { counted, fixed, listed, percentText } from "#src/lib/format.ts";
+import { counted, fixed, percentText } from "#src/lib/format.ts";
 import { linkModelText } from "../model/floor-names.ts";
 
 const HEARD = 0.05;
 const FIRST_ROWS = 8;
 
-/** "clear", "Rack 2", "2 walls and 1 rack": what the straight line crosses, by name where there is one. */
+/** "clear", "Rack 2", "2 walls, 1 block": what the straight line crosses, by name where there is one. */
 export function betweenText(floor: Floor, a: FloorNode, b: FloorNode): string {
   const crossed = floor.obstacles.filter((one) => crosses(one, a.xM, a.yM, b.xM, b.yM));
   if (crossed.length === 0) return "clear";
   if (crossed.length === 1 && crossed[0].name) return crossed[0].name;
   const walls = crossed.filter(({ type }) => type === "wall").length;
   const blocks = crossed.length - walls;
-  return listed([...(walls > 0 ? [counted(walls, "wall")] : []), ...(blocks > 0 ? [counted(blocks, "block")] : [])]);
+  return [...(walls > 0 ? [counted(walls, "wall")] : []), ...(blocks > 0 ? [counted(blocks, "block")] : [])].join(", ");
 }
 
 /** Share as a strip that fills. */
