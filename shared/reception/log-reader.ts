@@ -20,6 +20,7 @@ import {
   TROUBLE_KINDS,
   type TroubleKind,
 } from "./types.ts";
+import { counted } from "./words.ts";
 
 export type LogOutcome = { ok: true; value: LogContent } | { ok: false; issues: Issue[] };
 
@@ -46,7 +47,7 @@ export function logReader(mapping: ColumnMapping): LogReader {
   let needed = 0;
   let linkCount = 0;
   let lastLink: LinkReader | null = null;
-  let counted = 0;
+  let unnumbered = 0;
 
   function trouble(kind: TroubleKind, line: number, link: string, value: string, message: () => string): void {
     const { first } = report.troubles[kind];
@@ -97,7 +98,11 @@ export function logReader(mapping: ColumnMapping): LogReader {
     const { cells, line } = row;
     if (row.unclosed) return bad(line, cells.join(mapping.delimiter), () => "A quote is opened and not closed; the row is left out.");
     if (cells.length < needed || (cells.length > width && cells.slice(width).some((cell) => cell.trim() !== ""))) {
-      return bad(line, cells.join(mapping.delimiter), () => `The row has ${cells.length} cells, the first row has ${width}; it is left out.`);
+      return bad(
+        line,
+        cells.join(mapping.delimiter),
+        () => `The row has ${counted(cells.length, "cell")}, the first row has ${width}; it is left out.`,
+      );
     }
     packet.line = line;
     packet.received = true;
@@ -128,7 +133,7 @@ export function logReader(mapping: ColumnMapping): LogReader {
       packet.number = number;
       packet.text = cell;
     } else {
-      packet.number = counted++;
+      packet.number = unnumbered++;
       packet.text = "";
     }
     packet.timeS = Number.NaN;

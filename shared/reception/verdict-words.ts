@@ -7,6 +7,10 @@ import { type IndependenceTest, TOO_FEW_LOSSES } from "./independence.ts";
 import type { LinkTrace } from "./types.ts";
 import { counted, countText, durationText, shareText } from "./words.ts";
 
+/** One streak is called an outage when it makes so large a share of all losses and is so many mean bursts long. */
+const OUTAGE_SHARE = 0.3;
+const OUTAGE_BURSTS = 8;
+
 export interface VerdictWords {
   headline: string;
   sentences: string[];
@@ -131,6 +135,12 @@ function bursts(trace: LinkTrace, fit: LinkFit, test: IndependenceTest): string[
   const sentences = [
     `A burst lasts ${significant(meanBurst)} packets on average where independent losses would make ${significant(independentBurst)}; the longest is ${countText(fit.counts.longestLost)}${lasting}. It is no chance (${pValues(test)}).`,
   ];
+  const { lost, longestLost } = fit.counts;
+  if (longestLost > OUTAGE_SHARE * lost && longestLost > OUTAGE_BURSTS * meanBurst) {
+    sentences.push(
+      `One streak makes ${shareText(longestLost / lost)} of all losses: an outage rather than the link's usual ways. Look at it apart, and at the rest without it.`,
+    );
+  }
   const { allowingForBursts: allowing } = fit;
   if (allowing) {
     const [lo, hi] = allowing.wilson;

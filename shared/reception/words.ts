@@ -7,14 +7,14 @@ export const countText = (value: number): string => String(Math.round(value)).re
 /** "1 packet", "2 995 packets" */
 export const counted = (value: number, one: string, many = `${one}s`): string => `${countText(value)} ${Math.round(value) === 1 ? one : many}`;
 
-/** "20 ms", "59.9 s", "3.2 min", "1.5 h", "2.1 days", in at most three digits. */
+/** "20 ms", "59.9 s", "3.2 min", "1 h", "2.1 days", in at most three digits. */
 export function durationText(valueS: number): string {
   const size = Math.abs(valueS);
   if (size === 0) return withUnit("0", "s");
   if (size < 1e-3) return withUnit(significant(valueS * 1e6), "µs");
   if (size < 1) return withUnit(significant(valueS * 1e3), "ms");
   if (size < 120) return withUnit(significant(valueS), "s");
-  if (size < 7200) return withUnit(significant(valueS / 60), "min");
+  if (size < 3600) return withUnit(significant(valueS / 60), "min");
   return size < 172_800 ? withUnit(significant(valueS / 3600), "h") : withUnit(significant(valueS / 86_400), "days");
 }
 

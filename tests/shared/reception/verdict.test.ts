@@ -81,6 +81,13 @@ describe("the verdict in words", () => {
     const [lo, hi] = fit.allowingForBursts?.wilson ?? [0, 0];
     expect(hi - lo).toBeGreaterThan(1.5 * (fit.wilson[1] - fit.wilson[0]));
   });
+  it("tells one long outage from the link's usual ways", () => {
+    const { sentences } = words(traceOf([...inBursts(60, 2, 100), 180, 400]));
+    expect(sentences[2]).toBe(
+      "One streak makes 60 % of all losses: an outage rather than the link's usual ways. Look at it apart, and at the rest without it.",
+    );
+    expect(words(traceOf(inBursts(60, 4, 100))).sentences.join(" ")).not.toMatch(/One streak makes/);
+  });
   it("finds losses that keep apart", () => {
     const runs = Array.from({ length: 401 }, (_, i) => (i % 2 === 1 ? 1 : 1 + (i % 3)));
     expect(testIndependence({ runs }).verdict).toBe("apart");
