@@ -4,9 +4,8 @@ import type { RoundTiming } from "./round.ts";
 
 /** Enough digits to tell 99.9 from 100. */
 export function percent(share: number): string {
-  if (share <= 0 || share >= 1) return share > 0 ? "100 %" : "0 %";
-  let digits = share > 0.98 ? 2 : 1;
-  while (digits < 6 && Number((share * 100).toFixed(digits)) >= 100) digits++;
+  if (share > 0.9999 && share < 1) return "over 99.99 %";
+  const digits = share > 0.98 && share < 1 ? 2 : share > 0 && share < 1 ? 1 : 0;
   return `${(share * 100).toFixed(digits)} %`;
 }
 

@@ -10,6 +10,7 @@ import { meanLinks } from "./link-table.ts";
 import { type RoundTiming, roundTiming } from "./round.ts";
 import { type Edit, withEdits } from "./savings.ts";
 import { FloodTally } from "./tally.ts";
+import { Ways } from "./ways.ts";
 
 export interface Figure {
   label: string;
@@ -45,8 +46,10 @@ export interface Advice {
 }
 
 interface Trial {
-  tally: FloodTally;
-  conclude: () => Advice | null;
+  rounds: number;
+  /** Made when its turn comes: links of a large floor take a while, and memory. */
+  begin: () => FloodTally;
+  conclude: (tally: FloodTally) => Advice | null;
 }
 
 interface Count {
@@ -57,7 +60,7 @@ interface Count {
 interface Tried {
   change: Change;
   timing: RoundTiming;
-  tally: FloodTally;
+  then: Count;
 }
 
 /** Work of one round, slots x nodes x nodes, that all trials of a kind together may take. */
@@ -68,8 +71,10 @@ const clamp = (value: number, lo: number, hi: number): number => Math.min(hi, Ma
 const CUT = 0.5;
 /** A change helps when it takes away at least this share of the losses. */
 const LEAST_HELP = 0.25;
-/** A link that is as good as there. */
-const SOUND = 0.9;
+/** A way at least this likely keeps a node from being cut off. */
+const LIKELY = 0.6;
+/** Instants of a run at which moving nodes are looked at. */
+const INSTANTS = 5;
 
 export interface AdvisorOptions {
   seed: number;
@@ -80,12 +85,13 @@ export class Advisor {
   /** Rounds simulated. */
   done = 0;
   private trials: Trial[] | null = null;
+  private current: FloodTally | null = null;
   private readonly advice: Advice[] = [];
   private readonly tried: Tried[] = [];
   private readonly changeRounds: number;
   private readonly outageRounds: number;
   private weakest: Pair | null = null;
-  private before: FloodTally | null = null;
+  private before: Count | null = null;
   private total = 0;
 
   /** The tally has to be finished when the first chunk is asked for. */
@@ -114,14 +120,19 @@ export class Advisor {
     this.trials ??= this.begin();
     let left = rounds;
     while (left > 0 && this.trials.length > 0) {
-      const [{ tally, conclude }] = this.trials;
+      const [trial] = this.trials;
+      // Beginning counts for a round, so that a chunk does not begin a hundred of them.
+      if (this.current === null) left--;
+      this.current ??= trial.begin();
+      const tally = this.current;
       const before = tally.done;
       tally.advance(left);
       left -= tally.done - before;
       this.done += tally.done - before;
       if (!tally.finished) continue;
-      const found = conclude();
+      const found = trial.conclude(tally);
       if (found) this.advice.push(found);
+      this.current = null;
       this.trials.shift();
     }
   }
@@ -135,7 +146,7 @@ export class Advisor {
     const { scenario, timing, survey, options } = this;
     this.advice.push(...findings(scenario, timing, survey, options.target));
     const trials = [...this.outages(), ...this.changeTrials()];
-    this.total = trials.reduce((sum, { tally }) => sum + tally.rounds, 0);
+    this.total = trials.reduce((sum, { rounds }) => sum + rounds, 0);
     return trials;
   }
 
@@ -143,34 +154,25 @@ export class Advisor {
     const { scenario, timing, survey, options } = this;
     const pairs = pairsOf(scenario, timing, survey).filter(({ ratio }) => ratio >= CUT);
     const host = scenario.round.beacon?.needed ? timing.slots.find(({ message }) => message === "beacon")?.from : null;
-    const roundabout = this.withoutNode();
+    const ways = this.waysOf();
     return survey.nodes.flatMap((node, place): Trial[] => {
       const others = pairs.filter((pair) => pair.place !== place && survey.slots[pair.slot].source !== place);
-      if (node === host || others.length === 0 || others.every((pair) => roundabout(pair, place))) return [];
+      const around = (pair: Pair) => ways.every((way) => way.roundabout(survey.slots[pair.slot].source, pair.place, place, LIKELY));
+      if (node === host || others.every(around)) return [];
       const down = withEdits(scenario, [{ path: ["floor", "nodes", place, "outages"], value: [{ fromS: 0, untilS: null }] }]);
-      const tally = new FloodTally(down, timing, { rounds: this.outageRounds, seed: options.seed });
-      return [{ tally, conclude: () => this.cut(node, others, tally) }];
+      const rounds = this.outageRounds;
+      const begin = () => new FloodTally(down, timing, { rounds, seed: options.seed });
+      return [{ rounds, begin, conclude: (tally) => this.cut(node, others, tally) }];
     });
   }
 
-  /** Is there a way of sound links from the pair's sender to its node, within the hop bound, that does without a node? Then its outage needs no simulation. */
-  private withoutNode(): (pair: Pair, place: number) => boolean {
+  /** Links at the instants that count, for finding the nodes whose outage needs no simulation. */
+  private waysOf(): Ways[] {
     const { scenario, timing, survey } = this;
-    const { nodes } = survey;
-    if (scenario.floor?.nodes.some(({ wayPoints }) => wayPoints.length > 0) || scenario.round.beacon?.needed) return () => false;
     const longest = timing.slots.reduce((most, { payloadBytes }) => Math.max(most, payloadBytes), 0);
-    const place = new Map(nodes.map((id, i) => [id, i]));
-    const sound: number[][] = nodes.map(() => []);
-    for (const { from, to, prr } of meanLinks(scenario, 0, longest)) if (prr >= SOUND) sound[place.get(from) ?? 0].push(place.get(to) ?? 0);
-    return ({ slot, place: to }, without) => {
-      const seen = new Set([survey.slots[slot].source, without]);
-      let front = [survey.slots[slot].source];
-      for (let hop = 1; hop <= timing.hops && front.length > 0; hop++) {
-        front = front.flatMap((from) => sound[from].filter((next) => !seen.has(next) && seen.add(next)));
-        if (front.includes(to)) return true;
-      }
-      return false;
-    };
+    const moves = scenario.floor?.nodes.some(({ wayPoints }) => wayPoints.length > 0) ?? false;
+    const instants = moves ? Array.from({ length: INSTANTS }, (_, i) => (scenario.run.durationS * i) / (INSTANTS - 1)) : [0];
+    return instants.map((atS) => new Ways(meanLinks(scenario, atS, longest), survey.nodes, timing.hops));
   }
 
   private cut(node: number, others: readonly Pair[], tally: FloodTally): Advice | null {
@@ -202,18 +204,30 @@ export class Advisor {
     const [weakest] = pairsOf(scenario, timing, survey);
     if (!weakest || weakest.ratio >= options.target) return [];
     this.weakest = weakest;
-    const sized = { rounds: this.changeRounds, seed: options.seed };
-    const before = new FloodTally(scenario, timing, sized);
-    this.before = before;
-    const trials: Trial[] = [{ tally: before, conclude: () => null }];
-    for (const change of changesFor(scenario, timing, survey.nodes, weakest, deepest(survey, timing.hops).step)) {
+    const rounds = this.changeRounds;
+    const of = (changed: Scenario, then: RoundTiming) => () => new FloodTally(changed, then, { rounds, seed: options.seed });
+    const first: Trial = {
+      rounds,
+      begin: of(scenario, timing),
+      conclude: (tally) => {
+        this.before = this.had(tally, timing, weakest);
+        return null;
+      },
+    };
+    const changes = changesFor(scenario, timing, survey.nodes, weakest, deepest(survey, timing.hops).step);
+    const trials = changes.map((change): Trial => {
       const changed = withEdits(scenario, change.edits);
       const then = roundTiming(changed);
-      const tally = new FloodTally(changed, then, sized);
-      this.tried.push({ change, timing: then, tally });
-      trials.push({ tally, conclude: () => null });
-    }
-    return trials;
+      return {
+        rounds,
+        begin: of(changed, then),
+        conclude: (tally) => {
+          this.tried.push({ change, timing: then, then: this.had(tally, then, weakest) });
+          return null;
+        },
+      };
+    });
+    return [first, ...trials];
   }
 
   /** Messages of the weakest pair that its node had. */
@@ -225,21 +239,17 @@ export class Advisor {
 
   /** What helped the weakest node, the best of each family, best first; and what did not. */
   private changes(): Advice[] {
-    const { timing, weakest, before } = this;
-    if (!weakest || !before?.finished) return [];
-    const now = this.had(before, timing, weakest);
+    const { weakest, before: now } = this;
+    if (!weakest || !now) return [];
     const helps = Math.max(1, LEAST_HELP * (now.of - now.count));
-    const outcomes = this.tried
-      .filter(({ tally }) => tally.finished)
-      .map((tried) => ({ ...tried, then: this.had(tried.tally, tried.timing, weakest) }))
-      .sort((a, b) => b.then.count - a.then.count || b.timing.reserveS - a.timing.reserveS);
+    const outcomes = [...this.tried].sort((a, b) => b.then.count - a.then.count || b.timing.reserveS - a.timing.reserveS);
     const best = outcomes.filter(({ change }, i) => outcomes.findIndex((other) => other.change.family === change.family) === i);
     const good = best.filter(({ then }) => then.count - now.count >= helps);
     const idle = best.filter(({ then }) => then.count - now.count < helps);
     return [...good.map((outcome) => this.helpful(outcome, now, weakest)), ...this.unhelpful(idle, weakest)];
   }
 
-  private helpful({ change, timing: changed, then }: Tried & { then: Count }, now: Count, weakest: Pair): Advice {
+  private helpful({ change, timing: changed, then }: Tried, now: Count, weakest: Pair): Advice {
     const { scenario, timing, survey } = this;
     const node = survey.nodes[weakest.place];
     return {

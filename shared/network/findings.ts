@@ -55,10 +55,16 @@ export function findings(scenario: Scenario, timing: RoundTiming, tally: FloodTa
 function weakNodes(scenario: Scenario, timing: RoundTiming, tally: FloodTally, pairs: readonly Pair[], target: number): Advice[] {
   const worst = new Map<number, Pair>();
   for (const pair of pairs) if (pair.ratio < target && !worst.has(pair.place)) worst.set(pair.place, pair);
+  const tables = new Map<number, LinkRow[]>();
+  const linksFor = (payloadBytes: number): LinkRow[] => {
+    const links = tables.get(payloadBytes) ?? meanLinks(scenario, 0, payloadBytes);
+    tables.set(payloadBytes, links);
+    return links;
+  };
   return Array.from(worst.values(), ({ slot, place, count, of, ratio }): Advice => {
     const node = tally.nodes[place];
     const [lo, hi] = clopperPearson(count, of);
-    const links = meanLinks(scenario, 0, timing.slots[slot].payloadBytes);
+    const links = linksFor(timing.slots[slot].payloadBytes);
     const best = linksTo(links, node).slice(0, NEIGHBOURS);
     const source = timing.slots[slot].from;
     const out = links

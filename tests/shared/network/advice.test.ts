@@ -180,7 +180,7 @@ describe("advice", () => {
 
 describe("words of advice", () => {
   it("give a share enough digits and no more", () => {
-    expect([0, 0.123, 0.9876, 0.99996, 1].map(percent)).toEqual(["0 %", "12.3 %", "98.76 %", "99.996 %", "100 %"]);
+    expect([0, 0.123, 0.9876, 0.99984, 0.99996, 1].map(percent)).toEqual(["0 %", "12.3 %", "98.76 %", "99.98 %", "over 99.99 %", "100 %"]);
     expect([0.9, 0.999, 0.99995].map(wanted)).toEqual(["90 %", "99.9 %", "99.995 %"]);
   });
   it("write channels as ranges", () => {
