@@ -54,6 +54,25 @@ export interface MachinePicture {
 }
 
 const END = 16;
+/** Between the tip of a rod and the edge of the picture. */
+const AIR = 8;
+
+/** How far the tip gets away from the middle of the rail, above and below the pivot, over the whole run, m. A picture that follows its cart counts from the cart. */
+function tipsOf(result: RunResult, hanging: boolean, reachM: number, follows: boolean): { asideM: number; aboveM: number; belowM: number } {
+  const of = (name: string) => result.series.values[result.series.columns.findIndex((column) => column.name === name)];
+  const [position, angle] = [of("position"), of("angle")];
+  const tips = { asideM: 0, aboveM: 0, belowM: 0 };
+  if (!position || !angle) return tips;
+  for (let i = 0; i < angle.length; i++) {
+    const theta = (angle[i] ?? 0) + (hanging ? Math.PI : 0);
+    const up = reachM * Math.cos(theta);
+    if (!Number.isFinite(up)) continue;
+    tips.asideM = Math.max(tips.asideM, Math.abs((follows ? 0 : (position[i] ?? 0)) + reachM * Math.sin(theta)));
+    tips.aboveM = Math.max(tips.aboveM, up);
+    tips.belowM = Math.max(tips.belowM, -up);
+  }
+  return tips;
+}
 
 export function machinePicture(spec: PendulumSpec, scenario: Scenario, result: RunResult, width: number): MachinePicture {
   const hanging = spec.rest === "hanging";
@@ -66,17 +85,20 @@ export function machinePicture(spec: PendulumSpec, scenario: Scenario, result: R
   const narrow = width < 260;
   const longest = narrow ? 112 : 180;
   const rail = width - 2 * END;
-  const fitting = Math.min(rail / (2 * halfM), longest / reachM);
+  const tips = tipsOf(result, hanging, reachM, rail / (2 * halfM) < Math.min(60, longest) / reachM);
+  const fitting = Math.min(rail / (2 * halfM), longest / reachM, (width / 2 - AIR) / Math.max(tips.asideM, 1e-9));
   const pixelsPerM = Math.max(fitting, Math.min(60, longest) / reachM);
   const reach = reachM * pixelsPerM;
   const limitsOf = (signal: string) =>
     scenario.limits.flatMap((limit) =>
       limit.type === "within" && limit.signal === signal && limit.of === "signal" ? [limit.lo, limit.hi].filter((edge) => edge !== null) : [],
     );
-  const pivotY = hanging ? 76 : reach + (narrow ? 16 : 41);
+  const above = tips.aboveM * pixelsPerM + AIR;
+  const below = tips.belowM * pixelsPerM + AIR;
+  const pivotY = hanging ? Math.max(76, above) : reach + (narrow ? 16 : 41);
   return {
     width,
-    height: hanging ? pivotY + reach + 36 : pivotY + (narrow ? 76 : 81),
+    height: pivotY + (hanging ? reach + 36 : Math.max(narrow ? 76 : 81, below)),
     hanging,
     pixelsPerM,
     follows: pixelsPerM > fitting * 1.0001,

@@ -3,6 +3,7 @@ import "./drawings.css";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
+import { drawnExtentS } from "#src/components/plots/drawn-extent.ts";
 import { useWidth } from "#src/components/plots/measure.ts";
 import { createPlotCursor, type PlotCursor, PlotCursorContext } from "#src/components/plots/plot-cursor.ts";
 import { usualSignals } from "#src/components/plots/plot-signals.ts";
@@ -38,7 +39,7 @@ export interface RunBenchProps {
 
 /** A cursor for this run, at the instant that tells most. Where the screen stays, it stays too. */
 export function useRunCursor(result: RunResult): PlotCursor {
-  const [cursor] = useState(() => createPlotCursor(result.durationS, tellingInstant(result)));
+  const [cursor] = useState(() => createPlotCursor(drawnExtentS(result), tellingInstant(result)));
   return cursor;
 }
 

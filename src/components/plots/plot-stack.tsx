@@ -81,7 +81,7 @@ export function PlotStack({ scenario, result, second, signals: names, stale = fa
   // biome-ignore lint/correctness/useExhaustiveDependencies: the layout is made from the result
   useLayoutEffect(() => {
     if (!host.current || layout.width <= 0) return;
-    cursor.setExtent(result.durationS, Math.max(result.rounds.periodS, result.durationS / 1e5));
+    cursor.setExtent(layout.durationS, Math.max(result.rounds.periodS, layout.durationS / 1e5));
     const colours = `${stale} ${epoch}`;
     if (palette.current?.of !== colours) palette.current = { of: colours, ...paletteOf(host.current) };
     canvas.current?.update({ layout, t, palette: palette.current }, cursor.view);
@@ -121,7 +121,7 @@ export function PlotStack({ scenario, result, second, signals: names, stale = fa
         aria-label="Time cursor of the plots"
         aria-keyshortcuts="ArrowLeft ArrowRight PageUp PageDown Home End + - 0"
         aria-valuemin={0}
-        aria-valuemax={result.durationS}
+        aria-valuemax={layout.durationS}
         aria-valuenow={0}
         {...handlers}
       />

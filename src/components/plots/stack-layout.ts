@@ -1,5 +1,7 @@
 /** Where everything stands in a stack of plots, in CSS pixels. Depends on width and run, not on the zoom. */
+
 import type { RunResult } from "#shared/simulation/result.ts";
+import { drawnExtentS } from "./drawn-extent.ts";
 import type { Measure } from "./measure.ts";
 import type { View } from "./plot-cursor.ts";
 import type { PlotSignal } from "./plot-signals.ts";
@@ -33,6 +35,7 @@ export interface StackLayout {
   /** Lower edge of the lowest plot. */
   plotsBottom: number;
   axisTop: number;
+  /** Time that the axis shows: the run's, or less when it ended early. */
   durationS: number;
   endedAtS: number;
   ended: RunResult["ended"];
@@ -83,7 +86,8 @@ export function layOutStack(result: RunResult, signals: readonly PlotSignal[], w
     result.endedAtS,
     signals.some(({ reference }) => reference?.stair),
   );
-  const whole = (timeS: number) => left + (timeS / result.durationS) * (right - left);
+  const durationS = drawnExtentS(result);
+  const whole = (timeS: number) => left + (timeS / durationS) * (right - left);
   const { rows } = placeEvents(marked, { xOf: whole, left, right, rows: narrow ? 3 : 2, measure: (text) => measure(text, "axis") });
   const eventRows = Math.max(1, rows);
 
@@ -115,7 +119,7 @@ export function layOutStack(result: RunResult, signals: readonly PlotSignal[], w
     tapes: placed,
     plotsBottom,
     axisTop,
-    durationS: result.durationS,
+    durationS,
     endedAtS: result.endedAtS,
     ended: result.ended,
     periodS: rounds.periodS,

@@ -1,4 +1,4 @@
-import { type RefObject, useState } from "react";
+import { type RefObject, useState, useSyncExternalStore } from "react";
 import type { RunDetail } from "#shared/api/runs.ts";
 import type { SeriesRecord } from "#shared/api/series.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
@@ -30,6 +30,7 @@ interface ExportMenuProps {
 const CSV = "text/csv;charset=utf-8";
 
 export function ExportMenu({ run, scenario, record, result, cursor, stack, engine }: ExportMenuProps) {
+  const zoomed = useSyncExternalStore(cursor.subscribe, () => cursor.view.fromS > 0 || cursor.view.untilS < cursor.durationS);
   const [busy, setBusy] = useState(false);
   const [failure, setFailure] = useState<string | null>(null);
   const file = (what: string) => runFile(run.scenarioName, run.revision, run.seed, what);
@@ -63,7 +64,7 @@ export function ExportMenu({ run, scenario, record, result, cursor, stack, engin
   const picture = make(async () => {
     if (!stack.current) throw new Error("The plots are not drawn yet.");
     const { fromS, untilS } = cursor.view;
-    const part = fromS === 0 && untilS === run.durationS ? "" : ` · ${formatTime(fromS, 3)} to ${formatTime(untilS, 3)}`;
+    const part = fromS === 0 && untilS === cursor.durationS ? "" : ` · ${formatTime(fromS, 3)} to ${formatTime(untilS, 3)}`;
     const note = `${runName(run.revision, run.seed)} · ${run.verdict.word}${part} · engine ${run.engine}`;
     download(file("plots.png"), await stack.current.toPng(run.scenarioName, note), "image/png");
   });
@@ -78,7 +79,7 @@ export function ExportMenu({ run, scenario, record, result, cursor, stack, engin
         }
       >
         <MenuItem onSelect={series}>Series, all {length}, as CSV</MenuItem>
-        <MenuItem onSelect={visible}>Series, what is zoomed to, as CSV</MenuItem>
+        {zoomed && <MenuItem onSelect={visible}>Series, what is zoomed to, as CSV</MenuItem>}
         <MenuItem onSelect={rounds}>One row per round, as CSV</MenuItem>
         <MenuItem onSelect={picture}>Plots as PNG</MenuItem>
         <MenuRule />

@@ -44,9 +44,25 @@ const shifted = (decimal: string, by: number): number => {
   return Number(`${mantissa}e${Number(exponent) + by}`);
 };
 
-/** Stored value of a typed number; null when the text is no number. */
+const bare = (text: string): string =>
+  text
+    .replace(/[\s\u2009\u2060\u00b7*]/g, "")
+    .replace(/\u03bc/g, "\u00b5")
+    .replace(/\^?2$/, "\u00b2")
+    .replace(/^deg(rees?)?/i, "\u00b0")
+    .toLowerCase();
+
+/** "1.2 kg" as "1.2" where kg is the field's unit; other texts as they are. */
+export function withoutUnit(text: string, unit: ScreenUnit): string {
+  const split = /^\s*([+\-\u2212\u2013]?[\d.,]+(?:e[+-]?\d+)?)\s*(\D.*)$/i.exec(text);
+  if (!split?.[1] || !split[2] || unit.text === "") return text;
+  const typed = bare(split[2]);
+  return typed === bare(unit.text) || (unit.text.startsWith("\u00b5") && typed === bare(unit.text.replace("\u00b5", "u"))) ? split[1] : text;
+}
+
+/** Stored value of a typed number, alone or with the field's unit behind it; null when the text is no number. */
 export function toStored(text: string, unit: ScreenUnit): number | null {
-  const plain = plainNumber(text);
+  const plain = plainNumber(text) ?? plainNumber(withoutUnit(text, unit));
   if (plain === null) return null;
   return unit.degrees ? Number(plain) * RAD_PER_DEGREE : shifted(plain, -unit.shift);
 }

@@ -1,7 +1,7 @@
 /** From typed text to stored values and back: numbers in the units of the screen, and given sequences. */
 import { type FieldSpec, fieldSpec } from "./field-spec.ts";
 import type { Path } from "./json-path.ts";
-import { numberText, plainNumber, toScreen, toStored } from "./screen-unit.ts";
+import { numberText, toScreen, toStored } from "./screen-unit.ts";
 
 export type Read = { ok: true; value: unknown } | { ok: false; problem: string };
 
@@ -83,5 +83,4 @@ export const rowsText = (value: unknown, spec: FieldSpec): string =>
   Array.isArray(value) ? value.map((row) => numbersText(row, spec)).join("\n") : "";
 
 /** Does typed text still stand for the value that the JSON holds? It does not after an undo or an edit from elsewhere. */
-export const standsFor = (json: unknown, path: Path, text: string, value: number): boolean =>
-  plainNumber(text) !== null && toStored(text, fieldSpec(json, path).unit) === value;
+export const standsFor = (json: unknown, path: Path, text: string, value: number): boolean => toStored(text, fieldSpec(json, path).unit) === value;

@@ -131,7 +131,7 @@ function firstReception(type: string, json: unknown): Node {
   const phy = getAt(json, ["radio", "phy"]) as Phy;
   const present = node(getAt(json, ["radio", "reception"]));
   const formula = { type: "formula" as const, codingGainS2Db: number(present.codingGainS2Db, 4), codingGainS8Db: number(present.codingGainS8Db, 8) };
-  const bytes = number(getAt(json, ["radio", "headerBytes"]), 4) + FIRST_PAYLOAD;
+  const bytes = number(getAt(json, ["radio", "headerBytes"]), 4) + longestPayload(json);
   const all = Array.from({ length: 81 }, (_, i) => i / 2 - 20).map((snrDb) => ({
     snrDb,
     prr: Number(receptionRatio(phy, formula, bytes, 10 ** (snrDb / 10)).toFixed(4)),
@@ -140,7 +140,15 @@ function firstReception(type: string, json: unknown): Node {
   const until = all.findIndex(({ prr }) => prr === 1);
   return { type, name: "", rows: all.slice(from, until < 0 ? undefined : until + 1) };
 }
-const FIRST_PAYLOAD = 16;
+
+/** Of the round's messages; the draft may be one that has no round. */
+function longestPayload(json: unknown): number {
+  try {
+    return Math.max(0, ...roundTiming(json as Scenario).slots.map(({ payloadBytes }) => payloadBytes));
+  } catch {
+    return 16;
+  }
+}
 
 export const firstChannel = (json: unknown): string => plantOf(json)?.channels[0]?.name ?? "cart";
 

@@ -1,7 +1,7 @@
 import { withUnit } from "#src/lib/format.ts";
 import { fieldSpec } from "../model/field-spec.ts";
 import { getAt, type Path } from "../model/json-path.ts";
-import { numberText, siUnit } from "../model/screen-unit.ts";
+import { numberText, toScreen } from "../model/screen-unit.ts";
 import { NumberAt, SwitchAt } from "./fields.tsx";
 import { useForm } from "./form.tsx";
 
@@ -22,7 +22,7 @@ export function EncodingFields({ path, first }: { path: Path; first: { lo: numbe
             path={[...path, "hi"]}
             hint={
               step > 0 && Number.isFinite(step)
-                ? `One step is ${withUnit(numberText(Number(step.toPrecision(3))), siUnit(unit.text).text)}.`
+                ? `One step is ${withUnit(numberText(Number(toScreen(step, unit).toPrecision(3))), unit.text)}.`
                 : undefined
             }
           />

@@ -7,7 +7,7 @@ import type { Choice } from "../model/choices.ts";
 import { fieldRangeText, fieldSpec } from "../model/field-spec.ts";
 import { getAt, type Path, setAt } from "../model/json-path.ts";
 import type { FieldIssue } from "../model/judge.ts";
-import { fieldText, stepped } from "../model/screen-unit.ts";
+import { fieldText, plainNumber, stepped, withoutUnit } from "../model/screen-unit.ts";
 import { readNumber, standsFor } from "../model/typed-values.ts";
 import { useForm, useIssue } from "./form.tsx";
 
@@ -80,7 +80,11 @@ export function NumberAt({ path, label, empty, hint, range }: NumberAtProps) {
       hint={hint}
       readOnly={readOnly}
       onKeyDown={onKeyDown}
-      onBlur={endStep}
+      onBlur={() => {
+        // The unit stands behind the field already.
+        if (typed?.problem === null && plainNumber(typed.text) === null && typed.text.trim() !== "") type(withoutUnit(typed.text, spec.unit));
+        endStep();
+      }}
       data-path={at}
     />
   );

@@ -1,6 +1,6 @@
 import { NOISE, NOISE_THEN } from "../model/choices.ts";
 import { describeEncoding, shown } from "../model/describe.ts";
-import { getAt } from "../model/json-path.ts";
+import { getAt, type Path } from "../model/json-path.ts";
 import { addSensorSignal, moveSensorSignal, removeSensorSignal } from "../model/list-edits.ts";
 import { outputNamed, plantOf } from "../model/machine.ts";
 import { SignalAt } from "./controller-part.tsx";
@@ -20,6 +20,7 @@ export function SensorPart() {
   const signals = (getAt(json, SIGNALS) as { signal: string }[] | undefined) ?? [];
   const used = signals.map(({ signal }) => signal);
   const free = () => plant?.outputs.find(({ name }) => !used.includes(name))?.name ?? plant?.outputs[0]?.name ?? "x1";
+  const angles = (path: Path) => outputNamed(json, getAt(json, [...path, "signal"]))?.unit.startsWith("rad");
   const say = (i: number) =>
     `${outputNamed(json, used[i])?.label ?? used[i]}: noise ${shown(json, [...SIGNALS, i, "noiseStd"])}, ${describeEncoding(json, [...SIGNALS, i, "encoding"])}`;
   return (
@@ -43,7 +44,7 @@ export function SensorPart() {
           <>
             <SignalAt path={[...path, "signal"]} label="Signal" />
             <NumberAt path={[...path, "noiseStd"]} />
-            <EncodingFields path={[...path, "encoding"]} first={{ lo: -1, hi: 1 }} />
+            <EncodingFields path={[...path, "encoding"]} first={angles(path) ? { lo: -Math.PI, hi: Math.PI } : { lo: -1, hi: 1 }} />
           </>
         )}
       </EntryList>

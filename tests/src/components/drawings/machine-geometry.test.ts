@@ -45,6 +45,20 @@ describe("the drawn machine", () => {
       }),
     );
   });
+  it("has room for a rod that has fallen, below its cart and beside the track", () => {
+    for (const angle of [2.2, 3.6, 9]) {
+      const fallen = madeRun({ angle }).result;
+      const picture = machinePicture(plant, scenario, fallen, 272);
+      for (let at = 0; at < 10; at += 0.05) {
+        const pose = poseAt(fallen, false, at);
+        if (!pose) throw new Error("nothing was recorded");
+        const [x, y] = fromPivot(136 + pose.x * picture.pixelsPerM, picture.pivotY, pose.theta, picture.reach);
+        expect(x).toBeGreaterThanOrEqual(0);
+        expect(x).toBeLessThanOrEqual(272);
+        expect(y).toBeLessThanOrEqual(picture.height);
+      }
+    }
+  });
   it("leaves no trail longer than a swing, for a short rod and a long rope alike", () => {
     expect(trailStepS(plant)).toBeCloseTo(0.05, 9);
     expect(trailStepS({ ...plant, rodLengthM: 2.5 })).toBeCloseTo(0.2, 9);

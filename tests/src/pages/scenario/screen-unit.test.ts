@@ -84,3 +84,19 @@ describe("stepping by arrow keys", () => {
     expect(stepped(0.1, siUnit("m"), -1, free)).toBe(0.099);
   });
 });
+
+describe("a number typed with its unit", () => {
+  it("means the same as without", () => {
+    expect(toStored("1.2 kg", siUnit("kg"))).toBe(1.2);
+    expect(toStored("25ms", MILLISECONDS)).toBe(0.025);
+    expect(toStored("7,5 %", PERCENT)).toBe(0.075);
+    expect(toStored("200 us", MICROSECONDS)).toBe(0.0002);
+    expect(toStored("30 deg", screenUnit("rad"))).toBeCloseTo(Math.PI / 6, 12);
+    expect(toStored("9.81 m/s^2", siUnit("m/s\u00b2"))).toBe(9.81);
+    expect(toStored("2 N s/m", siUnit("N\u2009s/m"))).toBe(2);
+  });
+  it("is no number with another unit", () => {
+    for (const text of ["1.2 g", "25 s", "5 kgg", "kg"]) expect(toStored(text, siUnit("kg"))).toBeNull();
+    expect(toStored("25 s", MILLISECONDS)).toBeNull();
+  });
+});
