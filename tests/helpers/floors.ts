@@ -1,5 +1,4 @@
 import { readFileSync } from "node:fs";
-import type { Floor } from "#shared/scenario/floor-schema.ts";
 import { type Scenario, type ScenarioInput, scenarioSchema } from "#shared/scenario/schema.ts";
 import { scalar } from "./scenarios.ts";
 
@@ -32,10 +31,4 @@ export function hall(change?: (scenario: ScenarioInput) => void): Scenario {
   const scenario: ScenarioInput = JSON.parse(readFileSync("examples/balancer-rig-1-floor.json", "utf8"));
   change?.(scenario);
   return scenarioSchema.parse(scenario);
-}
-
-/** The floor of a scenario that has one. */
-export function floorOf({ floor }: Scenario): Floor {
-  if (!floor) throw new Error("no floor");
-  return floor;
 }
