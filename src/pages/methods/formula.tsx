@@ -15,7 +15,8 @@ function pieces(text: string): ReactNode[] {
     if (mark === "^") return <sup key={key}>{inner}</sup>;
     if (letters && isVariable(letters, text.slice(0, match.index))) return <i key={key}>{letters.replaceAll("'", "′")}</i>;
     // Between two words it joins ("back-to-back"); elsewhere it subtracts.
-    return <Fragment key={key}>{whole === "-" ? whole : whole.replaceAll("-", "−").replaceAll("'", "′")}</Fragment>;
+    const joins = whole === "-" && /[A-Za-z]$/.test(text.slice(0, match.index));
+    return <Fragment key={key}>{joins ? whole : whole.replaceAll("-", "−").replaceAll("'", "′")}</Fragment>;
   });
 }
 

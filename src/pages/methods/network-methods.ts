@@ -26,19 +26,19 @@ export const NETWORK_METHODS: readonly MethodGroup[] = [
       },
       {
         title: "Indoors, by environment, before 2019",
-        text: "f in MHz, d in m, one floor. $N$ is 28 in homes, 30 in offices, 22 in commercial rooms (measured at 1.8 to 2 GHz).",
+        text: "$f$ in MHz, $d$ in m, one floor. $N$ is 28 in homes, 30 in offices, 22 in commercial rooms (measured at 1.8 to 2 GHz).",
         formulas: ["L = 20 log_{10} f + N log_{10} d - 28"],
         source: "ITU-R P.1238-8, 2015, tables 2 and 5",
       },
       {
         title: "Indoors, industrial, since 2019",
-        text: "f in GHz. With line of sight $α$ = 2.34, $β$ = 24.26, $γ$ = 2.06; without 3.66, 22.42, 2.34 (coefficients from memory).",
+        text: "$f$ in GHz, $d$ in m. With line of sight $α$ = 2.34, $β$ = 24.26, $γ$ = 2.06; without 3.66, 22.42, 2.34 (coefficients from memory).",
         formulas: ["L = 10 α log_{10} d + β + 10 γ log_{10} f"],
         source: "ITU-R P.1238-10, 2019",
       },
       {
         title: "Indoor factory",
-        text: "f in GHz. Sparse or dense clutter, low or high antenna; never less than with line of sight, and dense low never less than sparse low.",
+        text: "$f$ in GHz, $d$ in m. Sparse or dense clutter, low or high antenna; never less than with line of sight, and dense low never less than sparse low.",
         formulas: [
           "LOS: 31.84 + 21.50 log_{10} d + 19.00 log_{10} f",
           "SL: 33 + 25.5 log_{10} d + 20 log_{10} f",
@@ -105,7 +105,7 @@ export const NETWORK_METHODS: readonly MethodGroup[] = [
       },
       {
         title: "What it is worth in delivery",
-        text: "On a line of $H$ hops whose packets arrive with probability $q$, without a slot’s end, a node at the end has the message with the probability below; the wave is held to it, and to enumeration on lines, stars, rings and a grid.",
+        text: "On a line of $H$ hops whose packets arrive with probability $q$, without a slot’s end, a node at the end has the message with probability $P$; the wave is held to it, and to enumeration on lines, stars, rings and a grid.",
         formulas: ["P = (1 - (1 - q)^N)^H"],
         source: "Derived; checked in tests/reference",
       },
@@ -135,7 +135,7 @@ export const NETWORK_METHODS: readonly MethodGroup[] = [
       {
         title: "Floods that depend on each other",
         text: "Twenty successive batches: where their delivered floods vary more than independent ones would, the intervals are too narrow, and the survey says by how much. Both messages of a loop lost in one sampling are compared with the product of their shares.",
-        formulas: ["spread = Σ (k_i - n_i p)^2 / (n_i p (1 - p)) / 19, chi-square with 19 degrees of freedom over 19"],
+        formulas: ["spread = Σ (k_i - n_i p)^2 / (n_i p (1 - p)) / 19", "19 · spread: chi-square with 19 degrees of freedom"],
         source: "Index of dispersion: Cochran, Biometrics 10(4), 1954",
       },
       {
