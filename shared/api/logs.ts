@@ -80,7 +80,7 @@ export const uploadLogQuery = z.strictObject({
   name: logName,
   fileName: z.string().trim().max(200).default(""),
   /** JSON of a ColumnMapping. */
-  mapping: z.string().min(2).max(6000),
+  mapping: z.string().min(2).max(4000),
 });
 
 export const uploadLogParameters = ({ name, fileName, mapping }: { name: string; fileName: string; mapping: ColumnMapping }) => ({
@@ -94,11 +94,9 @@ export const uploadLogResponse = z.strictObject({
   /** The same file was read with the same mapping before: that log is given back as it is, under its own name. */
   existed: z.boolean(),
 });
-export type UploadLogResponse = z.infer<typeof uploadLogResponse>;
 
 /** PATCH .../logs/:id. Revisions that name it keep the name that it had then. */
 export const changeLogRequest = z.strictObject({ name: logName });
 export type ChangeLogRequest = z.input<typeof changeLogRequest>;
 
 export const deleteLogResponse = z.strictObject({ deleted: z.literal(true) });
-export type DeleteLogResponse = z.infer<typeof deleteLogResponse>;

@@ -39,7 +39,6 @@ export const pictureListResponse = z.strictObject(pageOf(pictureSchema));
 export type PictureListResponse = z.infer<typeof pictureListResponse>;
 
 export const uploadPictureQuery = z.strictObject({ name: z.string().trim().min(1).max(120) });
-export type UploadPictureQuery = z.input<typeof uploadPictureQuery>;
 
 export const uploadPictureResponse = z.strictObject({
   picture: pictureSchema,

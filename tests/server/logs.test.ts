@@ -136,7 +136,7 @@ describe("uploading a reception log", () => {
       { mapping: { ...MAPPING, number: null, received: null } },
       400,
       "request-invalid",
-      /one of them is needed/,
+      /^The mapping of the columns is not valid: Neither .+ one of them is needed/,
     ],
   ])("is refused with a reason and leaves nothing behind: %s", async (_what, body, sent, status, code, message) => {
     const before = await kept();

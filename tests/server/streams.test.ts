@@ -161,7 +161,7 @@ describe("an upload", () => {
     const { log } = bodyOf(uploadLogResponse, await answer);
     expect(log).toMatchObject({ name: "The next", rows: 20 });
     await harness.people.engineer.agent.delete(`${path()}/${log.id}`).expect(200);
-  });
+  }, 60_000);
 
   it("waits for its turn behind others, and is refused for a moment when too many wait", async () => {
     const uploads = await Promise.all(
@@ -187,7 +187,7 @@ describe("an upload", () => {
     const error = errorOf(answers.find(({ status }) => status === 429) as Answer);
     expect(error).toMatchObject({ code: "too-many-attempts", retryAfterS: 15 });
     expect(error.message).toContain("reading 3 reception logs, and 8 more are waiting");
-  });
+  }, 60_000);
 
   it("is refused when one person sends very many, until some time has passed", async () => {
     let now = 1_000_000;
@@ -230,6 +230,7 @@ describe("a reception log of more than 50 MB", () => {
       .finally(() => {
         done = true;
       });
+    const began = performance.now();
     let answered = 0;
     let slowestMs = 0;
     while (!done) {
@@ -242,7 +243,8 @@ describe("a reception log of more than 50 MB", () => {
     expect(bytes).toBeGreaterThan(50_000_000);
     expect(log).toMatchObject({ bytes, sha256: hash.digest("hex"), rows: 840_000, rowsUsed: 840_000, packets: 840_000 });
     expect(answered).toBeGreaterThan(10);
-    expect(slowestMs).toBeLessThan(2_000);
+    // Whoever else asked never waited for the reading, on however busy a machine.
+    expect(slowestMs).toBeLessThan((performance.now() - began) / 3);
 
     const cookie = await cookieOf(harness.people.trainee);
     const download = (limit: number) =>
