@@ -27,9 +27,6 @@ import "./logs.css";
 
 export function UploadPage() {
   const team = useTeam();
-  const client = useLogClient();
-  const [chosen, setChosen] = useState<{ file: File; count: number } | null>(null);
-  const [format, setFormat] = useState(false);
   if (!team.may("edit-logs")) {
     return (
       <ErrorView
@@ -43,6 +40,14 @@ export function UploadPage() {
       </ErrorView>
     );
   }
+  return <Upload />;
+}
+
+function Upload() {
+  const team = useTeam();
+  const client = useLogClient();
+  const [chosen, setChosen] = useState<{ file: File; count: number } | null>(null);
+  const [format, setFormat] = useState(false);
   const take = (file: File) => setChosen((before) => ({ file, count: (before?.count ?? 0) + 1 }));
   const tooLarge = chosen && chosen.file.size > MAX_LOG_BYTES;
   return (
