@@ -196,7 +196,9 @@ function spells(scenario: Scenario, timing: RoundTiming, tally: FloodTally): Adv
 function tooFew(pairs: readonly Pair[], tally: FloodTally, target: number): Advice[] {
   const open = pairs.filter(({ count, of, ratio }) => ratio >= target && clopperPearson(count, of)[0] < target);
   if (open.length === 0) return [];
-  const needed = packetsForClaim(target, 0.975);
+  const lost = open.reduce((most, { count, of }) => Math.max(most, of - count), 0);
+  const needed = packetsForClaim(target, 0.975, lost);
+  const how = lost === 0 ? "even without a loss" : `even with no further loss than the ${lost} of the weakest`;
   const nodes = [...new Set(open.map(({ place }) => tally.nodes[place]))].sort((a, b) => a - b);
   return [
     {
@@ -204,7 +206,7 @@ function tooFew(pairs: readonly Pair[], tally: FloodTally, target: number): Advi
       severity: "hint",
       nodes,
       slot: null,
-      text: `${tally.done} rounds are too few to show ${wanted(target)}: even without a loss it takes ${needed} floods until the 95 % interval lies above it.`,
+      text: `${tally.done} rounds are too few to show ${wanted(target)}: ${how} it takes ${needed} floods until the 95 % interval lies above it.`,
       figures: [{ label: "floods needed", value: needed, unit: "floods" }],
       edits: [],
     },

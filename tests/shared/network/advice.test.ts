@@ -38,7 +38,17 @@ describe("advice", () => {
     const [few] = of(adviceOn(line(2, 1)), "too-few");
     // 0.999^3688 is the first below 0.025 (success run).
     expect(figure(few, "floods needed")).toBe(3688);
-    expect(few.text).toMatch(/^400 rounds are too few to show 99\.9 %/);
+    expect(few.text).toMatch(/^400 rounds are too few to show 99\.9 %: even without a loss it takes 3688 floods/);
+  });
+
+  it("counts the losses that there were into what a claim takes", () => {
+    // 0.97 twice a flood: about one in 1100 lost, near the target.
+    const scenario = line(2, 0.97, (input) => {
+      input.round = { periodS: 0.05, hops: 1, transmissions: 2, slackSteps: 1 };
+    });
+    const [few] = of(adviceOn(scenario, 6000), "too-few");
+    expect(few.text).toMatch(/even with no further loss than the \d of the weakest it takes \d+ floods/);
+    expect(figure(few, "floods needed")).toBeGreaterThan(6000);
   });
 
   it("names the weak node with its links, and makes what helps worth its figures", () => {
