@@ -59,7 +59,10 @@ export function createEngine(): EngineClient {
     survey: (scenario, options, onProgress) => task(remote.survey(scenario, options, telling(onProgress))),
     contours: (scenario, slotId, options) => task(remote.contours(scenario, slotId, options)),
     links: (scenario, atS) => task(remote.links(scenario, atS)),
-    cancelTask: (kind) => void remote.cancelTask(kind),
+    // The page may still give up a job while it goes away, after the worker did.
+    cancelTask: (kind) => {
+      if (!disposed) void remote.cancelTask(kind);
+    },
     run: (scenario, seed, onProgress) =>
       guarded<WorkerOutcome>(remote.run(scenario, seed, onProgress && proxy(onProgress)) as Promise<WorkerOutcome>, { ok: false, cancelled: true }),
     cancel: () => void remote.cancel(),
