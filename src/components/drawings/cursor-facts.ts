@@ -26,9 +26,6 @@ export const recordsOf = ({ rounds }: RunResult): RunRecords => ({
 export const roundAt = ({ rounds }: RunResult, timeS: number): number =>
   Math.max(0, Math.min(rounds.count - 1, Math.floor(timeS / rounds.periodS + 1e-9)));
 
-/** Rounds of the whole run, also when it ended early. */
-export const plannedRounds = ({ rounds, durationS }: RunResult): number => Math.max(rounds.count, Math.ceil(durationS / rounds.periodS - 1e-9));
-
 export function measurementFact(result: RunResult, records: RunRecords, timeS: number): MessageFact {
   if (!result.rounds.hasMeasurementSlot) return { lost: false, word: "read directly", more: "" };
   const inRow = records.measurement.streak[roundAt(result, timeS)] ?? 0;

@@ -1,5 +1,6 @@
 import { useMemo, useRef } from "react";
 import "./drawings.css";
+import { roundsOf } from "#shared/scenario/rounds.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
 import { useOnCursor } from "#src/components/plots/plot-cursor.ts";
@@ -7,7 +8,7 @@ import { plotSignals, plottable } from "#src/components/plots/plot-signals.ts";
 import { valueAt } from "#src/components/plots/series-points.ts";
 import { formatNumber, formatTime, timeDecimals } from "#src/components/plots/units.ts";
 import { withUnit } from "#src/lib/format.ts";
-import { commandFact, type MessageFact, measurementFact, plannedRounds, recordsOf, roundAt } from "./cursor-facts.ts";
+import { commandFact, type MessageFact, measurementFact, recordsOf } from "./cursor-facts.ts";
 
 export interface CursorTableProps {
   scenario: Scenario;
@@ -28,6 +29,8 @@ export function CursorTable({ scenario, result }: CursorTableProps) {
       ),
     [scenario, result],
   );
+  // Of the network: a loop may sample in some rounds only.
+  const rounds = Math.max(1, roundsOf(scenario));
   const decimals = timeDecimals(result.rounds.periodS / 10);
 
   useOnCursor(({ timeS }) => {
@@ -43,7 +46,7 @@ export function CursorTable({ scenario, result }: CursorTableProps) {
       write(`value${index}`, Number.isFinite(value) ? withUnit(formatNumber(value * factor, digits), unit) : "none");
     });
     const over = timeS > result.endedAtS + 1e-9;
-    write("round", over ? "over" : String(roundAt(result, timeS)));
+    write("round", over ? "over" : String(Math.min(rounds - 1, Math.floor(timeS / scenario.round.periodS + 1e-9))));
     const tell = (name: string, fact: MessageFact) => {
       write(`${name}-word`, over ? "none" : fact.word);
       write(`${name}-more`, over ? "" : fact.more);
@@ -73,7 +76,7 @@ export function CursorTable({ scenario, result }: CursorTableProps) {
         <div>
           <dt>Round</dt>
           <dd>
-            <span data-part="round" /> <span className="u">of {plannedRounds(result)}</span>
+            <span data-part="round" /> <span className="u">of {rounds}</span>
           </dd>
         </div>
         {(["y", "u"] as const).map((name) => (

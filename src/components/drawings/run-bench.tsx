@@ -8,6 +8,7 @@ import { useWidth } from "#src/components/plots/measure.ts";
 import { createPlotCursor, type PlotCursor, PlotCursorContext } from "#src/components/plots/plot-cursor.ts";
 import { usualSignals } from "#src/components/plots/plot-signals.ts";
 import { PlotStack, type PlotStackHandle } from "#src/components/plots/plot-stack.tsx";
+import { fileStem } from "#src/lib/download.ts";
 import { counted, msText } from "#src/lib/format.ts";
 import { CursorTable } from "./cursor-table.tsx";
 import { LimitStrip } from "./limit-strip.tsx";
@@ -15,6 +16,8 @@ import { Machine, trailText } from "./machine.tsx";
 import { PlotTools } from "./plot-tools.tsx";
 import type { ReachedShares } from "./ribbon-geometry.ts";
 import { RoundRibbon, stairsNote } from "./round-ribbon.tsx";
+import { deliveredOf } from "./slot-facts.ts";
+import { SlotTable } from "./slot-table.tsx";
 import { spentText } from "./spent.ts";
 import { tellingInstant } from "./telling-instant.ts";
 import { Transport } from "./transport.tsx";
@@ -33,7 +36,7 @@ export interface RunBenchProps {
   /** Below the values at the cursor: what else happens at that instant. */
   beside?: ReactNode;
   /** What the floods of the run came to, where floods decided. */
-  reached?: { reached: ReachedShares; rounds: number } | null;
+  reached?: { reached: ReachedShares; delivered: Readonly<Record<string, number>>; rounds: number } | null;
   stackRef?: Ref<PlotStackHandle>;
 }
 
@@ -65,6 +68,7 @@ export function RunBench({ scenario, timing, result, stale = false, cursor: give
   const [chosen, setChosen] = useState<readonly string[] | null>(null);
   const usual = useMemo(() => usualSignals(scenario, result), [scenario, result]);
   const signals = chosen ?? (narrow ? usual.slice(0, NARROW_SIGNALS) : usual);
+  const delivered = useMemo(() => reached?.delivered ?? deliveredOf(scenario, result), [reached, scenario, result]);
   const spent = useMemo(() => spentText(scenario, timing, result), [scenario, timing, result]);
   return (
     <PlotCursorContext value={given ?? own}>
@@ -89,10 +93,11 @@ export function RunBench({ scenario, timing, result, stale = false, cursor: give
             <h2>Round</h2>
             <span className="rt">{roundText(scenario, timing)}</span>
           </div>
-          <RoundRibbon timing={timing} reachedShare={reached?.reached} />
+          <RoundRibbon timing={timing} reachedShare={reached?.reached} tabled />
           <p className="note-line">
             {stairsNote(reached?.reached, reached?.rounds)} {spent}
           </p>
+          <SlotTable timing={timing} floor={scenario.floor} delivered={delivered} deliveredOver="in this run" fileStem={fileStem(scenario.name)} />
         </section>
       </div>
     </PlotCursorContext>

@@ -1,6 +1,8 @@
 /** The slot table in words and as a file. */
 import type { Slot } from "#shared/network/round.ts";
 import type { Floor } from "#shared/scenario/floor-schema.ts";
+import type { Scenario } from "#shared/scenario/schema.ts";
+import type { RunResult } from "#shared/simulation/result.ts";
 import { fixed, withUnit } from "#src/lib/format.ts";
 import { type RoundPicture, roundsText, slotName, slotsEndS } from "./ribbon-geometry.ts";
 
@@ -47,6 +49,16 @@ export function roundSum(timing: RoundPicture): string {
     ? `the round fits with ${ms(timing.reserveS)} in reserve`
     : `the round does not fit, ${ms(-timing.reserveS)} are missing; the shortest period is ${ms(Math.ceil(timing.shortestPeriodS * 1e5 - 1e-6) / 1e5)}`;
   return `${parts.join(", ")}: ${fit}`;
+}
+
+/** Delivered shares of the run, for the slots of the scenario's own loop; of a message with two slots only both together are known. */
+export function deliveredOf(scenario: Scenario, result: RunResult): Record<string, number> | undefined {
+  const [loop] = scenario.loops;
+  const known = result.figures.messages.flatMap(({ message, sent, lost }): [string, number][] => {
+    const copies = message === "measurement" ? loop.sensor.copies : loop.actuator.copies;
+    return sent > 0 && copies === 1 ? [[`${loop.id}/${message}`, 1 - lost / sent]] : [];
+  });
+  return known.length > 0 ? Object.fromEntries(known) : undefined;
 }
 
 const cell = (value: string | number): string => (/[",\n]/.test(String(value)) ? `"${String(value).replaceAll('"', '""')}"` : String(value));

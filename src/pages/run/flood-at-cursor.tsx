@@ -9,14 +9,14 @@ import type { Scenario } from "#shared/scenario/schema.ts";
 import { Hall, HallOutline, ObstacleLayer, PlanTextures } from "#src/components/plan/ground.tsx";
 import { InterfererShape, NodeShape, type NodeState, STATE_WORDS } from "#src/components/plan/marks.tsx";
 import { type PlanFrame, type Spot, toPoint, wholeView } from "#src/components/plan/plan-view.ts";
-import { ScaleBar } from "#src/components/plan/scale-bar.tsx";
 import "#src/components/plan/plan.css";
 import { useWidth } from "#src/components/plots/measure.ts";
 import { useCursorValue } from "#src/components/plots/plot-cursor.ts";
+import { niceStep } from "#src/components/plots/units.ts";
 import { PickField } from "#src/components/ui/choice.tsx";
 import { Mark } from "#src/components/ui/mark.tsx";
 import { Loading } from "#src/components/ui/states.tsx";
-import { counted } from "#src/lib/format.ts";
+import { counted, significant, withUnit } from "#src/lib/format.ts";
 import { floodSentences, floodShown, reachedBy, statesAt } from "#src/pages/floor/model/flood-view.ts";
 import { type RunShares, runShares } from "#src/pages/floor/model/run-shares.ts";
 import { useWork, type Work } from "#src/pages/floor/use-floor-work.ts";
@@ -157,10 +157,11 @@ function SmallPlan({ floor, states, atS, label }: SmallPlanProps) {
   const view = wholeView(frame, size);
   const spots = spotsAt(floor, atS);
   const at = (spot: Spot) => toPoint(view, frame, spot);
+  const bar = niceStep(60 / view.scale);
   const r = floor.nodes.length > 30 ? 4 : 6.5;
   return (
     <div ref={host}>
-      <svg width={width} height={height + 4} viewBox={`0 0 ${width} ${height + 4}`} role="img" aria-label={label} className="flood-plan">
+      <svg width={width} height={height + 22} viewBox={`0 0 ${width} ${height + 22}`} role="img" aria-label={label} className="flood-plan">
         <g
           transform={`translate(${frame.left - view.xM * view.scale} ${frame.top - view.yM * view.scale}) scale(${view.scale})`}
           className="pl-ground"
@@ -188,7 +189,11 @@ function SmallPlan({ floor, states, atS, label }: SmallPlanProps) {
             </g>
           );
         })}
-        <ScaleBar scene={{ view, frame, size, at }} />
+        <rect x={frame.left} y={height + 10} width={bar * view.scale} height="5" className="neat" />
+        <rect x={frame.left} y={height + 10} width={(bar * view.scale) / 2} height="5" className="neatf" />
+        <text x={frame.left + bar * view.scale + 7} y={height + 17} className="ax">
+          {withUnit(significant(bar, 3), "m")}
+        </text>
       </svg>
     </div>
   );

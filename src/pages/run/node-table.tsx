@@ -1,9 +1,9 @@
 import { roundsOf } from "#shared/scenario/rounds.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RunResult } from "#shared/simulation/result.ts";
-import { chargeText, lifeText, nodesOf } from "#src/components/drawings/spent.ts";
+import { lifeText, nodesOf } from "#src/components/drawings/spent.ts";
 import { Scroller } from "#src/components/ui/table.tsx";
-import { msText, percentText } from "#src/lib/format.ts";
+import { fixed, percentText, withUnit } from "#src/lib/format.ts";
 
 /** What each node's radio spent; runs that no flood decided have no such figures. */
 export function NodeTable({ scenario, result }: { scenario: Scenario; result: RunResult }) {
@@ -42,9 +42,9 @@ export function NodeTable({ scenario, result }: { scenario: Scenario; result: Ru
                 <th scope="row">
                   {node} {name}
                 </th>
-                <td className="r nw">{msText(radioOnS / rounds)}</td>
+                <td className="r nw">{withUnit(fixed((radioOnS / rounds) * 1000, 2), "ms")}</td>
                 <td className="r nw">{percentText(radioOnS / (rounds * periodS))}</td>
-                <td className="r nw">{chargeText(chargeC / rounds)}</td>
+                <td className="r nw">{withUnit(fixed((chargeC / rounds) * 1e6, 1), "µC")}</td>
                 <td className="r nw">{lifeText(batteryDays)}</td>
               </tr>
             ))}

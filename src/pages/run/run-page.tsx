@@ -167,12 +167,12 @@ function Whole({ run, scenario, record }: { run: RunDetail; scenario: Scenario; 
         <div>
           <EventList scenario={scenario} result={result} cursor={cursor} />
           <MessageTable result={result} />
-          <NodeTable scenario={scenario} result={result} />
           <DigestCheck run={run} scenario={scenario} engine={engine} />
         </div>
         <div>
           <LimitTable scenario={scenario} result={result} />
           <SignalTable scenario={scenario} result={result} />
+          <NodeTable scenario={scenario} result={result} />
         </div>
       </div>
     </>

@@ -61,11 +61,14 @@ export function useBench(
       return;
     }
     const began = performance.now();
+    // Progress comes through a channel of its own and may arrive after the answer.
+    let answered = false;
     const onProgress = (now: EngineProgress) => {
-      if (isNewest() && performance.now() - began > LONG_MS) setProgress(now);
+      if (isNewest() && !answered && performance.now() - began > LONG_MS) setProgress(now);
     };
     engine.run(scenario, seed, onProgress).then(
       (outcome) => {
+        answered = true;
         if (!isNewest()) return;
         setProgress(null);
         if (outcome.ok) setRun({ scenario, timing, result: outcome.result, elapsedMs: performance.now() - began, at: new Date() });
@@ -73,6 +76,7 @@ export function useBench(
         else setCancelled(true);
       },
       () => {
+        answered = true;
         if (!isNewest()) return;
         setProgress(null);
         setBroken(true);

@@ -1,6 +1,6 @@
 import { act, render } from "@testing-library/react";
 import { describe, expect, it } from "vitest";
-import { commandFact, measurementFact, plannedRounds, recordsOf, roundAt } from "#src/components/drawings/cursor-facts.ts";
+import { commandFact, measurementFact, recordsOf, roundAt } from "#src/components/drawings/cursor-facts.ts";
 import { CursorTable } from "#src/components/drawings/cursor-table.tsx";
 import { createPlotCursor, PlotCursorContext } from "#src/components/plots/plot-cursor.ts";
 import { type MadeRun, madeRun } from "../../helpers/made-run.ts";
@@ -46,7 +46,6 @@ describe("what became of a message", () => {
   });
   it("counts an instant on a boundary to the round that begins, and the end of the run to the last round", () => {
     expect([0, 0.025, 0.999, 1].map((timeS) => roundAt(made.result, timeS))).toEqual([0, 1, 39, 39]);
-    expect(plannedRounds(madeRun({ endedAtS: 4.3, ended: "diverged" }).result)).toBe(400);
   });
 });
 

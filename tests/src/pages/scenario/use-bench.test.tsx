@@ -64,6 +64,17 @@ describe("the live bench", () => {
     expect([result.current.cancelled, result.current.progress]).toEqual([true, null]);
   });
 
+  it("does not go back to running when word of progress comes after the answer", async () => {
+    vi.useFakeTimers({ toFake: ["performance"] });
+    const engine = slowEngine();
+    const { result } = open(engine);
+    vi.advanceTimersByTime(1000);
+    await act(async () => engine.calls[0].answer(simulate(SHORT)));
+    act(() => engine.calls[0].tell({ round: 40, rounds: 80 }));
+    expect(result.current.progress).toBeNull();
+    expect(massOf(result.current)).toBe(1.2);
+  });
+
   it("hands on why the engine refused, and can be asked again after it broke", async () => {
     const engine = slowEngine();
     const { result } = open(engine);
