@@ -1,6 +1,9 @@
 /** Every page, in both themes, on a wall of pixels and on a small phone: accessible, nothing cut off, reachable by keys. */
 import axe from "axe-core";
 import type { Page } from "playwright-core";
+import type { Scenario } from "#shared/scenario/schema.ts";
+import { exampleFloor } from "#src/pages/floor/model/example-floor.ts";
+import { newBlock, newInterferer, newWall } from "#src/pages/floor/model/floor-edits.ts";
 import { keepRun, makeScenario, pendulum, saveRevision } from "./api.ts";
 import { expect, type Holdfast, test, type Visit } from "./app.ts";
 
@@ -11,17 +14,31 @@ interface Stop {
   ready: RegExp;
 }
 
+/** A hall with everything that a floor may have on it. */
+function onFloor(): Scenario {
+  const laid = exampleFloor({ ...pendulum(), name: "A hall for every page" }, "Hall 2", 60, 32);
+  const { floor } = laid;
+  if (!floor) throw new Error("The example has a floor.");
+  const nodes = floor.nodes.map((node, i) => (i === 4 ? { ...node, wayPoints: [{ atS: 20, xM: 30, yM: 20 }] } : node));
+  const obstacles = [newWall(20, 0, 20, 12), newBlock(30, 8, 42, 10)];
+  const interferers = [newInterferer(44, 6, 2462, 20, "Dryer")];
+  return { ...laid, floor: { ...floor, nodes, obstacles, interferers }, losses: { ...laid.losses, process: { type: "flood" } } };
+}
+
 /** A scenario with two revisions and a run, and all pages that show it. */
 async function stops(visit: Visit): Promise<Stop[]> {
   const made = await makeScenario(visit, { ...pendulum(), name: "For every page" });
   const saved = await saveRevision(visit, made.id, 1, { ...made.latest.scenario, description: "Changed once." });
   const run = await keepRun(visit, saved, 3);
+  const hall = await makeScenario(visit, onFloor());
   const team = `/teams/${visit.team.id}`;
   return [
     { name: "scenarios", path: `${team}/scenarios`, ready: /of the team/ },
     { name: "no scenario found", path: `${team}/scenarios?search=nothing-of-this-name`, ready: /nothing-of-this-name/ },
     { name: "scenario", path: `${team}/scenarios/${made.id}`, ready: /run in/ },
     { name: "old revision", path: `${team}/scenarios/${made.id}?revision=1`, ready: /Revision 1/ },
+    { name: "no floor", path: `${team}/scenarios/${made.id}/floor`, ready: /No floor yet|This flood/ },
+    { name: "floor", path: `${team}/scenarios/${hall.id}/floor`, ready: /Delivered to|Lost at/ },
     { name: "revisions", path: `${team}/scenarios/${made.id}/revisions`, ready: /Saved for a test/ },
     { name: "runs", path: `${team}/scenarios/${made.id}/runs`, ready: /1 run|seed/i },
     { name: "run", path: `${team}/runs/${run.id}`, ready: /bit for bit/ },

@@ -33,7 +33,7 @@ describe("the view of a plan", () => {
 
   it("snaps places to 0.1 m inside of the plan", () => {
     expect(snapped({ xM: 12.3456, yM: -3 }, size)).toEqual({ xM: 12.3, yM: 0 });
-    expect(snapped({ xM: 100, yM: 39.99 }, { widthM: 72.05, depthM: 40 })).toEqual({ xM: 72.05, yM: 40 });
+    expect(snapped({ xM: 100, yM: 39.99 }, { widthM: 72.08, depthM: 40 })).toEqual({ xM: 72.08, yM: 40 });
   });
 
   it("puts no label over a mark or another label, and leaves out what has no room", () => {

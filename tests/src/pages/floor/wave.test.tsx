@@ -80,7 +80,7 @@ describe("the wave on the plan", () => {
     fireEvent.change(area, { target: { value: "node\t1\t2\t3\t4\n1\t\t90%\t0\t0\n2\t90\t\t100\t0\n3\t0\t100\t\t100\n4\t0\t0\t100\t" } });
     expect((floor().links as { prr: number[][] }).prr[1]).toEqual([0.9, 0, 1, 0]);
     fireEvent.change(area, { target: { value: "0 1 0 0\n1 0 x 0\n0 1 0 1\n0 0 1 0" } });
-    expect(await screen.findByText(/Row 2, column 3: “x” is no number/)).toBeDefined();
+    expect((await screen.findAllByText(/Row 2, column 3: “x” is no number/)).length).toBeGreaterThan(0);
     expect((area as unknown as HTMLTextAreaElement).value).toContain("1 0 x 0");
     expect((floor().links as { prr: number[][] }).prr[1]).toEqual([0.9, 0, 1, 0]);
   });
