@@ -27,6 +27,7 @@ import type { Role } from "#shared/api/permissions.ts";
 import type { PictureType } from "#shared/api/pictures.ts";
 import type { PlantKind, RoundSummary } from "#shared/api/scenarios.ts";
 import type { ActivityKind } from "#shared/api/teams.ts";
+import type { LogSummary } from "#shared/reception/log-summary.ts";
 import type { ColumnMapping, LinkTrace, ReadReport } from "#shared/reception/types.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { Figures, LimitVerdict, RunEvent, RunResult } from "#shared/simulation/result.ts";
@@ -203,6 +204,9 @@ export const receptionLogs = pgTable(
     links: integer().notNull(),
     packets: bigint({ mode: "number" }).notNull(),
     lost: bigint({ mode: "number" }).notNull(),
+    intervalS: doublePrecision(),
+    /** null: read before the verdicts were summed up. */
+    verdicts: json().$type<LogSummary["verdicts"]>(),
     uploadedAt: now(),
   },
   (table) => [

@@ -14,6 +14,7 @@
  * live in browsers and are not known to the server).
  */
 import { z } from "zod";
+import { INDEPENDENCE_VERDICTS } from "#shared/reception/independence.ts";
 import { type ColumnMapping, columnMappingSchema, linkTraceSchema, readReportSchema } from "#shared/reception/types.ts";
 import { pageOf, pageQuery, personSchema, useSchema } from "./common.ts";
 
@@ -40,6 +41,10 @@ export const logItemSchema = z.strictObject({
   links: z.int().positive(),
   packets: z.int().nonnegative(),
   lost: z.int().nonnegative(),
+  /** Median interval of the links; null: no column tells the time. */
+  intervalS: z.number().positive().nullable(),
+  /** How many links the tests of independence gave each verdict; null: read before this was summed up. */
+  verdicts: z.partialRecord(z.enum(INDEPENDENCE_VERDICTS), z.int().positive()).nullable(),
   /** Scenarios with a revision that names it; 0: it can be deleted. */
   scenarios: z.int().nonnegative(),
   /** Whoever asks may rename it, and delete it once it is unused. */

@@ -35,7 +35,8 @@ export interface TransitionTest {
   smallestExpected: number;
 }
 
-export type IndependenceVerdict = "nothing-lost" | "all-lost" | "too-few" | "independent" | "bursts" | "apart" | "rhythm";
+export const INDEPENDENCE_VERDICTS = ["nothing-lost", "all-lost", "too-few", "independent", "bursts", "apart", "rhythm"] as const;
+export type IndependenceVerdict = (typeof INDEPENDENCE_VERDICTS)[number];
 
 export interface IndependenceTest {
   packets: number;

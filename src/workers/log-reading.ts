@@ -47,16 +47,28 @@ async function openBytes(file: Blob, onBytes: (bytes: number) => void): Promise<
   return counted.pipeThrough(new DecompressionStream("gzip") as unknown as ReadableWritablePair<Uint8Array, Uint8Array>);
 }
 
+/** Text as spreadsheets write it: UTF-8, or UTF-16 when its mark says so; as the server takes it. */
+function decoderFor([first, second]: Uint8Array): TextDecoder {
+  if (first === 0xff && second === 0xfe) return new TextDecoder("utf-16le");
+  if (first === 0xfe && second === 0xff) return new TextDecoder("utf-16be");
+  return new TextDecoder();
+}
+
+/** What spreadsheets save by themselves is a ZIP file. */
+const isZip = (bytes: Uint8Array): boolean => [0x50, 0x4b, 0x03, 0x04].every((byte, i) => bytes[i] === byte);
+
 /** The beginning of the file as text. */
 async function sampleOf(file: Blob): Promise<string> {
   const reader = (await openBytes(file, () => {})).getReader();
-  const decoder = new TextDecoder();
+  let decoder: TextDecoder | null = null;
   let text = "";
   let bytes = 0;
   while (bytes < SAMPLE_BYTES) {
     const { done, value } = await reader.read();
     if (done) break;
     bytes += value.byteLength;
+    if (!decoder && isZip(value)) throw new Error("It is a ZIP file or a spreadsheet. Save the table as CSV and choose that.");
+    decoder ??= decoderFor(value);
     text += decoder.decode(value, { stream: true });
   }
   void reader.cancel().catch(() => {});
@@ -79,7 +91,7 @@ export async function previewFile(file: Blob, split: ColumnMapping["delimiter"] 
   try {
     if (file.size === 0) return { ok: false, message: "It is empty." };
     const text = await sampleOf(file);
-    if (text.includes("\0")) return { ok: false, message: "It is not a text in UTF-8: it holds zero bytes. Export it as CSV in UTF-8." };
+    if (text.includes("\0")) return { ok: false, message: "It is not a text: it holds zero bytes. Export it as CSV in UTF-8." };
     const seen = previewLog(text, SAMPLE_ROWS);
     const delimiter = split ?? seen.delimiter;
     const rows = numberedRows(text, delimiter);
@@ -107,7 +119,7 @@ export async function readFile(file: Blob, mapping: ColumnMapping, { wanted, tel
   try {
     const bytes = await openBytes(file, (taken) => tell({ bytes: taken, ofBytes: file.size }));
     const reader = bytes.getReader();
-    const decoder = new TextDecoder();
+    let decoder: TextDecoder | null = null;
     const log = logReader(mapping);
     for (;;) {
       const { done, value } = await reader.read();
@@ -116,9 +128,10 @@ export async function readFile(file: Blob, mapping: ColumnMapping, { wanted, tel
         return CANCELLED;
       }
       if (done) break;
+      decoder ??= decoderFor(value);
       log.push(decoder.decode(value, { stream: true }));
     }
-    log.push(decoder.decode());
+    log.push(decoder?.decode() ?? "");
     const outcome = log.finish();
     if (!outcome.ok) return { ok: false, message: outcome.issues.map(({ message }) => message).join(" ") };
     const links = outcome.value.links.map(({ runs: _runs, hours: _hours, ...summary }): LinkSummary => summary);

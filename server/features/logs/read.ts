@@ -5,6 +5,7 @@ import { Readable } from "node:stream";
 import { createGunzip, createGzip } from "node:zlib";
 import { MAX_LOG_BYTES } from "#shared/api/logs.ts";
 import { logReader } from "#shared/reception/log-reader.ts";
+import { type LogSummary, summariseLog } from "#shared/reception/log-summary.ts";
 import type { ColumnMapping } from "#shared/reception/types.ts";
 import type { Issue } from "#shared/scenario/issues.ts";
 import { inMb } from "../../http/file.ts";
@@ -26,6 +27,8 @@ export interface ReadLog {
   links: number;
   packets: number;
   lost: number;
+  intervalS: LogSummary["intervalS"];
+  verdicts: LogSummary["verdicts"];
   /** JSON, made here so that nobody else has to. */
   report: string;
   linkTraces: string;
@@ -170,6 +173,7 @@ export async function readLog(source: AsyncIterable<Uint8Array>, mapping: Column
       links: links.length,
       packets: sum((link) => link.packets),
       lost: sum((link) => link.lost),
+      ...summariseLog(links),
       report: JSON.stringify(report),
       linkTraces: JSON.stringify(links),
       pieces: await pack.end(),

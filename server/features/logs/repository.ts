@@ -21,6 +21,8 @@ const columns = {
   links: receptionLogs.links,
   packets: receptionLogs.packets,
   lost: receptionLogs.lost,
+  intervalS: receptionLogs.intervalS,
+  verdicts: receptionLogs.verdicts,
   scenarios: used,
 };
 

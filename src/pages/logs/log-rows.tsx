@@ -1,14 +1,16 @@
 import { Link } from "react-router-dom";
 import { LOG_SORTS, type LogItem, type LogListQuery, type LogSort } from "#shared/api/logs.ts";
-import { counted, countText } from "#shared/reception/words.ts";
+import { counted, countText, durationText } from "#shared/reception/words.ts";
 import { paths } from "#src/app/paths.ts";
 import { Icon } from "#src/components/ui/icon.tsx";
+import { Mark } from "#src/components/ui/mark.tsx";
 import { Menu, MenuChoices, MenuRule } from "#src/components/ui/menu.tsx";
 import { SortHead, type Sorting } from "#src/components/ui/table.tsx";
 import { bytesText, instantText, whenText } from "#src/lib/format.ts";
 import { useNow } from "#src/lib/use-now.ts";
 import type { ChangeLogList } from "./list-state.ts";
 import { lossText } from "./model/log-words.ts";
+import { shortVerdict } from "./model/verdict.ts";
 
 interface LogRowsProps {
   teamId: string;
@@ -20,8 +22,20 @@ interface LogRowsProps {
 }
 
 const lossOf = ({ lost, packets }: LogItem): string => (packets > 0 ? lossText(lost / packets) : "none");
+const paceText = ({ intervalS }: LogItem): string => (intervalS === null ? "not known" : durationText(intervalS));
 const usedText = ({ scenarios }: LogItem): string => (scenarios === 0 ? "not used" : `in ${counted(scenarios, "scenario")}`);
 const troubleText = ({ troubles }: LogItem): string => (troubles === 0 ? "read without a remark" : counted(troubles, "remark"));
+
+function LossVerdict({ item }: { item: LogItem }) {
+  const verdict = shortVerdict(item);
+  if (!verdict) return <span className="muted">open it to see</span>;
+  return (
+    <span className="vd">
+      <Mark state={verdict.state} quiet />
+      <span>{verdict.words}</span>
+    </span>
+  );
+}
 
 export function LogTable({ teamId, items, query, change, waiting }: LogRowsProps) {
   const now = useNow();
@@ -44,6 +58,10 @@ export function LogTable({ teamId, items, query, change, waiting }: LogRowsProps
             <SortHead sortKey="loss" right first="descending" {...head}>
               Lost
             </SortHead>
+            <th scope="col" className="r">
+              Packet each
+            </th>
+            <th scope="col">Losses</th>
             <th scope="col">Reading</th>
             <SortHead sortKey="used" first="descending" {...head}>
               Used
@@ -71,6 +89,10 @@ export function LogTable({ teamId, items, query, change, waiting }: LogRowsProps
               <td className="r">{countText(item.links)}</td>
               <td className="r nw">{countText(item.packets)}</td>
               <td className="r nw strong text-body">{lossOf(item)}</td>
+              <td className="r nw">{paceText(item)}</td>
+              <td>
+                <LossVerdict item={item} />
+              </td>
               <td className="nw">{troubleText(item)}</td>
               <td className="nw">{item.scenarios === 0 ? <span className="muted">not used</span> : usedText(item)}</td>
               <td className="nw">{item.author.name}</td>
@@ -129,7 +151,11 @@ export function LogCards({ teamId, items, query, change, waiting }: LogRowsProps
               {item.name}
             </Link>
             <p className="small">
-              <b className="strong">{lossOf(item)}</b> of {countText(item.packets)} packets lost, {counted(item.links, "link")}
+              <b className="strong">{lossOf(item)}</b> of {countText(item.packets)} packets lost, {counted(item.links, "link")}, one packet each{" "}
+              {paceText(item)}
+            </p>
+            <p className="small">
+              <LossVerdict item={item} />
             </p>
             <p className="note second">
               {troubleText(item)} · {usedText(item)}

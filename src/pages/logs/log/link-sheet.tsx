@@ -1,10 +1,10 @@
 import { useMemo } from "react";
-import type { IndependenceVerdict } from "#shared/reception/independence.ts";
 import type { LinkTrace } from "#shared/reception/types.ts";
 import { verdictWords } from "#shared/reception/verdict-words.ts";
-import { type MarkState, VerdictLine } from "#src/components/ui/mark.tsx";
+import { VerdictLine } from "#src/components/ui/mark.tsx";
 import { indexRuns } from "../model/run-index.ts";
 import { studyLink } from "../model/study.ts";
+import { VERDICT_MARKS } from "../model/verdict.ts";
 import { CorrelationPlot } from "../pictures/correlation-plot.tsx";
 import { LossPicture } from "../pictures/loss-picture.tsx";
 import { StreakPlot } from "../pictures/streak-plot.tsx";
@@ -13,27 +13,16 @@ import { MeasurePart } from "./measure-part.tsx";
 import { RoundPart } from "./round-part.tsx";
 import { TestTable } from "./test-table.tsx";
 
-/** Independence is an assumption: kept, crossed, or not decided. */
-const MARKS: Record<IndependenceVerdict, MarkState> = {
-  "nothing-lost": "not-decided",
-  "all-lost": "not-decided",
-  "too-few": "not-decided",
-  independent: "holds",
-  bursts: "crosses",
-  apart: "crosses",
-  rhythm: "crosses",
-};
-
 /** Everything that is known of one link: verdict, figures, pictures, tests. */
 export function LinkSheet({ link, name }: { link: LinkTrace; name: string }) {
   const index = useMemo(() => indexRuns(link.runs), [link]);
   const { fit, independence } = useMemo(() => studyLink(link), [link]);
   const { headline, sentences } = useMemo(() => verdictWords({ trace: link, fit, test: independence }), [link, fit, independence]);
-  const decided = MARKS[independence.verdict] !== "not-decided";
+  const decided = VERDICT_MARKS[independence.verdict] !== "not-decided";
   return (
     <section className="sheet doc pad lg-sheet" aria-label={`Link ${name}`}>
       <div>
-        <VerdictLine state={MARKS[independence.verdict]} word={headline} sentence="" meta={`link ${name}`} />
+        <VerdictLine state={VERDICT_MARKS[independence.verdict]} word={headline} sentence="" meta={`link ${name}`} />
         <div className="lg-top">
           <div className="lg-more">
             {sentences.map((sentence) => (

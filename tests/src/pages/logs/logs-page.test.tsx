@@ -26,10 +26,12 @@ describe("the reception logs of a team", () => {
     const row = await screen.findByRole("row", { name: /Line west/ });
     expect(within(row).getByRole("link").getAttribute("href")).toBe(`/teams/${TEAM.id}/logs/${item.id}`);
     const cells = within(row).getAllByRole("cell");
-    expect(cells.slice(1, 7).map(({ textContent }) => textContent)).toEqual([
+    expect(cells.slice(1, 9).map(({ textContent }) => textContent)).toEqual([
       "2",
       "800",
       "8.75\u2009\u2060%",
+      "20\u2009\u2060ms",
+      "in bursts on 1 of 2 links",
       "read without a remark",
       "in 2 scenarios",
       "R. Fennick",

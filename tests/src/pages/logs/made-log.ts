@@ -1,6 +1,7 @@
 /** Reception logs as the server would describe them, read from texts by the engine itself. */
 import type { LogDetail, LogItem, LogListResponse } from "#shared/api/logs.ts";
 import { logReader } from "#shared/reception/log-reader.ts";
+import { summariseLog } from "#shared/reception/log-summary.ts";
 import { type ColumnMapping, columnMappingSchema, TROUBLE_KINDS } from "#shared/reception/types.ts";
 import { FENNICK } from "../../helpers/team-data.ts";
 
@@ -42,6 +43,7 @@ export function logOf(text: string, mapping: ColumnMapping = MAPPING, about: Par
     links: links.length,
     packets: links.reduce((sum, { packets }) => sum + packets, 0),
     lost: links.reduce((sum, { lost }) => sum + lost, 0),
+    ...summariseLog(links),
     scenarios: 0,
     mayEdit: true,
     mapping,
