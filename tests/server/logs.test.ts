@@ -363,8 +363,12 @@ describe("a reception log that a scenario names", () => {
     const log = await uploaded(csvText(6, 64));
     await createScenario(harness, scenarioNamed("Guarded", replaying(log)));
     await expect(pool.query("delete from reception_logs where id = $1", [log.id])).rejects.toThrow("revision_logs_keep_log");
-    for (const column of ["sha256", "lost", "mapping"]) {
-      await expect(pool.query(`update reception_logs set ${column} = ${column}`)).rejects.toThrow("never changes");
+    const { rows } = await pool.query("select column_name from information_schema.columns where table_name = 'reception_logs'");
+    const free = ["name", "sort_key", "search_text"];
+    const fixed = rows.map(({ column_name }) => column_name as string).filter((column) => !free.includes(column));
+    expect(fixed.length).toBeGreaterThan(10);
+    for (const column of fixed) {
+      await expect(pool.query(`update reception_logs set ${column} = ${column}`), column).rejects.toThrow("never changes");
     }
     for (const [table, column] of [
       ["log_pieces", "bytes"],
