@@ -8,7 +8,6 @@ import { useWidth } from "#src/components/plots/measure.ts";
 import { createPlotCursor, type PlotCursor, PlotCursorContext } from "#src/components/plots/plot-cursor.ts";
 import { usualSignals } from "#src/components/plots/plot-signals.ts";
 import { PlotStack, type PlotStackHandle } from "#src/components/plots/plot-stack.tsx";
-import { fileStem } from "#src/lib/download.ts";
 import { counted, msText } from "#src/lib/format.ts";
 import { CursorTable } from "./cursor-table.tsx";
 import { LimitStrip } from "./limit-strip.tsx";
@@ -97,7 +96,7 @@ export function RunBench({ scenario, timing, result, stale = false, cursor: give
           <p className="note-line">
             {stairsNote(reached?.reached, reached?.rounds)} {spent}
           </p>
-          <SlotTable timing={timing} floor={scenario.floor} delivered={delivered} deliveredOver="in this run" fileStem={fileStem(scenario.name)} />
+          <SlotTable timing={timing} floor={scenario.floor} delivered={delivered} deliveredOver="in this run" fileStem={scenario.name} />
         </section>
       </div>
     </PlotCursorContext>

@@ -3,7 +3,7 @@ import type { Slot } from "#shared/network/round.ts";
 import type { Floor } from "#shared/scenario/floor-schema.ts";
 import { Button } from "#src/components/ui/button.tsx";
 import { Scroller } from "#src/components/ui/table.tsx";
-import { download } from "#src/lib/download.ts";
+import { download, fileStem } from "#src/lib/download.ts";
 import { fixed, withUnit } from "#src/lib/format.ts";
 import { useMedia } from "#src/lib/use-media.ts";
 import type { RoundPicture } from "./ribbon-geometry.ts";
@@ -20,7 +20,7 @@ export interface SlotTableProps {
   /** Id of the slot that is looked at. */
   selected?: string | null;
   onSelect?: (slotId: string) => void;
-  /** Name of the file, without its ending. */
+  /** What the file is named after. */
   fileStem?: string;
 }
 
@@ -31,9 +31,9 @@ const label = ({ label: words, copy }: Slot) => (copy > 1 ? `${words}, second sl
 
 /** Every slot of the round with its message, instants and costs; a row may be chosen. */
 export function SlotTable(props: SlotTableProps) {
-  const { timing, floor, delivered, deliveredOver, fileStem = "round" } = props;
+  const { timing, floor, delivered, deliveredOver, fileStem: stem = "round" } = props;
   const phone = useMedia("(max-width: 719px)");
-  const file = () => download(`${fileStem}-slots.csv`, slotsCsv(timing, floor, delivered), "text/csv;charset=utf-8");
+  const file = () => download(`${fileStem(stem)}-slots.csv`, slotsCsv(timing, floor, delivered), "text/csv;charset=utf-8");
   return (
     <div className="slot-table">
       {timing.slots.length === 0 ? <p className="second">The round has no slots.</p> : phone ? <Cards {...props} /> : <Wide {...props} />}
@@ -52,7 +52,7 @@ function Wide({ timing, floor, delivered, selected, onSelect }: SlotTableProps) 
   const several = timing.loops.length > 1;
   const placed = timing.slots.some(({ from }) => from !== null) || Boolean(floor);
   const rhythm = timing.slots.some(({ everyRounds }) => everyRounds > 1);
-  const before = 2 + Number(several) + (placed ? 2 : 1) + Number(rhythm) + 5;
+  const before = 2 + (placed ? 2 : 1) + Number(rhythm) + 5;
   return (
     <Scroller label="Table of the slots">
       <table className="t">
@@ -62,7 +62,6 @@ function Wide({ timing, floor, delivered, selected, onSelect }: SlotTableProps) 
               #
             </th>
             <th scope="col">Message</th>
-            {several && <th scope="col">Loop</th>}
             {placed && <th scope="col">From</th>}
             <th scope="col">Needed by</th>
             {rhythm && <th scope="col">Rounds</th>}
@@ -103,8 +102,8 @@ function Wide({ timing, floor, delivered, selected, onSelect }: SlotTableProps) 
                 ) : (
                   label(slot)
                 )}
+                {several && slot.loop && <span className="pl">{timing.loops.find(({ loop }) => loop === slot.loop)?.name}</span>}
               </th>
-              {several && <td>{timing.loops.find(({ loop }) => loop === slot.loop)?.name ?? <span className="muted">none</span>}</td>}
               {placed && <td className="nw">{nodeText(floor, slot.from)}</td>}
               <td>{neededByText(floor, slot.to)}</td>
               {rhythm && <td className="nw">{roundsWord(slot)}</td>}
@@ -121,7 +120,7 @@ function Wide({ timing, floor, delivered, selected, onSelect }: SlotTableProps) 
         <tfoot>
           <tr>
             <td />
-            <td colSpan={before - 2}>{roundSum(timing)}</td>
+            <td colSpan={before - 1}>{roundSum(timing)}</td>
             <td className="r">{ms(occupiedS(timing))}</td>
             {delivered && <td />}
           </tr>

@@ -24,6 +24,7 @@ import { counted, fixed } from "#src/lib/format.ts";
 import type { Bench } from "#src/pages/scenario/bench/use-bench.ts";
 import { describeLosses } from "#src/pages/scenario/model/describe.ts";
 import { getAt, parsePath, setAt } from "#src/pages/scenario/model/json-path.ts";
+import { PlacementsDialog } from "#src/pages/scenario/placements/placements-dialog.tsx";
 import { revealField } from "#src/pages/scenario/reveal.ts";
 import { useForm } from "#src/pages/scenario/setup/form.tsx";
 import type { EngineClient } from "#src/workers/pool.ts";
@@ -183,6 +184,7 @@ function FloorStudio({
   // ---- the survey
   const surveyed = useSurvey(engine, prepared.ok ? prepared.scenario : null, seed, scenarioId);
   const [onPlan, setOnPlan] = useState(true);
+  const [comparing, setComparing] = useState(false);
   const marks = useMemo(() => {
     const { survey, stale } = surveyed;
     const of = survey?.slots.find(({ id }) => id === slot?.id);
@@ -392,7 +394,13 @@ function FloorStudio({
           <div className="pad">
             <div className="hrow">
               <h2>Round</h2>
-              <span className="rt">Choose a slot to see its flood on the plan</span>
+              <span className="rt">
+                Choose a slot to see its flood on the plan{" "}
+                <Button small onClick={() => setComparing(true)}>
+                  Compare placements
+                </Button>
+              </span>
+              {comparing && <PlacementsDialog seed={otherSeed} onClose={() => setComparing(false)} />}
             </div>
             <RoundRibbon timing={timing} reachedShare={shares?.reached} selected={slot?.id} onSelect={setSlotId} tabled />
             <SlotTable

@@ -2,7 +2,7 @@ import { useState } from "react";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Saving } from "#shared/network/savings.ts";
 import type { RoundSettings } from "#shared/scenario/round-schema.ts";
-import { RoundRibbon } from "#src/components/drawings/round-ribbon.tsx";
+import { RoundRibbon, stairsNote } from "#src/components/drawings/round-ribbon.tsx";
 import { Button } from "#src/components/ui/button.tsx";
 import { counted, msText } from "#src/lib/format.ts";
 import { BEACON_MISSED, PHY, RELAY, wordOf } from "../model/choices.ts";
@@ -35,6 +35,7 @@ export function RoundSection({ timing }: { timing: RoundTiming | null }) {
       {timing && (
         <div className="su-ribbon">
           <RoundRibbon timing={timing} />
+          <p className="note muted">{stairsNote(undefined)}</p>
           {timing.fits && (
             <p className="note second">
               Reserve {msText(timing.reserveS)}; the shortest period is {msText(timing.shortestPeriodS, 5)}.

@@ -41,6 +41,10 @@ describe("the table of slots", () => {
     const sum = plain(roundSum(timing));
     expect(sum).toMatch(/^Slots \d+\.\d\d ms, compute 1\.50 ms, guard 0\.00 ms: the round fits with \d+\.\d\d ms in reserve$/);
     expect(rows.at(-1)).toContain(sum);
+    const spans = [...document.querySelectorAll("tfoot td")].map((cell) => (cell as HTMLTableCellElement).colSpan);
+    const heads = screen.getAllByRole("columnheader").map(({ textContent }) => textContent);
+    expect(spans.reduce((total, span) => total + span, 0)).toBe(heads.length);
+    expect(heads[spans[0] + spans[1]]).toBe("Slot, ms");
   });
 
   it("accounts for every part of the period, also where slots share a place", () => {
