@@ -1,5 +1,6 @@
 /** Set-up of a test by way of the API, where the page's own way is not what is tested. */
 import type { BrowserContext } from "playwright-core";
+import type { LogListResponse } from "#shared/api/logs.ts";
 import type { RunDetail } from "#shared/api/runs.ts";
 import type { ScenarioResponse } from "#shared/api/scenarios.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
@@ -33,4 +34,12 @@ export async function readScenario({ context, team }: Visit, id: string): Promis
   const answer = await context.request.get(`/api/teams/${team.id}/scenarios/${id}`);
   expect(answer.status()).toBe(200);
   return answer.json();
+}
+
+/** Of the logs that came with the demo team. */
+export async function anyLog({ context, team }: Visit): Promise<string> {
+  const answer = await context.request.get(`/api/teams/${team.id}/logs`);
+  const { items } = (await answer.json()) as LogListResponse;
+  if (!items[0]) throw new Error("The demo team has no reception log.");
+  return items[0].id;
 }

@@ -4,7 +4,7 @@ import type { Page } from "playwright-core";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { exampleFloor } from "#src/pages/floor/model/example-floor.ts";
 import { newBlock, newInterferer, newWall } from "#src/pages/floor/model/floor-edits.ts";
-import { keepRun, makeScenario, pendulum, saveRevision } from "./api.ts";
+import { anyLog, keepRun, makeScenario, pendulum, saveRevision } from "./api.ts";
 import { expect, type Holdfast, test, type Visit } from "./app.ts";
 
 interface Stop {
@@ -42,6 +42,10 @@ async function stops(visit: Visit): Promise<Stop[]> {
     { name: "revisions", path: `${team}/scenarios/${made.id}/revisions`, ready: /Saved for a test/ },
     { name: "runs", path: `${team}/scenarios/${made.id}/runs`, ready: /1 run|seed/i },
     { name: "run", path: `${team}/runs/${run.id}`, ready: /bit for bit/ },
+    { name: "reception logs", path: `${team}/logs`, ready: /Hall 2, quiet shift/ },
+    { name: "no log found", path: `${team}/logs?search=nothing-of-this-name`, ready: /nothing-of-this-name/ },
+    { name: "upload a log", path: `${team}/logs/new`, ready: /or drop it here/ },
+    { name: "log", path: `${team}/logs/${await anyLog(visit)}`, ready: /How long must I measure/ },
     { name: "team", path: `${team}/members`, ready: /Tove Saltby/ },
     { name: "account", path: "/account", ready: /rowan\.fennick@/ },
     { name: "methods", path: "/methods", ready: /Methods/ },
