@@ -2,6 +2,7 @@ import { act, screen, within } from "@testing-library/react";
 import { beforeEach, describe, expect, it, vi } from "vitest";
 import { type RunDetail, runDetailSchema } from "#shared/api/runs.ts";
 import { encodeSeries, SERIES_CONTENT_TYPE } from "#shared/api/series.ts";
+import { scenarioSchema } from "#shared/scenario/schema.ts";
 import { ENGINE_VERSION } from "#shared/simulation/version.ts";
 import { fakeServer, json, noAnswer, refusal } from "../../helpers/fake-server.ts";
 import { madeRun } from "../../helpers/made-run.ts";
@@ -122,6 +123,35 @@ describe("the page of a run", () => {
     ]);
     expect(saved.filter(({ name }) => name === "blob").every(({ size }) => size > 1000)).toBe(true);
     vi.restoreAllMocks();
+  });
+  it("offers what is zoomed to as a file only while something is zoomed to", async () => {
+    answer();
+    const { user } = open();
+    await user.click(await screen.findByRole("button", { name: "Export" }));
+    expect(await screen.findByRole("menuitem", { name: /^Series, all/ })).toBeDefined();
+    expect(screen.queryByRole("menuitem", { name: /zoomed/ })).toBeNull();
+    await user.keyboard("{Escape}");
+    await user.click(screen.getByRole("button", { name: "Zoom in around the cursor" }));
+    await user.click(screen.getByRole("button", { name: "Export" }));
+    expect(await screen.findByRole("menuitem", { name: /zoomed/ })).toBeDefined();
+  });
+  it("does not draw floods that another engine drew, and says so", async () => {
+    answer();
+    const nodes = [1, 2, 3].map((id) => ({ id, xM: 5 * id, yM: 5 }));
+    const [loop] = scenario.loops;
+    const onFloor = scenarioSchema.parse({
+      ...scenario,
+      floor: { widthM: 40, depthM: 20, nodes },
+      loops: [{ ...loop, nodes: { sensor: 1, controller: 3, actuator: 2 } }],
+      losses: { ...scenario.losses, process: { type: "flood" } },
+    });
+    server.on(`GET ${base}/runs/${RUN_ID}`, () => json({ ...run, engine: "0.9.0" }));
+    server.on(`GET ${base}/scenarios/${SCENARIO_ID}/revisions/3`, () =>
+      json({ number: 3, name: "Balancer rig 1", note: "", author: FENNICK, savedAt: run.createdAt, verdict: run.verdict, scenario: onFloor }),
+    );
+    open();
+    expect(await screen.findByText(/The floods of this run were drawn by engine 0\.9\.0/)).toBeDefined();
+    expect(screen.queryByRole("region", { name: "Flood at the cursor" })).toBeNull();
   });
   it("tells that only one point in two of a long run is drawn", async () => {
     answer(encodeSeries(result, 2500).bytes);
