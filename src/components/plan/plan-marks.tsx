@@ -161,31 +161,33 @@ const GLYPH_PX = 11;
 
 const Mark = memo(function Mark({ thing, words, selected, x, y, onKey, onFocus, text, dx, dy, anchor, state, weak, number, glyphs }: MarkProps) {
   return (
-    // biome-ignore lint/a11y/useSemanticElements: a mark of an SVG picture cannot be a button element
-    <g
-      role="button"
-      tabIndex={0}
-      aria-label={words}
-      aria-pressed={selected}
-      data-thing={thing}
-      className="pl-node"
-      transform={`translate(${x.toFixed(1)} ${y.toFixed(1)})`}
-      onKeyDown={(event) => onKey(thing, event)}
-      onFocus={() => onFocus(thing)}
-    >
-      <circle r="16" className="pl-tap" />
-      {selected && <circle r="17" className="pl-sel" />}
-      <circle r="15" className="pl-hover" />
-      <circle r={selected ? 21 : 17} className="pl-focus" />
-      {weak && <circle r="14" className="pl-weak" />}
-      {state ? <NodeShape state={state} label={number} /> : <InterfererShape />}
-      {glyphs && <Glyphs names={glyphs.split(" ") as Glyph[]} />}
+    <>
+      {/* biome-ignore lint/a11y/useSemanticElements: a mark of an SVG picture cannot be a button element */}
+      <g
+        role="button"
+        tabIndex={0}
+        aria-label={words}
+        aria-pressed={selected}
+        data-thing={thing}
+        className="pl-node"
+        transform={`translate(${x.toFixed(1)} ${y.toFixed(1)})`}
+        onKeyDown={(event) => onKey(thing, event)}
+        onFocus={() => onFocus(thing)}
+      >
+        <circle r="16" className="pl-tap" />
+        {selected && <circle r="17" className="pl-sel" />}
+        <circle r="15" className="pl-hover" />
+        <circle r={selected ? 21 : 17} className="pl-focus" />
+        {weak && <circle r="14" className="pl-weak" />}
+        {state ? <NodeShape state={state} label={number} /> : <InterfererShape />}
+        {glyphs && <Glyphs names={glyphs.split(" ") as Glyph[]} />}
+      </g>
       {text && (
-        <text x={dx} y={dy} textAnchor={anchor} className="pl-name halo2" {...HIDDEN}>
+        <text x={x + (dx ?? 0)} y={y + (dy ?? 0)} textAnchor={anchor} className="pl-name halo2" {...HIDDEN}>
           {text}
         </text>
       )}
-    </g>
+    </>
   );
 });
 
