@@ -6,6 +6,8 @@ export class WorkerBroken extends Error {
 export interface Guard {
   /** The call's own answer, or `onDispose` when the worker is stopped before it comes. */
   call<T>(call: () => Promise<T>, onDispose: T): Promise<T>;
+  /** The page may still want to give up a job while it goes away, after the worker did. */
+  readonly disposed: boolean;
   dispose(): void;
 }
 
@@ -19,6 +21,9 @@ export function guardWorker(worker: Worker, name: string): Guard {
     for (const settle of [...open]) settle(broken);
   });
   return {
+    get disposed() {
+      return disposed;
+    },
     call<T>(call: () => Promise<T>, onDispose: T): Promise<T> {
       if (disposed) return Promise.resolve(onDispose);
       if (broken) return Promise.reject(broken);

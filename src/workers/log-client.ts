@@ -13,7 +13,6 @@ const CANCELLED: Failed = { ok: false, cancelled: true };
 export function createLogClient(): LogClient {
   const worker = new Worker(new URL("./log.worker.ts", import.meta.url), { type: "module", name: "holdfast-log" });
   const remote: Remote<LogWorker> = wrap<LogWorker>(worker);
-  let stopped = false;
   const guard = guardWorker(worker, "reception log");
   return {
     preview: (file, split) => guard.call<PreviewOutcome>(() => remote.preview(file, split) as Promise<PreviewOutcome>, CANCELLED),
@@ -21,10 +20,9 @@ export function createLogClient(): LogClient {
       guard.call<ReadOutcome>(() => remote.read(file, mapping, onProgress && proxy(onProgress)) as Promise<ReadOutcome>, CANCELLED),
     pack: (file, onProgress) => guard.call<PackOutcome>(() => remote.pack(file, onProgress && proxy(onProgress)) as Promise<PackOutcome>, CANCELLED),
     cancel() {
-      if (!stopped) void remote.cancel();
+      if (!guard.disposed) void remote.cancel();
     },
     dispose() {
-      stopped = true;
       guard.dispose();
       remote[releaseProxy]();
       worker.terminate();
