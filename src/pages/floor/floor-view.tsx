@@ -1,4 +1,4 @@
-import { useCallback, useEffect, useMemo, useRef, useState } from "react";
+import { memo, useCallback, useEffect, useMemo, useRef, useState } from "react";
 import { useParams, useSearchParams } from "react-router-dom";
 import { apiPaths } from "#shared/api/paths.ts";
 import type { Advice } from "#shared/network/advice.ts";
@@ -33,7 +33,7 @@ import { areaPath, contoursOf } from "./model/contour-paths.ts";
 import { floodShown, reachedBy, shortName, statesAt } from "./model/flood-view.ts";
 import { floorOf, letFloodsDecide } from "./model/floor-edits.ts";
 import { rolesOf, roleText } from "./model/floor-names.ts";
-import { runShares } from "./model/run-shares.ts";
+import { type RunShares, runShares } from "./model/run-shares.ts";
 import { FloodPanel } from "./panels/flood-panel.tsx";
 import { AllLinks, LinksPanel } from "./panels/links-panel.tsx";
 import { ModelPanel } from "./panels/model-panel.tsx";
@@ -184,7 +184,6 @@ function FloorStudio({
   // ---- the survey
   const surveyed = useSurvey(engine, prepared.ok ? prepared.scenario : null, seed, scenarioId);
   const [onPlan, setOnPlan] = useState(true);
-  const [comparing, setComparing] = useState(false);
   const marks = useMemo(() => {
     const { survey, stale } = surveyed;
     const of = survey?.slots.find(({ id }) => id === slot?.id);
@@ -250,11 +249,111 @@ function FloorStudio({
       ? `flood of slot ${slotIndex + 1}, step ${step} of ${steps}, ${reached[step - 1] ?? 0} of ${flood.nodes.length} nodes have it`
       : null;
 
-  const apply = (advice: Advice) => {
-    const next = advice.edits.reduce<unknown>((changed, { path, value }) => setAt(changed, path, value), json);
-    edit({ kind: "put", json: next, forget: advice.edits.map(({ path }) => path) });
-    toast({ text: "The change is made; undo takes it back. Survey again to see what it brings." });
-  };
+  const latest = useRef(json);
+  latest.current = json;
+  const apply = useCallback(
+    (advice: Advice) => {
+      const next = advice.edits.reduce<unknown>((changed, { path, value }) => setAt(changed, path, value), latest.current);
+      edit({ kind: "put", json: next, forget: advice.edits.map(({ path }) => path) });
+      toast({ text: "The change is made; undo takes it back. Survey again to see what it brings." });
+    },
+    [edit, toast],
+  );
+
+  const { takeAway } = tools;
+  const goToRound = useCallback(
+    (next: number) => {
+      setChosenStep(null);
+      setRound(next, slot?.floodStartS ?? 0);
+    },
+    [setRound, slot],
+  );
+  // While something is dragged on the plan, nothing of this changes.
+  // biome-ignore lint/correctness/useExhaustiveDependencies: what is left out follows from what is named
+  const side = useMemo(
+    () => (
+      <section className="fl-side" aria-label="Side panel">
+        {rolesBad && <RolesPanel bad defaultOpen />}
+        {tool === "picture" ? (
+          <PicturePanel floor={floor} mayUpload={mayUpload} missing={missing} scaling={scaling} onScaling={setScaling} />
+        ) : (
+          <ToolPanel floor={floor} studio={studio} defaults={defaults} />
+        )}
+        {node && (
+          <>
+            <NodePanel
+              key={`node ${node.id}`}
+              floor={floor}
+              index={nodeIndex}
+              sum={[roleText(roles.get(node.id)), stateSum(node.id)].filter(Boolean).join(" · ")}
+              radioDbm={scenario.radio.txPowerDbm}
+              studio={studio}
+              onRemove={() => takeAway(`node:${node.id}`)}
+            />
+            <LinksPanel floor={floor} node={node} links={links.value} missing={links.busy ? null : impossible} onNode={selectNode} />
+          </>
+        )}
+        {obstacleChosen >= 0 && (
+          <ObstaclePanel
+            key={`obstacle ${obstacleChosen}`}
+            floor={floor}
+            index={obstacleChosen}
+            studio={studio}
+            onRemove={() => takeAway(`obstacle:${obstacleChosen}`)}
+          />
+        )}
+        {interfererChosen >= 0 && (
+          <InterfererPanel
+            key={`interferer ${interfererChosen}`}
+            floor={floor}
+            index={interfererChosen}
+            studio={studio}
+            onRemove={() => takeAway(`interferer:${interfererChosen}`)}
+          />
+        )}
+        {flood && slot && usable && !idle && (
+          <FloodPanel
+            floor={floor}
+            record={usable}
+            slot={slot}
+            slotIndex={slotIndex}
+            flood={flood}
+            round={round}
+            periodS={periodS}
+            seed={seed}
+            onRound={goToRound}
+          />
+        )}
+        {nothing && <OverviewPanel floor={floor} roles={roles} studio={studio} />}
+        {nothing && !rolesBad && <RolesPanel bad={false} defaultOpen={fresh} />}
+        {nothing && <ModelPanel key={`model ${modelOpen}`} floor={floor} defaultOpen={modelOpen > 0} />}
+      </section>
+    ),
+    [
+      floor,
+      json,
+      studio.tool,
+      selection,
+      roles,
+      links,
+      flood,
+      usable,
+      states,
+      slot,
+      round,
+      seed,
+      scaling,
+      missing,
+      mayUpload,
+      rolesBad,
+      impossible,
+      modelOpen,
+      fresh,
+      defaults,
+      goToRound,
+      readOnly,
+    ],
+  );
 
   return (
     <div className="fl">
@@ -329,93 +428,21 @@ function FloorStudio({
             )}
           </div>
         </section>
-        <section className="fl-side" aria-label="Side panel">
-          {rolesBad && <RolesPanel bad defaultOpen />}
-          {tool === "picture" ? (
-            <PicturePanel floor={floor} mayUpload={mayUpload} missing={missing} scaling={scaling} onScaling={setScaling} />
-          ) : (
-            <ToolPanel floor={floor} studio={studio} defaults={defaults} />
-          )}
-          {node && (
-            <>
-              <NodePanel
-                key={`node ${node.id}`}
-                floor={floor}
-                index={nodeIndex}
-                sum={[roleText(roles.get(node.id)), stateSum(node.id)].filter(Boolean).join(" · ")}
-                radioDbm={scenario.radio.txPowerDbm}
-                studio={studio}
-                onRemove={() => tools.takeAway(`node:${node.id}`)}
-              />
-              <LinksPanel floor={floor} node={node} links={links.value} missing={links.busy ? null : impossible} onNode={selectNode} />
-            </>
-          )}
-          {obstacleChosen >= 0 && (
-            <ObstaclePanel
-              key={`obstacle ${obstacleChosen}`}
-              floor={floor}
-              index={obstacleChosen}
-              studio={studio}
-              onRemove={() => tools.takeAway(`obstacle:${obstacleChosen}`)}
-            />
-          )}
-          {interfererChosen >= 0 && (
-            <InterfererPanel
-              key={`interferer ${interfererChosen}`}
-              floor={floor}
-              index={interfererChosen}
-              studio={studio}
-              onRemove={() => tools.takeAway(`interferer:${interfererChosen}`)}
-            />
-          )}
-          {flood && slot && usable && !idle && (
-            <FloodPanel
-              floor={floor}
-              record={usable}
-              slot={slot}
-              slotIndex={slotIndex}
-              flood={flood}
-              round={round}
-              periodS={periodS}
-              seed={seed}
-              onRound={(next) => {
-                setChosenStep(null);
-                setRound(next, slot.floodStartS);
-              }}
-            />
-          )}
-          {nothing && <OverviewPanel floor={floor} roles={roles} studio={studio} />}
-          {nothing && !rolesBad && <RolesPanel bad={false} defaultOpen={fresh} />}
-          {nothing && <ModelPanel key={`model ${modelOpen}`} floor={floor} defaultOpen={modelOpen > 0} />}
-        </section>
+        {side}
       </div>
       {timing && timing.slots.length > 0 && (
-        <section className="sheet doc fl-below" aria-label="Round">
-          <div className="pad">
-            <div className="hrow">
-              <h2>Round</h2>
-              <span className="rt">
-                Choose a slot to see its flood on the plan{" "}
-                <Button small onClick={() => setComparing(true)}>
-                  Compare placements
-                </Button>
-              </span>
-              {comparing && <PlacementsDialog seed={otherSeed} onClose={() => setComparing(false)} />}
-            </div>
-            <RoundRibbon timing={timing} reachedShare={shares?.reached} selected={slot?.id} onSelect={setSlotId} tabled />
-            <SlotTable
-              timing={timing}
-              floor={floor}
-              delivered={shares?.delivered}
-              deliveredOver={shares ? `in the ${shares.rounds === rounds ? "" : "first "}${shares.rounds} rounds of this run` : undefined}
-              selected={slot?.id}
-              onSelect={setSlotId}
-              fileStem={scenario.name}
-            />
-          </div>
-        </section>
+        <RoundSheet
+          timing={timing}
+          floor={floor}
+          shares={shares}
+          rounds={rounds}
+          slotId={slot?.id ?? null}
+          onSlot={setSlotId}
+          name={scenario.name}
+          seed={otherSeed}
+        />
       )}
-      <SurveySheet
+      <Survey
         control={surveyed}
         floor={floor}
         roles={roles}
@@ -433,13 +460,59 @@ function FloorStudio({
             title="All links"
             sum={`${links.value.filter(({ prr }) => prr >= 0.9).length} of ${links.value.length} received by 90\u2009% and more`}
           >
-            <AllLinks floor={floor} links={links.value} fileStem={scenario.name} />
+            <Links floor={floor} links={links.value} fileStem={scenario.name} />
           </Section>
         </div>
       )}
     </div>
   );
 }
+
+/** What lies below the plan is drawn again when it changes, not while something is dragged. */
+const Survey = memo(SurveySheet);
+const Links = memo(AllLinks);
+
+interface RoundSheetProps {
+  timing: RoundTiming;
+  floor: Floor;
+  shares: RunShares | null;
+  rounds: number;
+  slotId: string | null;
+  onSlot: (id: string) => void;
+  name: string;
+  /** Another seed than the scenario's own. */
+  seed: number | null;
+}
+
+const RoundSheet = memo(function RoundSheet({ timing, floor, shares, rounds, slotId, onSlot, name, seed }: RoundSheetProps) {
+  const [comparing, setComparing] = useState(false);
+  return (
+    <section className="sheet doc fl-below" aria-label="Round">
+      <div className="pad">
+        <div className="hrow">
+          <h2>Round</h2>
+          <span className="rt">
+            Choose a slot to see its flood on the plan{" "}
+            <Button small onClick={() => setComparing(true)}>
+              Compare placements
+            </Button>
+          </span>
+          {comparing && <PlacementsDialog seed={seed} onClose={() => setComparing(false)} />}
+        </div>
+        <RoundRibbon timing={timing} reachedShare={shares?.reached} selected={slotId} onSelect={onSlot} tabled />
+        <SlotTable
+          timing={timing}
+          floor={floor}
+          delivered={shares?.delivered}
+          deliveredOver={shares ? `in the ${shares.rounds === rounds ? "" : "first "}${shares.rounds} rounds of this run` : undefined}
+          selected={slotId}
+          onSelect={onSlot}
+          fileStem={name}
+        />
+      </div>
+    </section>
+  );
+});
 
 /** The asked slot, else the first measurement, else the first of all. */
 function indexOfSlot(timing: RoundTiming | null, id: string | null): number {

@@ -37,6 +37,9 @@ export type Preview =
   | { kind: "line"; from: Spot; until: Spot; as: "wall" | "block" | "measure" };
 
 const COMMIT_MS = 120;
+/** Larger floors follow when the pointer is let go: their links take longer than a hand waits. */
+const LIVE_NODES = 40;
+const LIVE_OBSTACLES = 80;
 /** Lines this close to straight become straight. */
 const STRAIGHT = 0.06;
 const NEAR_M = 0.1;
@@ -87,7 +90,8 @@ export function usePlanTools(floor: Floor, studio: Studio, picture: PictureTool,
           value = at(spot);
           setPreview(show(value));
           const time = performance.now();
-          if (time - last < COMMIT_MS) return;
+          const { nodes, obstacles } = now.current.floor;
+          if (time - last < COMMIT_MS || nodes.length > LIVE_NODES || obstacles.length > LIVE_OBSTACLES) return;
           last = time;
           commit(value);
         },

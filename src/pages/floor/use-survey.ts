@@ -1,5 +1,5 @@
 import { useQuery, useQueryClient } from "@tanstack/react-query";
-import { useCallback, useEffect, useRef, useState } from "react";
+import { useCallback, useEffect, useMemo, useRef, useState } from "react";
 import type { FloodSurvey } from "#shared/network/survey.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { sameJson } from "#src/pages/scenario/model/json-path.ts";
@@ -14,9 +14,8 @@ interface Kept {
 /** One survey at a time; its figures outlive a look at the bench. */
 export function useSurvey(engine: EngineClient | null, scenario: Scenario | null, seed: number, scenarioId: string): SurveyControl {
   const client = useQueryClient();
-  const key = ["floor-survey", scenarioId];
   const kept = useQuery({
-    queryKey: key,
+    queryKey: ["floor-survey", scenarioId],
     queryFn: (): Kept | null => null,
     enabled: false,
     initialData: null as Kept | null,
@@ -32,12 +31,10 @@ export function useSurvey(engine: EngineClient | null, scenario: Scenario | null
     },
     [engine],
   );
-  return {
-    survey: kept.data?.survey ?? null,
-    stale: kept.data !== null && kept.data !== undefined && !sameJson(kept.data.of, scenario),
-    share,
-    broken,
-    run: (rounds) => {
+  const { data } = kept;
+  const stale = useMemo(() => data !== null && !sameJson(data.of, scenario), [data, scenario]);
+  const run = useCallback(
+    (rounds: number) => {
       if (!engine || !scenario) return;
       const mine = ++turn.current;
       setShare(0);
@@ -50,7 +47,7 @@ export function useSurvey(engine: EngineClient | null, scenario: Scenario | null
             // Progress that is told late is no progress any more.
             turn.current++;
             setShare(null);
-            if (outcome.ok) client.setQueryData(key, { survey: outcome.value, of: scenario } satisfies Kept);
+            if (outcome.ok) client.setQueryData(["floor-survey", scenarioId], { survey: outcome.value, of: scenario } satisfies Kept);
           },
           () => {
             if (turn.current !== mine) return;
@@ -59,10 +56,12 @@ export function useSurvey(engine: EngineClient | null, scenario: Scenario | null
           },
         );
     },
-    cancel: useCallback(() => {
-      turn.current++;
-      setShare(null);
-      engine?.cancelTask("survey");
-    }, [engine]),
-  };
+    [engine, scenario, seed, client, scenarioId],
+  );
+  const cancel = useCallback(() => {
+    turn.current++;
+    setShare(null);
+    engine?.cancelTask("survey");
+  }, [engine]);
+  return useMemo(() => ({ survey: data?.survey ?? null, stale, share, broken, run, cancel }), [data, stale, share, broken, run, cancel]);
 }
