@@ -1,5 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
+import { channelFactsText } from "#src/components/drawings/channel-facts.ts";
 import { numbersAsText, readChannels, readNumberList, toggleChannel } from "#src/pages/scenario/model/channel-text.ts";
 import { readReception } from "#src/pages/scenario/model/reception-text.ts";
 
@@ -24,6 +25,18 @@ describe("lists of numbers as text", () => {
     expect(toggleChannel([11, 20], 15)).toEqual([11, 15, 20]);
     expect(toggleChannel([20, 11], 15)).toEqual([20, 11, 15]);
     expect(toggleChannel([20, 11], 11)).toEqual([20]);
+  });
+});
+
+describe("channels beside what else sends", () => {
+  const wifi6 = { name: "Wi-Fi 6", centreMHz: 2437, bandwidthMHz: 20 };
+  const words = (list: number[]) =>
+    channelFactsText("ieee802154", list, [wifi6])
+      .replace(/[\u2009\u2060]/g, " ")
+      .replaceAll("  ", " ");
+  it("are told apart: clear ones, and those that are reached with the share of the sender's power", () => {
+    expect(words([17, 15, 26])).toBe("Channels 15 and 26 are clear of what is shown; channel 17: Wi-Fi 6 with 10 % of its power.");
+    expect(words([])).toBe("Channel 26 is clear of what is shown.");
   });
 });
 
