@@ -81,18 +81,33 @@ export function channelPlan(phy: Phy, bands: readonly NamedBand[]): PlannedChann
 export type Hopping = Radio["channels"]["hopping"];
 
 /**
- * Place in the list of channels for a step. Everybody knows it without a message: `occurrence` counts how often the slot has
- * been there before, `slot` is its place in the slot table, `step` counts from 1. A step meets another channel whenever its
- * slot comes again, and a slot that is added behind changes none before it.
+ * Where a slot begins in the list of channels: a number that goes by its name and not by its place in the slot table, so that a
+ * message more, wherever it finds room, changes no other's channels.
  */
-export function hopPlace(hopping: Hopping, channels: number, occurrence: number, slot: number, step: number): number {
+export function hopOffset(slotId: string): number {
+  let sum = 0;
+  for (let i = 0; i < slotId.length; i++) sum = (sum * 31 + slotId.charCodeAt(i)) % 65_521;
+  return sum;
+}
+
+/**
+ * Place in the list of channels for a step. Everybody knows it without a message: `occurrence` counts how often the slot has
+ * been there before, `offset` is the slot's own, `step` counts from 1. A step meets another channel whenever its slot comes again.
+ */
+export function hopPlace(hopping: Hopping, channels: number, occurrence: number, offset: number, step: number): number {
   if (hopping === "none") return 0;
-  return (occurrence + slot + (hopping === "per-step" ? step - 1 : 0)) % channels;
+  return (occurrence + offset + (hopping === "per-step" ? step - 1 : 0)) % channels;
 }
 
 /** Channel in use in a step of a slot, in a round in which the slot occurs. */
-export function channelOfStep(radio: Radio, rhythm: { everyRounds: number; firstRound: number }, slot: number, round: number, step: number): number {
+export function channelOfStep(
+  radio: Radio,
+  rhythm: { everyRounds: number; firstRound: number },
+  offset: number,
+  round: number,
+  step: number,
+): number {
   const list = channelsInUse(radio);
   const occurrence = (round - rhythm.firstRound) / rhythm.everyRounds;
-  return list[hopPlace(radio.channels.hopping, list.length, occurrence, slot, step)];
+  return list[hopPlace(radio.channels.hopping, list.length, occurrence, offset, step)];
 }

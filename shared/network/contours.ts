@@ -6,11 +6,11 @@
 import { fromDb } from "#shared/math/decibel.ts";
 import type { Floor, LinkBudgetSettings } from "#shared/scenario/floor-schema.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
-import { channelsInUse, hopPlace } from "./channels.ts";
+import { channelsInUse, hopOffset, hopPlace } from "./channels.ts";
 import { received, sendsIn } from "./flood.ts";
 import { FloodProcess } from "./floods.ts";
 import { distance, obstacleLossDb, placeAt, wayOf } from "./geometry.ts";
-import { Activity } from "./interference.ts";
+import { type Activity, activitiesOf } from "./interference.ts";
 import { type Grid, gridX, gridY, type Isoline, isolines } from "./isolines.ts";
 import { interferenceShares, LinkBudget, MID_BAND_MHZ } from "./link-budget.ts";
 import { pathLoss } from "./path-loss.ts";
@@ -122,7 +122,7 @@ class Field {
     this.penaltyRatio = fromDb(-settings.concurrencyPenaltyDb);
     this.channels = channelsInUse(radio);
     this.shares = interferenceShares(floor, radio, this.channels);
-    this.activities = interferers.map((interferer, i) => new Activity(interferer.activity, interferer, seed, `interferer/${i}`));
+    this.activities = activitiesOf(interferers, seed);
     this.arrived = Array.from({ length: timing.slots[slot].steps }, () => new Float64Array(this.points));
     this.clean = new Float64Array(this.points);
     this.disturbed = new Float64Array(this.points);
@@ -168,10 +168,11 @@ class Field {
     const missed = new Float64Array(points).fill(1);
     const senders: number[] = [];
     const sending = new Float64Array(activities.length);
+    const offset = hopOffset(this.timing.slots[this.slot].id);
     for (let step = 1; step <= steps; step++) {
       senders.length = 0;
       for (let i = 0; i < n; i++) if (received(first[i]) && sendsIn(relay, first[i], step)) senders.push(i);
-      const hop = hopPlace(radio.channels.hopping, channels.length, occurrence, this.slot, step);
+      const hop = hopPlace(radio.channels.hopping, channels.length, occurrence, offset, step);
       const begin = start + (step - 1) * stepNs;
       let inBand = false;
       for (let k = 0; k < activities.length; k++) {

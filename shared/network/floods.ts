@@ -6,6 +6,7 @@
 import { type RandomKey, randomKey } from "#shared/math/keyed-random.ts";
 import type { Floor } from "#shared/scenario/floor-schema.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
+import { hopOffset } from "./channels.ts";
 import { FloodWave, NO_SLOT, RADIO_OFF, type Relay, radioOnTime, received, type SlotTimes, sendsIn, type WaveLinks } from "./flood.ts";
 import { occurs, type RoundTiming, type Slot } from "./round.ts";
 import { toNs } from "./schedule.ts";
@@ -97,6 +98,7 @@ export class FloodProcess {
     const linkSlots = slots.map(({ floodStart, rhythm }, i) => ({
       bytes: scenario.radio.headerBytes + timing.slots[i].payloadBytes,
       floodStart,
+      hopOffset: hopOffset(timing.slots[i].id),
       ...rhythm,
     }));
     this.links = waveLinks(floor, scenario.radio, this.places, linkSlots, this.period, seed);

@@ -5,7 +5,7 @@ import type { Radio } from "#shared/scenario/round-schema.ts";
 import { channelsInUse, hopPlace } from "./channels.ts";
 import { blockS, Fading, roundCorrelation } from "./fading.ts";
 import type { WaveLinks } from "./flood.ts";
-import { Activity } from "./interference.ts";
+import { type Activity, activitiesOf } from "./interference.ts";
 import { interferenceShares, LinkBudget, MID_BAND_MHZ } from "./link-budget.ts";
 import { type ReceptionCurve, ReceptionCurves } from "./reception.ts";
 
@@ -13,6 +13,8 @@ import { type ReceptionCurve, ReceptionCurves } from "./reception.ts";
 export interface LinkSlot {
   bytes: number;
   floodStart: number;
+  /** Where it begins in the list of channels (channels.ts). */
+  hopOffset: number;
   everyRounds: number;
   firstRound: number;
 }
@@ -62,7 +64,7 @@ export class BudgetLinks implements WaveLinks {
     this.curves = slots.map(({ bytes }) => curves.of(bytes));
     this.curve = this.curves[0];
     this.shares = interferenceShares(floor, radio, this.channels);
-    this.activities = floor.interferers.map((interferer, i) => new Activity(interferer.activity, interferer, seed, `interferer/${i}`));
+    this.activities = activitiesOf(floor.interferers, seed);
     this.sending = new Int32Array(floor.interferers.length);
     const { fading } = settings;
     const block = fading ? blockS(fading, MID_BAND_MHZ) * 1e9 : Number.POSITIVE_INFINITY;
@@ -99,7 +101,7 @@ export class BudgetLinks implements WaveLinks {
 
   beginStep(step: number, start: number, end: number): void {
     const { channels, fading, activities } = this;
-    this.hop = hopPlace(this.radio.channels.hopping, channels.length, this.occurrence, this.slot, step);
+    this.hop = hopPlace(this.radio.channels.hopping, channels.length, this.occurrence, this.slots[this.slot].hopOffset, step);
     if (fading) this.plane = fading.plane(this.blocks[this.slot], channels[this.hop]);
     this.sendingCount = 0;
     for (let k = 0; k < activities.length; k++) {

@@ -99,7 +99,7 @@ export const NETWORK_METHODS: readonly MethodGroup[] = [
       },
       {
         title: "Channels",
-        text: "Everybody knows the channel without a message: the list goes on by one with every time the slot comes again, with every slot, and with hopping per step with every step.",
+        text: "Everybody knows the channel without a message: a slot begins at a place of the list that goes by its name; from there it goes on by one with every time the slot comes again, and with hopping per step with every step.",
         formulas: ["place = (occurrence + slot + step - 1) mod channels"],
         source: null,
       },

@@ -93,6 +93,34 @@ describe("floods of a run", () => {
       for (const node of a.nodes) expect(column(more, b, slot, node)).toEqual(column(everything, a, slot, node));
   });
 
+  it("of a message do not change when another message finds room before it, channels hopping", () => {
+    const slow = (one: Scenario): Scenario => {
+      one.loops[0].controller.computeS = 0.012;
+      one.round.periodS = 0.08;
+      return one;
+    };
+    const messages = [{ id: "heartbeat", name: "Heartbeat", from: 3, payloadBytes: 1 }];
+    const floor = floorOf(grid, { links: faded, interferers: [jammer] });
+    const few = slow(scenario(floor));
+    const more = slow(scenario(floor, { round: { hops: 5, messages } }));
+    expect(slotNames(more)).toEqual([...slotNames(few).slice(0, 2), "other/heartbeat", slotNames(few)[2]]);
+    const [a, b] = [draw(few), draw(more)];
+    for (const slot of slotNames(few)) for (const node of a.nodes) expect(column(more, b, slot, node)).toEqual(column(few, a, slot, node));
+  });
+
+  it("do not depend on the order of the interferers, nor on one that reaches nobody", () => {
+    const named = [
+      { ...jammer, name: "Dock" },
+      { ...jammer, name: "Office", xM: 150, yM: 90, activity: { ...jammer.activity, meanOnS: 1e-6, onShare: 0.2 } },
+    ];
+    const faint = { ...jammer, name: "Yard", powerDbm: -60, xM: 199, yM: 199 };
+    const of = (interferers: typeof named) => scenario(floorOf(grid, { links: faded, interferers }));
+    const record = draw(of(named));
+    expect(draw(of([named[1], named[0]]))).toEqual(record);
+    expect(draw(of([faint, ...named]))).toEqual(record);
+    expect(draw(of([named[0]]))).not.toEqual(record);
+  });
+
   it("of two slots of one message are drawn by themselves", () => {
     const twice = scenario(floorOf(grid, { links: shadowed }));
     twice.loops[0].sensor.copies = 2;

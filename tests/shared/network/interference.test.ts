@@ -58,6 +58,20 @@ describe("an interferer", () => {
     expect(Math.abs(on / 20_000 - 0.4)).toBeLessThan(0.02);
   });
 
+  it("that sends at random does so at the same times whoever asks, however seldom and in whichever order", () => {
+    for (const meanOnS of [1e-6, 1e-4, 0.004]) {
+      const asked = { ...random, meanOnS };
+      const often = new Activity(asked, always, 6, "x");
+      const all = Array.from({ length: 6000 }, (_, ms) => sends(often, ms, 0.001));
+      const seldom = new Activity(asked, always, 6, "x");
+      expect(all.filter((_, ms) => ms % 997 === 5)).toEqual(
+        Array.from({ length: 6 }, (_, i) => sends(seldom, i * 997 + 5, 0.001)).concat(sends(seldom, 5987, 0.001)),
+      );
+      const back = [5000, 4000, 4001, 17, 5999, 0];
+      expect(back.map((ms) => sends(seldom, ms, 0.001))).toEqual(back.map((ms) => all[ms]));
+    }
+  });
+
   it("that sends at random does so in other ways with another seed or name, never with a share of 0, always with 1", () => {
     const pattern = (seed: number, name: string, onShare = 0.25) => {
       const activity = new Activity({ ...random, onShare }, always, seed, name);
