@@ -5,6 +5,12 @@ import { toNs } from "./schedule.ts";
 
 const NEVER = Number.POSITIVE_INFINITY;
 
+/** Of a slot, ns from the start of its round. */
+interface Span {
+  start: number;
+  end: number;
+}
+
 export class Outages {
   readonly #spans: Map<number, { from: number; until: number }[]>;
   /** The slot whose loss silences everybody, and its sender; null: no beacon is needed. */
@@ -30,12 +36,20 @@ export class Outages {
     return spans.some(({ from, until }) => from < until && until > fromNs && (from < untilNs || from === fromNs));
   }
 
-  /** Are sender and receivers of the slot in service in round k, and did the beacon's host speak when it is needed? */
-  travels(slot: Slot, ns: { start: number; end: number }, k: number): boolean {
+  /** Are sender and receivers of the slot in service in round k, and were they and its host for the beacon when that is needed? */
+  travels(slot: Slot, ns: Span, k: number): boolean {
     if (this.#spans.size === 0) return true;
     const begin = k * this.#period;
-    if (this.#beacon && this.down(this.#beacon.host, begin + this.#beacon.start, begin + this.#beacon.end)) return false;
-    if (this.down(slot.from, begin + ns.start, begin + ns.end)) return false;
-    return !slot.to?.some((node) => this.down(node, begin + ns.start, begin + ns.end));
+    if (this.#beacon && this.#off(this.#beacon.host, begin, this.#beacon)) return false;
+    if (this.#silent(slot.from, begin, ns)) return false;
+    return !slot.to?.some((node) => this.#silent(node, begin, ns));
+  }
+
+  #silent(node: number | null, begin: number, ns: Span): boolean {
+    return this.#off(node, begin, ns) || (this.#beacon !== null && this.#off(node, begin, this.#beacon));
+  }
+
+  #off(node: number | null, begin: number, { start, end }: Span): boolean {
+    return this.down(node, begin + start, begin + end);
   }
 }

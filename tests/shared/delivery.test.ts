@@ -125,6 +125,18 @@ describe("a node out of service, without floods", () => {
     expect(at("actuator", 3)).toEqual([[10], [9]]);
   });
 
+  it("silences a node for the round whose needed beacon it missed, though it is back for its own slot", () => {
+    const lostWith = (needed: boolean) => {
+      const scenario = onFloor((one) => {
+        one.round.beacon = { payloadBytes: 4, needed };
+        if (one.floor) one.floor.nodes[0].outages = [{ fromS: 0.12, untilS: 0.1201 }];
+      });
+      return rounds(drawn(scenario, 10).measurement);
+    };
+    expect(lostWith(false)).toEqual([]);
+    expect(lostWith(true)).toEqual([2]);
+  });
+
   it("silences the round when it is the beacon's host and the beacon is needed", () => {
     const silent = (needed: boolean) => {
       const { measurement, command } = drawn(
