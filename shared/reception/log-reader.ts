@@ -257,27 +257,30 @@ function nearest(raw: number, other: number, wrapsAt: number): number {
 function fillEnds(traces: LinkTrace[], readers: readonly LinkReader[]): void {
   const comparable = traces
     .map((trace, k) => ({ trace, last: readers[k].lastNumber, restarted: readers[k].restarted }))
-    .filter((link) => !link.restarted);
-  const from = comparable.reduce((least, { trace }) => Math.min(least, trace.firstNumber), Number.MAX_SAFE_INTEGER);
-  const until = comparable.reduce((most, { last }) => Math.max(most, last), 0);
-  for (const { trace, last } of comparable) {
-    // Ranges that do not touch are recordings of different times, or counters that began anew.
-    const touches = comparable.some((other) => other.trace !== trace && other.trace.firstNumber <= last && other.last >= trace.firstNumber);
-    if (!touches) continue;
-    const before = trace.firstNumber - from;
-    const after = until - last;
-    if (before > 0) {
-      if (trace.runs[0] === 0) trace.runs[1] += before;
-      else trace.runs.unshift(0, before);
-    }
-    if (after > 0) {
-      if (trace.runs.length % 2 === 0) trace.runs[trace.runs.length - 1] += after;
-      else trace.runs.push(after);
-    }
-    trace.firstNumber = from;
-    trace.lostBefore = before;
-    trace.lostAfter = after;
-    trace.packets += before + after;
-    trace.lost += before + after;
+    .filter((link) => !link.restarted)
+    .sort((a, b) => a.trace.firstNumber - b.trace.firstNumber);
+  // Ranges that do not touch, not even by way of others, are recordings of different times, or counters that began anew.
+  for (let begin = 0; begin < comparable.length; ) {
+    const from = comparable[begin].trace.firstNumber;
+    let until = comparable[begin].last;
+    let end = begin + 1;
+    for (; end < comparable.length && comparable[end].trace.firstNumber <= until; end++) until = Math.max(until, comparable[end].last);
+    for (; begin < end; begin++) lengthen(comparable[begin].trace, comparable[begin].trace.firstNumber - from, until - comparable[begin].last);
   }
+}
+
+function lengthen(trace: LinkTrace, before: number, after: number): void {
+  if (before > 0) {
+    if (trace.runs[0] === 0) trace.runs[1] += before;
+    else trace.runs.unshift(0, before);
+  }
+  if (after > 0) {
+    if (trace.runs.length % 2 === 0) trace.runs[trace.runs.length - 1] += after;
+    else trace.runs.push(after);
+  }
+  trace.firstNumber -= before;
+  trace.lostBefore = before;
+  trace.lostAfter = after;
+  trace.packets += before + after;
+  trace.lost += before + after;
 }

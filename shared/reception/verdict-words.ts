@@ -42,7 +42,7 @@ function told(trace: LinkTrace, fit: LinkFit, test: IndependenceTest): VerdictWo
   switch (test.verdict) {
     case "nothing-lost":
       return {
-        headline: `None of ${counted(packets, "packet")} was lost`,
+        headline: packets === 1 ? "The only packet was not lost" : `None of ${counted(packets, "packet")} was lost`,
         sentences: [
           `With ${shareText(fit.confidence)} confidence at least ${shareText(shownReliability(packets, 0, fit.confidence))} arrive, if losses are independent.`,
           "Without a loss nothing can be said about bursts.",
@@ -50,7 +50,7 @@ function told(trace: LinkTrace, fit: LinkFit, test: IndependenceTest): VerdictWo
       };
     case "all-lost":
       return {
-        headline: `All ${counted(packets, "packet")} were lost`,
+        headline: packets === 1 ? "The only packet was lost" : `All ${counted(packets, "packet")} were lost`,
         sentences: ["Nothing can be fitted. Is the received column the right way round?"],
       };
     case "too-few":

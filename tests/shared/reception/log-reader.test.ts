@@ -227,6 +227,16 @@ describe("rounds, one counter for all links", () => {
       { source: "b", runs: [0, 2, 2, 1], packets: 5, lost: 3, lostBefore: 2, lostAfter: 1 },
     ]);
   });
+  it("fills the ends of links that lie apart by their own neighbours only, and by way of others", () => {
+    const from = (source: string, begin: number, end: number) => span(begin, end).map((k) => `${k},${source}`);
+    const rows = [...from("a", 0, 10), ...from("b", 8, 20), ...from("c", 18, 30), ...from("late", 500, 510)];
+    expect(read(["seq,from", ...rows].join("\n"), ROUND).links).toMatchObject([
+      { source: "a", firstNumber: 0, runs: [10, 20], lostBefore: 0, lostAfter: 20 },
+      { source: "b", firstNumber: 0, runs: [0, 8, 12, 10], lostBefore: 8, lostAfter: 10 },
+      { source: "c", firstNumber: 0, runs: [0, 18, 12], lostBefore: 18, lostAfter: 0 },
+      { source: "late", firstNumber: 500, runs: [10], lostBefore: 0, lostAfter: 0 },
+    ]);
+  });
   it("leaves the ends alone where each source counts for itself", () => {
     const content = read("seq,from\n0,a\n1,a\n2,a\n2,b\n3,a\n3,b\n4,a\n", { number: { column: "seq" }, source: "from" });
     expect(content.links[1]).toMatchObject({ runs: [2], lost: 0 });

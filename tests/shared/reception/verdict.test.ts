@@ -116,6 +116,12 @@ describe("the verdict in words", () => {
       sentences: ["Nothing can be fitted. Is the received column the right way round?"],
     });
   });
+  it("speaks of one packet as of one", () => {
+    expect([traceOf([1]), traceOf([0, 1])].map((trace) => words(trace).headline)).toEqual([
+      "The only packet was not lost",
+      "The only packet was lost",
+    ]);
+  });
   it("says with both numbers that a log is slower than the round", () => {
     const trace = traceOf(scattered(30, 50), { intervalS: 0.1 });
     expect(words(trace, 0.02).sentences.at(-1)).toBe(
