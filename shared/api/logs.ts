@@ -2,8 +2,8 @@
  * /api/teams/:teamId/logs: reception logs of the team. The server reads every file itself; nobody can hand in a reading.
  *
  * POST ?name=...&fileName=...&mapping={JSON of a ColumnMapping}, `uploadLogParameters` makes the three. The body is the CSV
- * file: packed by gzip with Content-Type application/gzip, or as it is with text/csv; application/octet-stream: the first
- * bytes decide. Sent as a stream, with or without Content-Length.
+ * file: packed by gzip with Content-Type application/gzip; with text/csv or application/octet-stream its first bytes say
+ * whether it is packed. Sent as a stream, with or without Content-Length.
  * -> 201 uploadLogResponse, or 200 when the team has this very file with this very mapping already (`existed`).
  * Refused: 400 "request-invalid" with `issues` (name, mapping), 413 "too-large" with `size` (as sent, or unpacked),
  * 415 "type-not-taken", 422 "log-invalid" (not gzip, broken off, mapping and file do not fit together, nothing to use),

@@ -81,6 +81,7 @@ describe("uploading a reception log", () => {
   it.each([
     ["packed, said to be", gzipSync(csvText(20, 1)), "application/gzip"],
     ["packed, said to be anything", gzipSync(csvText(20, 2)), "application/octet-stream"],
+    ["packed, said to be text", gzipSync(csvText(20, 8)), "text/csv"],
     ["packed in two parts", Buffer.concat([gzipSync(csvText(20, 3).slice(0, 500)), gzipSync(csvText(20, 3).slice(500))]), "application/gzip"],
     ["as it is, said to be anything", Buffer.from(csvText(20, 4)), "application/octet-stream"],
     ["as text with a character set", Buffer.from(csvText(20, 5)), "text/csv; charset=utf-8"],
@@ -125,6 +126,7 @@ describe("uploading a reception log", () => {
     ],
     ["a spreadsheet", Buffer.from("PK\x03\x04 and so on", "latin1"), {}, 422, "log-invalid", /Save the table as CSV/],
     ["one endless line", "1,".repeat(600_000), {}, 422, "log-invalid", /line of more than 1.0 MB/],
+    ["a type out of nowhere", good, { type: "constructor" }, 415, "type-not-taken", /constructor was sent/],
     ["a form", good, { type: "application/x-www-form-urlencoded" }, 415, "type-not-taken", /application\/gzip/],
     ["JSON", good, { type: "application/json" }, 415, "type-not-taken", /application\/json was sent/],
     ["no name", good, { name: " " }, 400, "request-invalid", /name/],

@@ -93,15 +93,15 @@ function decoderFor(first: Uint8Array): TextDecoder {
   return new TextDecoder("utf-8");
 }
 
-/** The source's chunks, unpacked when they are gzip. */
-async function* unpacked(source: AsyncIterable<Uint8Array>, packed: boolean | null): AsyncGenerator<Uint8Array> {
+/** The source's chunks, unpacked when they are gzip or are said to be. */
+async function* unpacked(source: AsyncIterable<Uint8Array>, packed: boolean): AsyncGenerator<Uint8Array> {
   const iterator = source[Symbol.asyncIterator]();
   const first = await iterator.next();
   if (first.done) return;
   async function* all() {
     for (let chunk = first as IteratorResult<Uint8Array>; !chunk.done; chunk = await iterator.next()) yield chunk.value;
   }
-  if (!(packed ?? GZIP_MAGIC.every((byte, i) => first.value[i] === byte))) return yield* all();
+  if (!packed && !GZIP_MAGIC.every((byte, i) => first.value[i] === byte)) return yield* all();
   const gunzip = createGunzip({ chunkSize: 64 * 1024 });
   const feeding = Readable.from(all());
   feeding.on("error", (error) => gunzip.destroy(error));
@@ -129,8 +129,8 @@ function lineGuard() {
   };
 }
 
-/** `packed`: gzip or not; null: as the first bytes say. */
-export async function readLog(source: AsyncIterable<Uint8Array>, mapping: ColumnMapping, packed: boolean | null): Promise<ReadLog | RefusedLog> {
+/** `packed`: it has to be gzip; otherwise its first bytes say. */
+export async function readLog(source: AsyncIterable<Uint8Array>, mapping: ColumnMapping, packed: boolean): Promise<ReadLog | RefusedLog> {
   const hash = createHash("sha256");
   const pack = packer();
   const guard = lineGuard();

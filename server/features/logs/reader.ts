@@ -8,8 +8,8 @@ import type { FromReader, ToReader } from "./read-thread.ts";
 
 export interface Reading {
   mapping: ColumnMapping;
-  /** Is it gzip? null: its first bytes say. */
-  packed: boolean | null;
+  /** It has to be gzip; otherwise its first bytes say. */
+  packed: boolean;
 }
 
 const AT_THE_SAME_TIME = 3;

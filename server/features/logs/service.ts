@@ -15,13 +15,8 @@ import type { ReadLog } from "./read.ts";
 import type { LogReader } from "./reader.ts";
 import { deleteLog, findLog, findLogId, findReading, insertLog, lockLog, piecesOf, renameLog } from "./repository.ts";
 
-/** Is the body packed? null: its first bytes say. */
-const PACKED: Record<string, boolean | null> = {
-  "application/gzip": true,
-  "application/x-gzip": true,
-  "text/csv": false,
-  "application/octet-stream": null,
-};
+const PACKED_TYPES = ["application/gzip", "application/x-gzip"];
+const TYPES = [...PACKED_TYPES, "text/csv", "application/octet-stream"];
 
 interface NewLog {
   name: string;
@@ -83,11 +78,11 @@ export function createLogService(db: Database, reader: LogReader) {
 
     async upload(member: Member, { name, fileName, mapping: text }: z.output<typeof uploadLogQuery>, file: SentFile) {
       const mapping = parsedMapping(text);
-      const packed = PACKED[file.type];
-      if (packed === undefined) {
+      if (!TYPES.includes(file.type)) {
         const sent = file.type === "" ? "none was sent" : `${file.type} was sent`;
-        throw new HttpError("type-not-taken", `A reception log is sent with Content-Type ${Object.keys(PACKED).join(", ")}; ${sent}.`);
+        throw new HttpError("type-not-taken", `A reception log is sent with Content-Type ${TYPES.join(", ")}; ${sent}.`);
       }
+      const packed = PACKED_TYPES.includes(file.type);
       const read = await reader.read(file.chunks(MAX_LOG_SENT_BYTES), { mapping, packed });
       if (!read.ok) throw new HttpError(read.code, read.message, { issues: read.issues, size: read.size });
       const { id, existed } = await db.transaction((transaction) => storeLog(transaction, member, { name, fileName, mapping }, read));
