@@ -1,7 +1,7 @@
 /** The page's side of the log worker. */
 import { proxy, type Remote, releaseProxy, wrap } from "comlink";
 import { guardWorker } from "./guard.ts";
-import type { Failed, LogWorker, PackOutcome, PreviewOutcome, ReadOutcome } from "./log-contract.ts";
+import type { Failed, LogWorker, PackOutcome, PreviewOutcome, ReadOutcome, StudyOutcome } from "./log-contract.ts";
 
 export interface LogClient extends LogWorker {
   /** Stops the worker for good. */
@@ -19,6 +19,7 @@ export function createLogClient(): LogClient {
     read: (file, mapping, onProgress) =>
       guard.call<ReadOutcome>(() => remote.read(file, mapping, onProgress && proxy(onProgress)) as Promise<ReadOutcome>, CANCELLED),
     pack: (file, onProgress) => guard.call<PackOutcome>(() => remote.pack(file, onProgress && proxy(onProgress)) as Promise<PackOutcome>, CANCELLED),
+    study: (runs) => guard.call<StudyOutcome>(() => remote.study(runs) as Promise<StudyOutcome>, CANCELLED),
     cancel() {
       if (!guard.disposed) void remote.cancel();
     },

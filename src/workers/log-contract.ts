@@ -1,4 +1,6 @@
 /** What the page may ask of the log worker. Types only. Outcomes are data: comlink loses fields of thrown errors. */
+import type { LinkFit } from "#shared/reception/fit.ts";
+import type { IndependenceTest } from "#shared/reception/independence.ts";
 import type { ColumnMapping, LinkTrace, ReadReport } from "#shared/reception/types.ts";
 
 export interface LogProgress {
@@ -40,6 +42,12 @@ export type PreviewOutcome = { ok: true; preview: LogPreview } | Failed;
 export type ReadOutcome = { ok: true; reading: LogReading } | Failed;
 export type PackOutcome = { ok: true; packed: Blob } | Failed;
 
+export interface LinkStudy {
+  fit: LinkFit;
+  independence: IndependenceTest;
+}
+export type StudyOutcome = { ok: true; study: LinkStudy } | Failed;
+
 export interface LogWorker {
   /** The first rows; `split`: divided by this sign and no other. */
   preview(file: File, split: ColumnMapping["delimiter"] | null): Promise<PreviewOutcome>;
@@ -47,5 +55,7 @@ export interface LogWorker {
   read(file: File, mapping: ColumnMapping, onProgress?: (progress: LogProgress) => void): Promise<ReadOutcome>;
   /** The file as gzip. Calling again, or reading, cancels it. */
   pack(file: File, onProgress?: (progress: LogProgress) => void): Promise<PackOutcome>;
+  /** Fit and tests of a link's run lengths. */
+  study(runs: number[]): Promise<StudyOutcome>;
   cancel(): void;
 }

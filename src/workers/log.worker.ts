@@ -1,6 +1,7 @@
 import { expose } from "comlink";
 import type { LogProgress, LogWorker } from "./log-contract.ts";
 import { packFile, previewFile, readFile } from "./log-reading.ts";
+import { studyRuns } from "./log-study.ts";
 
 /** Between two tellings of how far it is. */
 const TELL_MS = 80;
@@ -25,6 +26,7 @@ const worker: LogWorker = {
   preview: previewFile,
   read: (file, mapping, onProgress) => readFile(file, mapping, begin(onProgress)),
   pack: (file, onProgress) => packFile(file, begin(onProgress)),
+  study: async (runs) => ({ ok: true, study: studyRuns(runs) }),
   cancel() {
     newest++;
   },

@@ -1,19 +1,16 @@
-/** What a link's losses say, computed once for every link that is looked at. */
-import { fitLink, type LinkFit } from "#shared/reception/fit.ts";
-import { type IndependenceTest, testIndependence } from "#shared/reception/independence.ts";
-import { piece } from "#shared/reception/trace.ts";
+/** What a link's losses say. */
+import { clopperPearson } from "#shared/math/statistics.ts";
+import { fitGilbertElliott } from "#shared/reception/fit.ts";
+import { countTrace, piece } from "#shared/reception/trace.ts";
 import type { LinkTrace } from "#shared/reception/types.ts";
 import type { LinkFigures } from "./loss-process.ts";
 
-export interface LinkStudy {
-  fit: LinkFit;
-  independence: IndependenceTest;
-}
-
-export const studyLink = (link: LinkTrace): LinkStudy => ({ fit: fitLink(link), independence: testIndependence(link) });
-
 /** What a loss process needs of a link, of which every so many-th packet stands for a round. */
 export function figuresOf({ runs, packets }: LinkTrace, every = 1): LinkFigures {
-  const { lossRatio, clopperPearson, gilbertElliott } = fitLink({ runs: every > 1 ? piece(runs, 0, packets, every) : runs });
-  return { ratio: lossRatio, upper: clopperPearson[1], chain: gilbertElliott };
+  const counts = countTrace(every > 1 ? piece(runs, 0, packets, every) : runs);
+  return {
+    ratio: counts.packets > 0 ? counts.lost / counts.packets : 0,
+    upper: clopperPearson(counts.lost, counts.packets)[1],
+    chain: fitGilbertElliott(counts),
+  };
 }

@@ -1,3 +1,4 @@
+import { memo } from "react";
 import { lossTicks } from "#src/components/plots/tape-pieces.ts";
 import { logTape, TINTS, tapePaths } from "../model/log-tape.ts";
 import type { RunIndex } from "../model/run-index.ts";
@@ -16,7 +17,7 @@ export interface TapeStripProps {
 const DIVIDED = 5;
 
 /** A stretch of a log as loss tape: lost packets cut out, deeper with each further one in a row, a coral tick below. */
-export function TapeStrip({ index, fromPacket, untilPacket, left, right, y, height }: TapeStripProps) {
+export const TapeStrip = memo(function TapeStrip({ index, fromPacket, untilPacket, left, right, y, height }: TapeStripProps) {
   const pieces = logTape(index, { fromPacket, untilPacket, left, right, pixel: 1 });
   const { whole, tints } = tapePaths(pieces, height);
   const perPacket = (right - left) / (untilPacket - fromPacket);
@@ -37,4 +38,4 @@ export function TapeStrip({ index, fromPacket, untilPacket, left, right, y, heig
       ))}
     </g>
   );
-}
+});

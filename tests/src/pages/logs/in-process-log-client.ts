@@ -2,6 +2,7 @@
 import { Blob as NodeBlob } from "node:buffer";
 import type { LogClient } from "#src/workers/log-client.ts";
 import { packFile, previewFile, readFile } from "#src/workers/log-reading.ts";
+import { studyRuns } from "#src/workers/log-study.ts";
 
 /** jsdom's files cannot be read as streams; Node's can. */
 const streamed = async (file: File) => new NodeBlob([new Uint8Array(await file.arrayBuffer())]) as unknown as Blob;
@@ -22,6 +23,7 @@ export const createLogClient = (): LogClient => {
       const task = begin(tell);
       return packFile(await streamed(file), task);
     },
+    study: async (runs) => ({ ok: true, study: studyRuns(runs) }),
     cancel() {
       newest++;
     },

@@ -12,6 +12,7 @@ import { itemOf, LOG_ID, listOfLogs, logOf, TEXT } from "./made-log.ts";
 import "#src/pages/logs/logs-page.tsx";
 import "#src/pages/logs/log-page.tsx";
 
+vi.mock("#src/workers/log-client.ts", () => import("./in-process-log-client.ts"));
 vi.mock("#src/workers/pool.ts", () => import("../scenario/in-process-engine.ts"));
 
 const server = fakeServer();
@@ -87,6 +88,15 @@ describe("one log", () => {
     expect(screen.getByText("Delivered, at least: 100 %.")).toBeDefined();
     expect(screen.getByText(/Permitted: 50 to 99\.9999 %/)).toBeDefined();
     expect(answer()).toBe("");
+  });
+  it("has a link of very many bursts studied in the worker, and shows its pictures meanwhile", async () => {
+    const [link] = logOf(TEXT).linkTraces;
+    const runs = Array<number>(40_001).fill(1);
+    const large = { ...link, runs, packets: 40_001, lost: 20_000 } as LogDetail["linkTraces"][number];
+    await openLog({ linkTraces: [large], links: 1 });
+    const region = await sheet("S1 > C1");
+    expect(within(region).getByRole("slider", { name: "Stretch that is enlarged below" })).toBeDefined();
+    expect(await within(region).findByText(/Losses keep apart more than chance would have it/)).toBeDefined();
   });
   it("offers the original file, and a trainee neither renaming nor deleting nor use", async () => {
     const app = await openLog({ mayEdit: false }, "trainee");
