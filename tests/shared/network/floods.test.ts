@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { NO_SLOT, NOT_RECEIVED, RADIO_OFF } from "#shared/network/flood.ts";
 import { drawFloods, FloodProcess, type FloodRecord, senders } from "#shared/network/floods.ts";
+import { meanLinks } from "#shared/network/link-table.ts";
 import { receptionRatio } from "#shared/network/reception.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { at, type FloorInput, floorOf, type Setting, scenarioOn, timingOf, within } from "./floors.ts";
@@ -301,6 +302,43 @@ describe("two relays that send at once", () => {
     expect(p).toBeLessThan(0.99);
     expect(Math.abs(share - p)).toBeLessThan(within(p, ROUNDS) + 1e-5);
   });
+});
+
+it("a longer packet over the same link is lost more often, each by its own length", () => {
+  const messages = [1, 100].map((payloadBytes) => ({ id: `bytes-${payloadBytes}`, name: "Report", from: 1, to: [2], payloadBytes }));
+  const places = at([10, 100], [56.9, 100], [57, 101]);
+  const one = scenario(floorOf(places, { links }), {
+    nodes: { sensor: 1, controller: 2, actuator: 3 },
+    radio: { channels: { list: [26], hopping: "none" } },
+    round: { hops: 1, transmissions: 1, messages, periodS: 0.05 },
+  });
+  const ROUNDS = 4000;
+  const record = draw(one, ROUNDS);
+  const prr = messages.map(({ payloadBytes }) => meanLinks(one, 0, payloadBytes).find(({ from, to }) => from === 1 && to === 2)?.prr ?? -1);
+  messages.forEach(({ id }, i) => {
+    const share = column(one, record, `other/${id}`, 2).filter((step) => step === 1).length / ROUNDS;
+    expect(Math.abs(share - (prr[i] ?? -1)), id).toBeLessThan(within(prr[i] ?? 0, ROUNDS) + 1e-4);
+  });
+  expect((prr[0] ?? 0) - (prr[1] ?? 0)).toBeGreaterThan(0.2);
+});
+
+it("a node at rest hears a moving one fade as fast as that one moves, and another at rest for ever alike", () => {
+  const still = { ...links, fading: { kDb: -40, coherence: { type: "speed" as const, leastMPerS: 0 } } };
+  // To and fro by 10 cm: the distance hardly changes, the fading does.
+  const wayPoints = Array.from({ length: 199 }, (_, i) => ({ atS: 0.1 * (i + 1), xM: 47 + 0.1 * ((i + 1) % 2), yM: 100 }));
+  const changes = (moves: boolean) => {
+    const [first, second, third] = at([10, 100], [47, 100], [190, 100]) ?? [];
+    if (!first || !second || !third) throw new Error("three nodes");
+    const one = scenario(floorOf([first, moves ? { ...second, wayPoints } : second, third], { links: still }), {
+      nodes: { sensor: 1, controller: 2, actuator: 3 },
+      radio: { channels: { list: [26], hopping: "none" } },
+      round: { hops: 1, transmissions: 1, periodS: 0.05 },
+    });
+    const steps = column(one, draw(one, 390, 4), "main/measurement", 2);
+    return steps.filter((step, k) => k > 0 && step !== steps[k - 1]).length;
+  };
+  expect(changes(false)).toBe(0);
+  expect(changes(true)).toBeGreaterThan(60);
 });
 
 describe("hopping", () => {

@@ -118,6 +118,11 @@ describe("a round with several loops", () => {
 });
 
 describe("computing", () => {
+  it("and acts after the last of the command's slots, as either may bring it", () => {
+    const timing = roundTiming(shared([other("twice", { commandCopies: 2 })]));
+    expect(loopOf(timing, "twice").earliestActS).toBeCloseTo(slotOf(timing, "twice/command/2").endS, 12);
+    expect(slotOf(timing, "twice/command/2").startS).toBeGreaterThanOrEqual(slotOf(timing, "twice/command").endS);
+  });
   it("runs beside the slots of others, and the command waits for its end", () => {
     const timing = roundTiming(
       shared([other("arm", { computeS: 0.0001 })], ({ loops }) => {
