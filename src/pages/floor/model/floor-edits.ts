@@ -10,7 +10,7 @@ const FLOOR = ["floor"] as const;
 export const NODES = ["floor", "nodes"] as const;
 export const OBSTACLES = ["floor", "obstacles"] as const;
 export const INTERFERERS = ["floor", "interferers"] as const;
-export const LINKS = ["floor", "links"] as const;
+
 const MATRIX = ["floor", "links", "prr"] as const;
 const MOST_NUMBER = 999;
 
