@@ -40,6 +40,8 @@ export class BudgetLinks implements WaveLinks {
   private sendingCount = 0;
   private readonly fading: Fading | null;
   private readonly blocks: number[];
+  /** slots x channels, as they are asked for. */
+  private readonly planes: ReturnType<Fading["plane"]>[] = [];
   private plane: ReturnType<Fading["plane"]> | null = null;
   private round = 0;
   private slot = 0;
@@ -102,7 +104,11 @@ export class BudgetLinks implements WaveLinks {
   beginStep(step: number, start: number, end: number): void {
     const { channels, fading, activities } = this;
     this.hop = hopPlace(this.radio.channels.hopping, channels.length, this.occurrence, this.slots[this.slot].hopOffset, step);
-    if (fading) this.plane = fading.plane(this.blocks[this.slot], channels[this.hop]);
+    if (fading) {
+      const at = this.slot * channels.length + this.hop;
+      this.planes[at] ??= fading.plane(this.blocks[this.slot], channels[this.hop]);
+      this.plane = this.planes[at];
+    }
     this.sendingCount = 0;
     for (let k = 0; k < activities.length; k++) {
       if (this.shares[k * channels.length + this.hop] > 0 && activities[k].sendsIn(start, end)) this.sending[this.sendingCount++] = k;

@@ -5,7 +5,7 @@ import type { LinkFit } from "./fit.ts";
 import { hoursCovered, hoursThatDiffer } from "./hours.ts";
 import { type IndependenceTest, TOO_FEW_LOSSES } from "./independence.ts";
 import type { LinkTrace } from "./types.ts";
-import { counted, countText, durationText, shareText } from "./words.ts";
+import { atLeastText, counted, countText, durationText, shareText } from "./words.ts";
 
 /** One streak is called an outage when it makes so large a share of all losses and is so many mean bursts long. */
 const OUTAGE_SHARE = 0.3;
@@ -44,7 +44,7 @@ function told(trace: LinkTrace, fit: LinkFit, test: IndependenceTest): VerdictWo
       return {
         headline: packets === 1 ? "The only packet was not lost" : `None of ${counted(packets, "packet")} was lost`,
         sentences: [
-          `With ${shareText(fit.confidence)} confidence at least ${shareText(shownReliability(packets, 0, fit.confidence))} arrive, if losses are independent.`,
+          `With ${shareText(fit.confidence)} confidence at least ${atLeastText(shownReliability(packets, 0, fit.confidence))} arrive, if losses are independent.`,
           "Without a loss nothing can be said about bursts.",
         ],
       };

@@ -20,9 +20,20 @@ export function durationText(valueS: number): string {
 
 /** A share in percent, three digits; near 100 % with two digits of what is missing: "99.95 %". */
 export function shareText(share: number): string {
-  let missing = (1 - share) * 100;
+  const missing = (1 - share) * 100;
   if (missing > 10 || missing <= 0) return withUnit(significant(share * 100), "%");
+  return withUnit(String(Number((share * 100).toFixed(decimalsFor(missing)))), "%");
+}
+
+/** A lower limit, rounded down: 2 900 packets without a loss show 99.89 %, not 99.9 %. */
+export function atLeastText(share: number): string {
+  const scale = Number(`1e${decimalsFor((1 - share) * 100)}`);
+  return withUnit(String(Math.floor(share * 100 * scale + 1e-6) / scale), "%");
+}
+
+/** So many that two digits of what is missing to 100 % are seen. */
+function decimalsFor(missing: number): number {
   let decimals = 0;
-  for (; missing < 9.95 && decimals < 9; decimals++) missing *= 10;
-  return withUnit(String(Number((share * 100).toFixed(decimals))), "%");
+  for (let rest = missing; rest < 9.95 && decimals < 9; decimals++) rest *= 10;
+  return decimals;
 }

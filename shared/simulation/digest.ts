@@ -2,7 +2,7 @@ import { sha256 } from "@noble/hashes/sha2.js";
 import { bytesToHex, utf8ToBytes } from "@noble/hashes/utils.js";
 import type { RunResult } from "./result.ts";
 
-/** SHA-256 over the series and the rounds of a run, hex: everything from which figures, events and verdicts follow. */
+/** SHA-256 over the series and the rounds of a run, hex: everything from which figures, events and verdicts follow, but for what nodes spent. */
 export function digestRun(result: RunResult): string {
   const hash = sha256.create();
   // Doubles as they lie in memory: every machine that runs a browser or Node has the lowest byte first.

@@ -46,6 +46,10 @@ describe("the verdict in words", () => {
     expect(sentences[0]).toBe("With 95 % confidence at least 99.9 % arrive, if losses are independent.");
     expect(sentences[1]).toMatch(/nothing can be said about bursts/);
   });
+  it("never says more than the packets show: its lower limit is rounded down", () => {
+    const shown = (packets: number) => /at least ([\d.]+) %/.exec(words(traceOf([packets])).sentences[0] ?? "")?.[1];
+    expect([1, 10, 298, 299, 2900, 2994, 2995].map(shown)).toEqual(["5", "74", "98.9", "99", "99.89", "99.89", "99.9"]);
+  });
   it("has too few losses to tell below ten, and says which bursts would have shown", () => {
     const trace = traceOf(scattered(7, 300));
     expect(testIndependence(trace)).toMatchObject({ verdict: "too-few", burstThatWouldShow: 2 });
