@@ -95,6 +95,19 @@ describe("a loop that runs every n-th round", () => {
     }
   });
 
+  it("counts commands towards silence from the time on at which its network joins, by the network's rounds", () => {
+    const result = ran(
+      slowed(3, 0, (s) => {
+        s.pushes = [];
+        s.losses.process = { type: "bernoulli", measurement: 0, command: 1 };
+        s.loops[0].start.networkJoinsAtS = 0.5;
+        s.loops[0].actuator.silence = { afterLost: 3, reaction: "power-off", rampS: 0.2, brakeN: 0, resumeAfter: null };
+      }),
+    );
+    // Commands travel each 60 ms; those of 0.54, 0.60 and 0.66 s count, and act 12.5 ms later.
+    expect(result.events.find(({ kind }) => kind === "silence")?.atS).toBeCloseTo(0.6725, 9);
+  });
+
   it("refuses a first round that does not come", () => {
     const refused = prepareRun(slowed(3, 3));
     expect(refused.ok ? [] : refused.issues.map(({ path }) => path)).toEqual(["loops[0].timing.firstRound"]);

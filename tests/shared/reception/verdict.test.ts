@@ -275,6 +275,21 @@ describe("a log as a scenario's losses", () => {
   });
 });
 
+it("the streak histogram expects what independent losses bring, by enumeration of every outcome", () => {
+  const trace = traceOf([2, 3, 1, 1, 3]);
+  const { streaks, lossRatio } = fitLink(trace);
+  const expected = streaks.map(() => 0);
+  for (let outcome = 0; outcome < 2 ** trace.packets; outcome++) {
+    const bits = outcome.toString(2).padStart(trace.packets, "0");
+    const probability = [...bits].reduce((product, bit) => product * (bit === "1" ? lossRatio : 1 - lossRatio), 1);
+    for (const [streak] of bits.matchAll(/1+/g)) if (streak.length <= expected.length) expected[streak.length - 1] += probability;
+  }
+  expect(expected.length).toBe(3);
+  streaks.forEach(({ expectedIndependent }, i) => {
+    expect(expectedIndependent).toBeCloseTo(expected[i] ?? -1, 12);
+  });
+});
+
 it("the streak histogram adds up to all streaks, with what chance and channel would bring", () => {
   const fit = fitLink({ runs: [...inBursts(60, 4, 100), 30, 40] });
   const sum = (pick: (row: (typeof fit.streaks)[number]) => number): number => fit.streaks.reduce((total, row) => total + pick(row), 0);
