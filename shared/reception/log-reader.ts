@@ -205,6 +205,8 @@ export function logReader(mapping: ColumnMapping): LogReader {
       numbered: mapping.number !== null,
       intervalS: mapping.periodS,
       report: (kind, line, value, message) => {
+        // A stray number, of which only later rows show that it is one.
+        if (kind === "bad-row") report.rowsUsed--;
         trouble(kind, line, name, value, message);
       },
       begin: (number) => (isRound && before && !before.restarted && shared.wrapsAt ? nearest(number, before.lastNumber, shared.wrapsAt) : number),

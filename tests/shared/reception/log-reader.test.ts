@@ -152,6 +152,9 @@ describe("numbers that do not simply count on", () => {
     expect(runs(content)).toEqual([[400]]);
     expect(counts(content)).toEqual({ reset: 1 });
   });
+  it("does not count a stray number as used, in the middle nor at the end", () => {
+    expect(read(numbers(1, 2, 900_000, 3, 4, 700_000), SEQ).report).toMatchObject({ rows: 6, rowsUsed: 4, troubles: { "bad-row": { count: 2 } } });
+  });
   it("leaves a number out that fits neither before nor after", () => {
     const content = read(numbers(1, 2, 987_654, 3, 4), SEQ);
     expect(runs(content)).toEqual([[4]]);
