@@ -1,5 +1,4 @@
 /** Marks of nodes and interferers; the same in the plan, in its key and in tables. */
-import type { ReactNode } from "react";
 
 /** plain: no flood is shown. sends and receives: at the present step. */
 export type NodeState = "plain" | "starts" | "has" | "receives" | "sends" | "waiting" | "lost" | "off";
@@ -26,8 +25,10 @@ function notched(r: number): string {
 const R = 9.5;
 
 /** The mark around (0, 0), number inside. */
-export function NodeShape({ state, label, r = R }: { state: NodeState; label?: ReactNode; r?: number }) {
+export function NodeShape({ state, label, r: given }: { state: NodeState; label?: number; r?: number }) {
   const lost = state === "lost";
+  // Nothing is smaller than 12 px: a number of three figures makes its disc larger.
+  const r = given ?? (label !== undefined && label > 99 ? R + 2.5 : R);
   return (
     <>
       {state === "sends" && <circle r={r + 3.5} className="pl-ring" />}
@@ -35,7 +36,7 @@ export function NodeShape({ state, label, r = R }: { state: NodeState; label?: R
       {state === "off" && <path d={`M${-r * 0.72} ${r * 0.72}L${r * 0.72} ${-r * 0.72}`} className="pl-offbar" />}
       {label !== undefined && (
         <text
-          y={lost ? 4.2 : 4.2}
+          y={4.2}
           x={lost ? r + 5 : 0}
           textAnchor={lost ? "start" : "middle"}
           className={`pl-nt ${state === "starts" || state === "receives" ? "inv" : ""} ${lost ? "out halo2" : ""}`}
