@@ -94,6 +94,9 @@ export interface RunsProbability {
   atLeast: number;
 }
 
+/** Beside the largest term. Rounding keeps the smallest numbers of all from ever shrinking to 0. */
+const NOTHING = 1e-300;
+
 /**
  * Exact distribution of the number of runs in a random order of `lost` and `delivered` (Wald and Wolfowitz, 1940):
  * P(2k) ~ 2 c_k and P(2k + 1) ~ c_k (n - 2k)/k with c_k = C(lost-1, k-1) C(delivered-1, k-1). c is carried from its largest
@@ -116,10 +119,10 @@ export function runsProbability(runs: number, lost: number, delivered: number): 
     if (2 * k + 1 <= runs) below += odd;
     if (2 * k + 1 >= runs) above += odd;
   };
-  for (let k = peak, c = 1; k <= last && c > 0; c *= ((lost - k) / k) * ((delivered - k) / k), k++) add(k, c);
+  for (let k = peak, c = 1; k <= last && c > NOTHING; c *= ((lost - k) / k) * ((delivered - k) / k), k++) add(k, c);
   for (let k = peak - 1, c = 1; k >= 1; k--) {
     c *= (k / (lost - k)) * (k / (delivered - k));
-    if (c === 0) break;
+    if (c <= NOTHING) break;
     add(k, c);
   }
   return { atMost: Math.min(1, below / total), atLeast: Math.min(1, above / total) };

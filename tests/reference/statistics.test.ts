@@ -32,6 +32,13 @@ describe("distribution functions agree with SciPy", () => {
     for (const [p, a, b, x] of fixture.betaQuantile) near(betaQuantile(p, a, b), x);
     for (const [k, n, p, sum] of fixture.binomialAtMost) near(binomialAtMost(k, n, p), sum);
   });
+  it("counts runs of a billion losses as quickly as of a thousand", () => {
+    // So few runs of so many are impossible by chance, so many are sure; the middle is the mean of a normal distribution.
+    const { atMost, atLeast } = runsProbability(2, 1e9, 1e9);
+    expect(atMost).toBe(0);
+    expect(atLeast).toBeCloseTo(1, 10);
+    expect(runsProbability(1e9 + 1, 1e9, 1e9).atMost).toBeCloseTo(0.5, 4);
+  });
   it("counts runs exactly (whole-number counting)", () => {
     for (const [runs, lost, delivered, atMost, atLeast] of fixture.runsProbability) {
       const found = runsProbability(runs, lost, delivered);
