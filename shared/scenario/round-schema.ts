@@ -19,7 +19,7 @@ export const radioSchema = z.strictObject({
         .array(count("channel", "", 0, 39))
         .max(40)
         .default([]),
-      /** In the order of the list: none stays on its first, per-slot and per-step go on with every slot or step. */
+      /** In the order of the list: none stays on its first; the others begin where the slot's name says and go on each time it comes again, per-step with every step as well. */
       hopping: z.enum(["none", "per-slot", "per-step"]).default("per-step"),
     })
     .default({ list: [], hopping: "per-step" }),
