@@ -47,7 +47,7 @@ test("a rough recording is read, put right, saved, replayed in a scenario, and t
 
   await page.getByRole("button", { name: "Use in a scenario" }).click();
   const dialog = page.getByRole("dialog");
-  await dialog.getByLabel("Scenario").selectOption(id);
+  await dialog.getByLabel("Scenario", { exact: true }).selectOption(id);
   await dialog.getByText(/The run needs 400 rounds/).waitFor();
   await dialog.getByRole("button", { name: "Before the longest burst" }).click();
   await dialog.getByRole("button", { name: "Open the scenario with it" }).click();

@@ -189,8 +189,7 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
           <Embedded replayed={replayed} />
           {together && (
             <p className="note second">
-              One link from one packet on stands for both: both messages are lost in the same rounds. Start the command elsewhere if they shall not
-              be.
+              One link from one packet on stands for both: both messages are lost in the same rounds. Start the command elsewhere to keep them apart.
             </p>
           )}
           <p className="note second">
