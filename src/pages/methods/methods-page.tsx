@@ -19,7 +19,7 @@ export function MethodsPage() {
           </p>
         </div>
       </div>
-      <nav className="flex flex-wrap gap-x-6 gap-y-1 border-t-rule border-t-ink py-2" aria-label="Parts of this page">
+      <nav className="flex flex-wrap gap-x-6 gap-y-2 border-t-rule border-t-ink py-2" aria-label="Parts of this page">
         {METHODS.map(({ id, title }) => (
           <a key={id} href={`#${id}`}>
             {title}
