@@ -28,11 +28,22 @@ function energy(scenario: Scenario, seed: number): unknown {
     ...power,
     battery,
     bound,
-    floor: survey && { rounds: survey.rounds, seed, outagesLeftOut: survey.outagesLeftOut, nodes: survey.nodes },
+    floor: survey && {
+      rounds: survey.rounds,
+      seed,
+      outagesLeftOut: survey.outagesLeftOut,
+      deeperThanHopBound: deeper(survey, scenario.round.hops),
+      nodes: survey.nodes,
+    },
     floorNeeds: prepared && !prepared.ok ? prepared.issues.map(({ path, message }) => `${path}: ${message}`) : [],
     cautions: cautions(scenario, survey, utilisationHint(bound.sendDutyCycle, txPowerDbm)),
   };
 }
+
+/** Nodes that half of some message's floods reach later than in step H. */
+const deeper = ({ slots }: FloodSurvey, hops: number): number[] => [
+  ...new Set(slots.flatMap(({ nodes }) => nodes.filter(({ medianStep }) => (medianStep ?? 0) > hops).map(({ node }) => node))),
+];
 
 function cautions({ floor, radio }: Scenario, survey: FloodSurvey | null, atMost: ReturnType<typeof utilisationHint>): string[] {
   if (!survey) return atMost ? [atMost.text] : [];

@@ -206,7 +206,7 @@ function tooFew(pairs: readonly Pair[], tally: FloodTally, target: number): Advi
       severity: "hint",
       nodes,
       slot: null,
-      text: `${tally.done} rounds are too few to show ${wanted(target)}: ${how} it takes ${needed} floods until the 95 % interval lies above it.`,
+      text: `${tally.done} rounds are too few to show ${wanted(target)}: ${how} it takes ${needed} floods until the two-sided 95 % interval lies above it.`,
       figures: [{ label: "floods needed", value: needed, unit: "floods" }],
       edits: [],
     },

@@ -383,4 +383,4 @@ export type Push = z.infer<typeof pushSchema>;
 export type Limit = z.infer<typeof limitSchema>;
 export type LossProcess = z.infer<typeof lossProcessSchema>;
 export type Message = (typeof MESSAGES)[number];
-export { PHYS, type Phy } from "./round-schema.ts";
+export type { Phy } from "./round-schema.ts";

@@ -16,6 +16,8 @@ const WARM_RUNS = 12;
 
 let newest = 0;
 let runs = 0;
+/** Jobs under way: they go before warming up. */
+let tasks = 0;
 
 /** A turn of the event loop without the four milliseconds of nested timers. */
 const turn = (): Promise<void> =>
@@ -53,6 +55,7 @@ async function warmUp(mine: number, scenario: unknown, seed: number | null): Pro
   while (runs < WARM_RUNS) {
     runs++;
     await turn();
+    if (tasks > 0) return;
     const prepared = mine === newest ? prepareRun(scenario, seed) : null;
     if (!prepared?.ok || prepared.run.rounds > WARM_ROUNDS) return;
     prepared.run.advance(Number.POSITIVE_INFINITY);
@@ -69,14 +72,19 @@ async function task<T>(kind: TaskKind, scenario: unknown, start: (prepared: Prep
   const prepared = prepareFloor(scenario);
   if (!prepared.ok) return prepared;
   const job = start(prepared);
-  for (let since = performance.now(); ; ) {
-    const { done, value } = job.next();
-    if (done) return { ok: true, value };
-    if (performance.now() - since < STRETCH_MS) continue;
-    onProgress?.(value);
-    await turn();
-    if (newestTask.get(kind) !== mine) return { ok: false, cancelled: true };
-    since = performance.now();
+  tasks++;
+  try {
+    for (let since = performance.now(); ; ) {
+      const { done, value } = job.next();
+      if (done) return { ok: true, value };
+      if (performance.now() - since < STRETCH_MS) continue;
+      onProgress?.(value);
+      await turn();
+      if (newestTask.get(kind) !== mine) return { ok: false, cancelled: true };
+      since = performance.now();
+    }
+  } finally {
+    tasks--;
   }
 }
 

@@ -311,7 +311,7 @@ function FloorStudio({
             onRemove={() => takeAway(`interferer:${interfererChosen}`)}
           />
         )}
-        {flood && slot && usable && !idle && (
+        {flood && slot && timing && usable && !idle && (
           <FloodPanel
             floor={floor}
             record={usable}
@@ -319,7 +319,7 @@ function FloorStudio({
             slotIndex={slotIndex}
             flood={flood}
             round={round}
-            periodS={periodS}
+            timing={timing}
             seed={seed}
             onRound={goToRound}
           />

@@ -1,13 +1,14 @@
-import { useEffect, useState } from "react";
+import { useEffect, useMemo, useState } from "react";
+import { deeperThanBound } from "#shared/network/depth.ts";
 import type { FloodRecord } from "#shared/network/floods.ts";
-import type { Slot } from "#shared/network/round.ts";
+import type { RoundTiming, Slot } from "#shared/network/round.ts";
 import type { Floor } from "#shared/scenario/floor-schema.ts";
 import { Button, ButtonPair, IconButton } from "#src/components/ui/button.tsx";
 import { Mark } from "#src/components/ui/mark.tsx";
 import { Section } from "#src/components/ui/section.tsx";
 import { useToast } from "#src/components/ui/toast.tsx";
 import { msText, significant, withUnit } from "#src/lib/format.ts";
-import { type FloodShown, floodSentences, nextMissed, nextOccurring } from "../model/flood-view.ts";
+import { type FloodShown, floodSentences, nextMissed, nextOccurring, shortName } from "../model/flood-view.ts";
 
 interface FloodPanelProps {
   floor: Floor;
@@ -16,13 +17,13 @@ interface FloodPanelProps {
   slotIndex: number;
   flood: FloodShown;
   round: number;
-  periodS: number;
+  timing: RoundTiming;
   seed: number;
   onRound: (round: number) => void;
 }
 
 /** Which flood of which round, and what became of it. */
-export function FloodPanel({ floor, record, slot, slotIndex, flood, round, periodS, seed, onRound }: FloodPanelProps) {
+export function FloodPanel({ floor, record, slot, slotIndex, flood, round, timing, seed, onRound }: FloodPanelProps) {
   const toast = useToast();
   const back = nextOccurring(slot, record.rounds, round, -1);
   const on = nextOccurring(slot, record.rounds, round, 1);
@@ -37,8 +38,9 @@ export function FloodPanel({ floor, record, slot, slotIndex, flood, round, perio
       });
     else onRound(found);
   };
+  const deep = useMemo(() => deeperThanBound(record, timing), [record, timing]);
   const sentences = floodSentences(flood, floor);
-  const atS = round * periodS + slot.floodStartS;
+  const atS = round * timing.periodS + slot.floodStartS;
   return (
     <Section title="This flood" sum={`round ${round} of ${record.rounds - 1}, seed ${seed}`} defaultOpen>
       <div className="fl-round">
@@ -80,6 +82,15 @@ export function FloodPanel({ floor, record, slot, slotIndex, flood, round, perio
           </p>
         ))}
       </div>
+      {deep.length > 0 && (
+        <p className="verdict">
+          <Mark state="near" size={16} />
+          <span>
+            Deeper than the hop bound of {timing.hops}: {deep.map(({ node, step }) => `${shortName(floor, node)} in step ${step}`).join(", ")}. Most
+            floods get there later than the slot was counted for; a larger hop bound gives them back their tries.
+          </span>
+        </p>
+      )}
     </Section>
   );
 }

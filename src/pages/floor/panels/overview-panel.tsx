@@ -40,7 +40,7 @@ export function OverviewPanel({ floor, roles, studio }: OverviewProps) {
         )}
       </Section>
       {obstacles.length > 0 && (
-        <Section title="Walls and blocks" sum={String(obstacles.length)} defaultOpen={obstacles.length <= 12}>
+        <Section title="Walls and blocks" sum={String(obstacles.length)} defaultOpen={obstacles.length <= 4}>
           <List>
             {obstacles.map((obstacle, i) => (
               // biome-ignore lint/suspicious/noArrayIndexKey: obstacles have no other name
