@@ -13,9 +13,6 @@ export function roundsToEmbed(durationS: number, periodS: number): { rounds: num
   return { rounds, reserve: Math.max(LEAST_RESERVE, Math.ceil(rounds / 10)) };
 }
 
-/** A log that is quicker than the round: every so many-th of its packets stands for a round. */
-export const everyOf = (intervalS: number | null, periodS: number): number => (intervalS === null ? 1 : Math.max(1, Math.round(periodS / intervalS)));
-
 export interface Replayed {
   runs: number[];
   packets: number;

@@ -1,6 +1,7 @@
 import { Fragment, useEffect, useId, useMemo, useState } from "react";
 import type { LogDetail } from "#shared/api/logs.ts";
 import { slowerThanRound } from "#shared/reception/claim.ts";
+import { packetsPerRound } from "#shared/reception/loss-process.ts";
 import { type LinkTrace, linkName } from "#shared/reception/types.ts";
 import { counted, countText, durationText } from "#shared/reception/words.ts";
 import type { LossProcess } from "#shared/scenario/schema.ts";
@@ -9,17 +10,7 @@ import { PickField } from "#src/components/ui/choice.tsx";
 import { Field } from "#src/components/ui/field.tsx";
 import { msText } from "#src/lib/format.ts";
 import { lossText } from "../model/log-words.ts";
-import {
-  everyOf,
-  fittedProcess,
-  KINDS,
-  MOST_RUNS,
-  type Replayed,
-  replayFrom,
-  replayProcess,
-  roundsToEmbed,
-  type UseKind,
-} from "../model/loss-process.ts";
+import { fittedProcess, KINDS, MOST_RUNS, type Replayed, replayFrom, replayProcess, roundsToEmbed, type UseKind } from "../model/loss-process.ts";
 import { indexRuns, longestBurst } from "../model/run-index.ts";
 import { figuresOf } from "../model/study.ts";
 import { TapeStrip } from "../pictures/tape-strip.tsx";
@@ -81,7 +72,7 @@ export function LogChoice({ log, periodS, durationS, link = 0, onOutcome }: LogC
   const [then, setThen] = useState<"repeat" | "delivered" | "error">("repeat");
 
   const chosen = useMemo(() => [measurement, command].map((at) => links[at] as LinkTrace), [links, measurement, command]);
-  const every = useMemo(() => chosen.map(({ intervalS }) => everyOf(intervalS, periodS)), [chosen, periodS]);
+  const every = useMemo(() => chosen.map((one) => packetsPerRound(one, periodS)), [chosen, periodS]);
   const figures = useMemo(() => chosen.map((one, i) => figuresOf(one, every[i])), [chosen, every]);
   const { rounds, reserve } = roundsToEmbed(durationS, periodS);
   const starts = startTexts.map((text, i) => readStart(text, chosen[i]?.packets ?? 0));

@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
+import { packetsPerRound } from "#shared/reception/loss-process.ts";
 import { lossProcessSchema } from "#shared/scenario/schema.ts";
-import { everyOf, fittedProcess, MOST_RUNS, replayFrom, replayProcess, roundsToEmbed } from "#src/pages/logs/model/loss-process.ts";
+import { fittedProcess, MOST_RUNS, replayFrom, replayProcess, roundsToEmbed } from "#src/pages/logs/model/loss-process.ts";
 
 describe("a replay", () => {
   it("takes the rounds of the run and a tenth more, at least a hundred", () => {
@@ -30,9 +31,9 @@ describe("a replay", () => {
     expect(lossProcessSchema.safeParse(process).success).toBe(true);
   });
   it("takes one of so many packets where the log is quicker than the round", () => {
-    expect(everyOf(0.01, 0.02)).toBe(2);
-    expect(everyOf(0.2, 0.02)).toBe(1);
-    expect(everyOf(null, 0.02)).toBe(1);
+    expect(packetsPerRound({ intervalS: 0.01 }, 0.02)).toBe(2);
+    expect(packetsPerRound({ intervalS: 0.2 }, 0.02)).toBe(1);
+    expect(packetsPerRound({ intervalS: null }, 0.02)).toBe(1);
     expect(replayFrom([1, 1, 1, 1, 2], 0, 3, 2)).toMatchObject({ packets: 3, lost: 0 });
     expect(replayFrom([1, 1, 1, 1, 2], 1, 2, 2)).toMatchObject({ packets: 2, lost: 2 });
   });
