@@ -1,10 +1,15 @@
 /** Rules of floor, radio and round across fields: who stands where, who sends to whom, which channels there are. */
-import { channelRange } from "#shared/network/channels.ts";
+import { channelRange, channelsInUse } from "#shared/network/channels.ts";
+import { blockS } from "#shared/network/fading.ts";
+import { MID_BAND_MHZ } from "#shared/network/link-budget.ts";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Floor } from "./floor-schema.ts";
 import type { Report } from "./report.ts";
 import { roundsOf } from "./rounds.ts";
 import type { Scenario } from "./schema.ts";
+
+/** Most states of fading that a run keeps, pairs of nodes x channels x blocks of coherence in a round; 28 bytes each. */
+const MAX_FADING = 10_000_000;
 
 /** Most entries of the record of all floods of a run, rounds x slots x nodes, one byte each. */
 const MAX_FLOOD_RECORD = 100_000_000;
@@ -26,6 +31,7 @@ export function checkFloor(report: Report, scenario: Scenario, timing: RoundTimi
   checkNodes(report, floor);
   checkThings(report, floor);
   checkUse(report, scenario, floor, floods);
+  checkFading(report, scenario, floor, timing);
   const record = roundsOf(scenario) * timing.slots.length * floor.nodes.length;
   if (floods && record > MAX_FLOOD_RECORD) {
     const most = Math.floor(MAX_FLOOD_RECORD / (timing.slots.length * floor.nodes.length));
@@ -35,6 +41,22 @@ export function checkFloor(report: Report, scenario: Scenario, timing: RoundTimi
       `${roundsOf(scenario)} rounds of ${timing.slots.length} floods over ${floor.nodes.length} nodes are more than a run can record; at most ${most} rounds, ${(most * scenario.round.periodS).toFixed(1)} s.`,
     );
   }
+}
+
+/** Fading that changes within the round is kept for every block of it, pair and channel. */
+function checkFading(report: Report, { radio }: Scenario, { links, nodes }: Floor, { slots, ns }: RoundTiming): void {
+  if (links.type !== "budget" || !links.fading) return;
+  const block = blockS(links.fading, MID_BAND_MHZ) * 1e9;
+  const blocks = new Set(ns.slots.map(({ floodStart }) => Math.floor(floodStart / block))).size;
+  const channels = radio.channels.hopping === "none" ? 1 : channelsInUse(radio).length;
+  const states = ((nodes.length * (nodes.length - 1)) / 2) * channels * blocks;
+  if (states <= MAX_FADING) return;
+  const { type } = links.fading.coherence;
+  report.add(
+    "out-of-range",
+    `floor.links.fading.coherence.${type === "time" ? "coherenceS" : "leastMPerS"}`,
+    `Fading of ${nodes.length} nodes on ${channels} channels that changes ${blocks} times in the ${slots.length} slots of a round has ${states} states, more than the ${MAX_FADING} that a run can keep. Let it change more slowly, or use fewer channels or nodes.`,
+  );
 }
 
 function checkRhythm(report: Report, path: string, what: string, { everyRounds, firstRound }: { everyRounds: number; firstRound: number }): void {
