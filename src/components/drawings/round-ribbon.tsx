@@ -155,10 +155,12 @@ function Ribbon({ timing, reachedShare, selected, onSelect, tabled, untilS, widt
         ))}
         {heads?.map(
           ({ name, x, anchor, row }) =>
-            row < rows - 1 && <path key={name} d={`M${anchor === "start" ? x - 1.5 : x + 1.5} ${37 + row * 34}V${top + 4}`} className="lead" />,
+            row < rows - 1 && (
+              <path key={`${name} ${x}`} d={`M${anchor === "start" ? x - 1.5 : x + 1.5} ${37 + row * 34}V${top + 4}`} className="lead" />
+            ),
         )}
         {heads?.map(({ name, detail, x, anchor, row, coral }) => (
-          <g key={name}>
+          <g key={`${name} ${x}`}>
             <text x={x} y={18 + row * 34} className={`${coral ? "txc" : "txb"} halo2`} textAnchor={anchor}>
               {name}
             </text>

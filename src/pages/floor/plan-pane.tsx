@@ -155,7 +155,11 @@ export function PlanPane(props: PlanPaneProps) {
           {picture && <PictureLayer picture={preview?.kind === "picture" ? { ...picture, ...preview.spot } : picture} />}
           <HallClip size={scene.size} prefix={prefix} />
           <g clipPath={`url(#${prefix}-hall)`}>
-            {contours && <WaterLayer contours={contours} step={step} />}
+            {contours && tool !== "picture" && (
+              <g className={picture ? "pl-shallow" : undefined}>
+                <WaterLayer contours={contours} step={step} />
+              </g>
+            )}
             <FoulLayer fouled={fouled} prefix={prefix} />
             {contours && <FrontLayer contours={contours} step={step} />}
           </g>

@@ -59,7 +59,7 @@ export function LogTable({ teamId, items, query, change, waiting }: LogRowsProps
               Lost
             </SortHead>
             <th scope="col" className="r">
-              Packet each
+              One packet every
             </th>
             <th scope="col">Losses</th>
             <th scope="col">Reading</th>

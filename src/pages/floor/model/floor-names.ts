@@ -71,7 +71,7 @@ export function linkModelText(links: LinkBudgetSettings, { interferers }: Floor)
     `${word} path loss${detail}`,
     shadowing.sigmaDb > 0 ? `shadowing ${withUnit(significant(shadowing.sigmaDb, 3), "dB")}, the same in every run` : "no shadowing",
     ...(fading ? ["averaged over Rician fading"] : []),
-    ...(interferers.length === 1 ? [`${interferers[0].name.toLowerCase() || "the interferer"} averaged over on and off`] : []),
+    ...(interferers.length === 1 ? [`${interferers[0].name || "the interferer"} averaged over on and off`] : []),
     ...(interferers.length > 1 ? ["interferers averaged over on and off"] : []),
   ];
   return `${parts.join("; ")}.`;

@@ -8,7 +8,7 @@ import type { LossProcess, Scenario } from "#shared/scenario/schema.ts";
 import { chargeText, lifeText } from "#src/components/drawings/spent.ts";
 import { counted, countText, msText, percentText, significant, withUnit } from "#src/lib/format.ts";
 import { numbersAsText } from "./channel-text.ts";
-import { HOPPING, wordOf } from "./choices.ts";
+import { BEACON_MISSED, HOPPING, wordOf } from "./choices.ts";
 import { getAt, type Path } from "./json-path.ts";
 
 const everyText = ({ everyRounds }: { everyRounds: number }): string => (everyRounds > 1 ? `every ${everyRounds} rounds` : "every round");
@@ -85,6 +85,7 @@ export const replayText = ({ log, measurement }: Replay): string =>
 export const ROUND_WHOLES: Record<string, (value: unknown) => string> = {
   "radio.channels.list": (value) => ((value as number[]).length > 0 ? numbersAsText(value) : "the PHY's last"),
   "radio.reception.rows": (value) => counted((value as unknown[]).length, "row"),
+  "round.beacon.needed": (value) => wordOf(BEACON_MISSED, value ? "yes" : "no"),
   "round.messages[].to": (value) => ((value as number[]).length > 0 ? numbersAsText(value) : "all"),
   "loops[].nodes": (value) => nodesText(value as Nodes),
   "round.otherLoops[].nodes": (value) => nodesText(value as Nodes),

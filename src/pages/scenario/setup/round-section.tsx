@@ -103,9 +103,9 @@ function Savings({ timing }: { timing: RoundTiming }) {
                   small
                   impossible={applied ? null : "The header is empty already: encode a signal on fewer bits."}
                   onClick={() => applied && edit({ kind: "put", json: applied })}
-                  aria-label={`Take: ${words(saving, draft.json)}`}
+                  aria-label={`Apply: ${words(saving, draft.json)}`}
                 >
-                  Take
+                  Apply
                 </Button>
               )}
             </li>

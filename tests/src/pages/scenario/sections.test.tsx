@@ -93,7 +93,7 @@ describe("the sections of the set-up", () => {
     await openSection(user, "Round");
     await typeInto(user, "round.periodS", "15");
     await screen.findByText(/What would make room/);
-    await user.click(screen.getByRole("button", { name: /^Take: Transmissions/ }));
+    await user.click(screen.getByRole("button", { name: /^Apply: Transmissions/ }));
     await waitFor(() => expect(screen.queryByText(/What would make room/)).toBeNull());
     expect(field("round.transmissions").value).toBe("1");
     await untilRun(({ stale }) => expect(stale).toBe("false"));
