@@ -34,14 +34,15 @@ function figuresOf(link: LinkTrace, { counts, lossRatio, clopperPearson, gilbert
   }
   if (gilbertElliott) {
     const { goodToBad, badToGood, meanBurst, meanGap } = gilbertElliott;
+    const packets = (mean: number) => `${significant(mean)} ${significant(mean) === "1" ? "packet" : "packets"}`;
     const percent = (share: number) => withUnit(significant(share * 100), "%");
     figures.push(
       {
         name: "Mean burst, fitted",
-        value: `${significant(meanBurst)} packets`,
+        value: packets(meanBurst),
         more: `bad to good ${percent(badToGood)}; if independent ${significant(1 / (1 - lossRatio))}`,
       },
-      { name: "Mean gap, fitted", value: `${significant(meanGap)} packets`, more: `good to bad ${percent(goodToBad)}` },
+      { name: "Mean gap, fitted", value: packets(meanGap), more: `good to bad ${percent(goodToBad)}` },
     );
   }
   if (link.rssi) {
