@@ -22,7 +22,8 @@ interface LogRowsProps {
 }
 
 const lossOf = ({ lost, packets }: LogItem): string => (packets > 0 ? lossText(lost / packets) : "none");
-const paceText = ({ intervalS }: LogItem): string => (intervalS === null ? "not known" : durationText(intervalS));
+/** Logs kept before their lists said more have neither pace nor verdicts here. */
+const paceText = ({ intervalS, verdicts }: LogItem): string => (intervalS !== null ? durationText(intervalS) : verdicts === null ? "–" : "not known");
 const usedText = ({ scenarios }: LogItem): string => (scenarios === 0 ? "not used" : `in ${counted(scenarios, "scenario")}`);
 const troubleText = ({ troubles }: LogItem): string => (troubles === 0 ? "read without a remark" : counted(troubles, "remark"));
 
