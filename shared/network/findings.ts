@@ -114,6 +114,9 @@ export function deepest(tally: FloodTally, hops: number): { places: number[]; st
 function deepNodes(scenario: Scenario, timing: RoundTiming, tally: FloodTally): Advice[] {
   const { places, step } = deepest(tally, timing.hops);
   if (places.length === 0) return [];
+  const slots = timing.slots
+    .filter((_, i) => places.some((place) => (medianStep(tally.slots[i], place) ?? 0) > timing.hops))
+    .map(({ label }) => label.toLowerCase());
   const nodes = places.map((place) => tally.nodes[place]);
   const [are, them] = nodes.length > 1 ? ["are", "them"] : ["is", "it"];
   return [
@@ -122,7 +125,7 @@ function deepNodes(scenario: Scenario, timing: RoundTiming, tally: FloodTally): 
       severity: "warning",
       nodes,
       slot: null,
-      text: `${capital(listWords(nodes.map((id) => nodeWords(scenario, id))))} ${are} deeper than the hop bound of ${timing.hops}: half of the floods reach ${them} in step ${step} or only then, so ${nodes.length > 1 ? "they have" : "it has"} fewer tries than the bound promises.`,
+      text: `${capital(listWords(nodes.map((id) => nodeWords(scenario, id))))} ${are} deeper than the hop bound of ${timing.hops}: half of the floods of ${listWords(slots)} reach ${them} in step ${step} at the latest, so ${nodes.length > 1 ? "they have" : "it has"} fewer tries than the bound promises.`,
       figures: [
         { label: "hop bound", value: timing.hops, unit: "steps" },
         { label: "latest median step", value: step, unit: "steps" },

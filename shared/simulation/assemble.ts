@@ -163,5 +163,11 @@ function scriptedEvents(raw: Raw): RunEvent[] {
     events.push({ atS: outage.fromS, kind: "outage", text: outage.lossProbability < 1 ? "jamming" : "outage" });
     events.push({ atS: outage.untilS, kind: "outage-ends", text: "ends" });
   }
+  for (const { id, name, outages } of scenario.floor?.nodes ?? []) {
+    for (const { fromS, untilS } of outages) {
+      events.push({ atS: fromS, kind: "outage", text: `node ${id}${name && ` ${name}`} out` });
+      if (untilS !== null) events.push({ atS: untilS, kind: "outage-ends", text: "ends" });
+    }
+  }
   return events.filter((event) => event.atS < end || (event.kind.endsWith("-ends") && event.atS <= end));
 }

@@ -71,5 +71,5 @@ test("an event moves the cursor to its time, and playing moves on from there", a
   const time = page.getByRole("slider").first();
   await expect.poll(async () => Number(await time.getAttribute("aria-valuenow"))).toBeCloseTo(4, 1);
   await page.getByRole("button", { name: /^Play/ }).first().click();
-  await expect.poll(async () => Number(await time.getAttribute("aria-valuenow"))).toBeGreaterThan(4.2);
+  await expect.poll(async () => Number(await time.getAttribute("aria-valuenow")), { timeout: 20_000 }).toBeGreaterThan(4.2);
 });

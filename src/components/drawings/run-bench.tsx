@@ -96,7 +96,13 @@ export function RunBench({ scenario, timing, result, stale = false, cursor: give
           <p className="note-line">
             {stairsNote(reached?.reached, reached?.rounds)} {spent}
           </p>
-          <SlotTable timing={timing} floor={scenario.floor} delivered={delivered} deliveredOver="in this run" fileStem={scenario.name} />
+          <SlotTable
+            timing={timing}
+            floor={scenario.floor}
+            delivered={delivered}
+            deliveredOver="in the floods of the planned rounds; outages of the losses come on top"
+            fileStem={scenario.name}
+          />
         </section>
       </div>
     </PlotCursorContext>

@@ -72,8 +72,8 @@ export function EmptyFloor({ onLaidOut }: { onLaidOut: () => void }) {
               </Button>
             </div>
             <p className="note muted">
-              The arrangement follows from the size, its links from ITU-R P.1238, industrial, without line of sight; everything can be changed
-              afterwards.
+              The arrangement follows from the size, its links from ITU-R P.1238, industrial, without line of sight; transmit power is lowered to what
+              takes about three hops across. Everything can be changed afterwards.
             </p>
           </div>
           <figure className="fl-sketch">{example?.floor && <Sketch scenario={example} />}</figure>

@@ -7,6 +7,7 @@ import { NO_SLOT, received } from "#shared/network/flood.ts";
 import { prepareFloor } from "#shared/network/prepare.ts";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Floor } from "#shared/scenario/floor-schema.ts";
+import { pathText } from "#shared/scenario/parse.ts";
 import { roundsOf } from "#shared/scenario/rounds.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { useTeam } from "#src/app/session.tsx";
@@ -255,7 +256,12 @@ function FloorStudio({
     (advice: Advice) => {
       const next = advice.edits.reduce<unknown>((changed, { path, value }) => setAt(changed, path, value), latest.current);
       edit({ kind: "put", json: next, forget: advice.edits.map(({ path }) => path) });
-      toast({ text: "The change is made; undo takes it back. Survey again to see what it brings." });
+      toast({
+        text: `Set: ${advice.edits
+          .map(({ path, value }) => `${pathText(path)} = ${JSON.stringify(value)}`)
+          .join(", ")
+          .slice(0, 120)}. Undo takes it back; survey again to see what it brings.`,
+      });
     },
     [edit, toast],
   );
@@ -504,7 +510,11 @@ const RoundSheet = memo(function RoundSheet({ timing, floor, shares, rounds, slo
           timing={timing}
           floor={floor}
           delivered={shares?.delivered}
-          deliveredOver={shares ? `in the ${shares.rounds === rounds ? "" : "first "}${shares.rounds} rounds of this run` : undefined}
+          deliveredOver={
+            shares
+              ? `in the ${shares.rounds === rounds ? "" : "first "}${shares.rounds} rounds planned for this run; outages of the losses come on top`
+              : undefined
+          }
           selected={slotId}
           onSelect={onSlot}
           fileStem={name}

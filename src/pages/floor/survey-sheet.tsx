@@ -337,7 +337,7 @@ function NodeFigures({
       </Scroller>
       <p className="note muted">
         Half by step: the step by which half of all floods have arrived, its distance in hops where links are good. Intervals after Clopper and
-        Pearson; {counted(floor.nodes.length, "node")} and one in twenty misses. Battery from the radio alone.
+        Pearson: of {counted(floor.nodes.length, "interval")} about one in twenty misses the true value. Battery from the radio alone.
         {survey.outagesLeftOut.length > 0 && ` Scripted outages of ${counted(survey.outagesLeftOut.length, "node")} are left out.`}
       </p>
     </>

@@ -1,4 +1,6 @@
 /** A first arrangement for the loops of a scenario: who takes part, and relays between them, at places that follow from the size. */
+import { MID_BAND_MHZ, noiseDbm } from "#shared/network/link-budget.ts";
+import { pathLoss } from "#shared/network/path-loss.ts";
 import type { Floor, FloorNode } from "#shared/scenario/floor-schema.ts";
 import { floorSchema } from "#shared/scenario/floor-schema.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
@@ -20,6 +22,18 @@ const HALL_LINKS: Floor["links"] = {
   captureDb: 3,
   concurrencyPenaltyDb: 3,
 };
+
+/** The wave is to take some steps from corner to corner, or there would be nothing to relay: power for this part of the way, but at least from relay to relay. */
+const HOPS_ACROSS = 4;
+/** Signal above noise with which a packet arrives nearly always, dB. */
+const WANTED_DB = 3;
+
+/** Transmit power, whole dBm from -40 up, that carries over such a distance in this hall. */
+function powerForHops(distanceM: number): number {
+  if (HALL_LINKS.type !== "budget") return 0;
+  const noise = noiseDbm(2, HALL_LINKS.noiseFigureDb);
+  return Math.max(-40, Math.round(noise + WANTED_DB + pathLoss(HALL_LINKS.pathLoss, MID_BAND_MHZ)(distanceM)));
+}
 
 export const emptyFloor = (name: string, widthM: number, depthM: number): Floor => floorSchema.parse({ name, widthM, depthM });
 
@@ -63,6 +77,8 @@ export function exampleFloor(scenario: Scenario, name: string, widthM: number, d
     }
   const floor: Floor = { ...emptyFloor(name, widthM, depthM), nodes, links: HALL_LINKS };
   let next = setAt(scenario, ["floor"], floor) as Scenario;
+  const enough = powerForHops(Math.max(RELAY_EVERY_M, Math.hypot(widthM, depthM) / HOPS_ACROSS));
+  if (enough < scenario.radio.txPowerDbm) next = setAt(next, ["radio", "txPowerDbm"], enough) as Scenario;
   next = setAt(next, ["loops", 0, "nodes"], { sensor, controller, actuator }) as Scenario;
   otherNodes.forEach((one, i) => {
     next = setAt(next, ["round", "otherLoops", i, "nodes"], one) as Scenario;

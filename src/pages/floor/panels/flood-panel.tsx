@@ -42,7 +42,7 @@ export function FloodPanel({ floor, record, slot, slotIndex, flood, round, timin
   const sentences = floodSentences(flood, floor);
   const atS = round * timing.periodS + slot.floodStartS;
   return (
-    <Section title="This flood" sum={`round ${round} of ${record.rounds - 1}, seed ${seed}`} defaultOpen>
+    <Section title="This flood" sum={`round ${round} of ${record.rounds}, seed ${seed}`} defaultOpen>
       <div className="fl-round">
         <ButtonPair label="Round">
           <IconButton

@@ -1,6 +1,9 @@
 import { describe, expect, it } from "vitest";
+import { surveyFloods } from "#shared/network/survey.ts";
+import { TEMPLATES } from "#shared/scenario/templates.ts";
 import { placeLabels } from "#src/components/plan/label-places.ts";
 import { frameFor, panned, snapped, toPoint, toSpot, wholeView, zoomed } from "#src/components/plan/plan-view.ts";
+import { exampleFloor } from "#src/pages/floor/model/example-floor.ts";
 import { readMatrix } from "#src/pages/floor/model/matrix-text.ts";
 import { rescaled } from "#src/pages/floor/model/picture-scale.ts";
 import { pictureProblem } from "#src/pages/floor/panels/picture-panel.tsx";
@@ -83,5 +86,21 @@ describe("a picture under the plan", () => {
     expect(pictureProblem({ name: "hall.png", size: 12_000_000, type: "image/png" })).toMatch(/12.*MB; at most 10/);
     expect(pictureProblem({ name: "hall.pdf", size: 1000, type: "application/pdf" })).toMatch(/no PNG or JPEG/);
     expect(pictureProblem({ name: "hall.jpg", size: 1000, type: "image/jpeg" })).toBeNull();
+  });
+});
+
+describe("the first arrangement", () => {
+  it("delivers, and in a hall takes the wave over several hops", () => {
+    for (const [widthM, depthM, least] of [
+      [20, 12, 1],
+      [60, 30, 3],
+      [72, 40, 3],
+    ] as const) {
+      const scenario = exampleFloor(structuredClone(TEMPLATES[0].scenario), "Hall", widthM, depthM);
+      const { slots } = surveyFloods(scenario, { rounds: 300, seed: 1, withoutAdvice: true });
+      const deepest = Math.max(...slots.flatMap(({ nodes }) => nodes.map(({ medianStep }) => medianStep ?? 99)));
+      expect(deepest, `${widthM} x ${depthM} m`).toBeGreaterThanOrEqual(least);
+      for (const { delivered } of slots) expect(delivered.ratio, `${widthM} x ${depthM} m`).toBeGreaterThan(0.98);
+    }
   });
 });
