@@ -155,7 +155,7 @@ function AdviceList({
 /** Shares and counts come without a unit: what is at most 1 and no whole number is a share. */
 function figureText(value: number, unit: string): string {
   if (unit === "s") return withUnit(significant(value * 1000, 3), "ms");
-  if (unit !== "") return withUnit(significant(value, 3), unit);
+  if (unit !== "") return withUnit(Number.isInteger(value) ? fixed(value, 0) : significant(value, 3), unit);
   return value > 0 && value < 1 ? percentText(value, value > 0.99 ? 3 : 1) : significant(value, 4);
 }
 

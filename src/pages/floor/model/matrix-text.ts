@@ -38,9 +38,9 @@ export function readMatrix(text: string, nodes: number | null): MatrixRead {
   const decimalComma = by !== ",";
   let table = lines.map((line) => cells(line, by));
   const isNumber = (cell: string) => numberIn(cell, decimalComma) !== null;
-  // Names of nodes in the first row and column are taken for what they are.
+  // Names of nodes in the first row and column are taken for what they are; one word among numbers is a mistake, not a name.
   const width = Math.max(...table.map((row) => row.length));
-  const headed = table.length === width + 1 || (table.length === width && width - 1 === nodes) || !table[0].every(isNumber);
+  const headed = table.length === width + 1 || (table.length === width && width - 1 === nodes) || !table[0].slice(1).some(isNumber);
   if (headed && table.length > 1) table = table.slice(1);
   const rowsNamed = table.every((row) => row.length === table.length + 1);
   if (rowsNamed) table = table.map((row) => row.slice(1));

@@ -31,7 +31,10 @@ const entryAt = <T>(json: unknown, path: Path) => getAt(json, path) as T;
 
 export const ROUND_LISTS: Record<string, { name: (json: unknown, path: Path) => string; say: (json: unknown, path: Path) => string }> = {
   "round.otherLoops": {
-    name: (json, path) => `Loop ${entryAt<OtherLoop>(json, path).name}`,
+    name: (json, path) => {
+      const { name } = entryAt<OtherLoop>(json, path);
+      return /^loop\b/i.test(name) ? name : `Loop ${name}`;
+    },
     say: (json, path) => otherLoopText(entryAt<OtherLoop>(json, path)),
   },
   "round.messages": {

@@ -89,6 +89,13 @@ describe("a picture under the plan", () => {
   });
 });
 
+describe("a pasted table", () => {
+  it("takes a row of names for names, and a word among numbers for a mistake", () => {
+    expect(readMatrix("A B C\n0 0.9 0.5\n0.8 0 0.7\n0.6 0.5 0", 3)).toMatchObject({ ok: true });
+    expect(readMatrix("0 0.9 x\n0.8 0 0.7\n0.6 0.5 0", 3)).toEqual({ ok: false, problem: "Row 1, column 3: \u201cx\u201d is no number." });
+  });
+});
+
 describe("the first arrangement", () => {
   it("delivers, and in a hall takes the wave over several hops", () => {
     for (const [widthM, depthM, least] of [
