@@ -165,8 +165,9 @@ function scriptedEvents(raw: Raw): RunEvent[] {
   }
   for (const { id, name, outages } of scenario.floor?.nodes ?? []) {
     for (const { fromS, untilS } of outages) {
-      events.push({ atS: fromS, kind: "outage", text: `node ${id}${name && ` ${name}`} out` });
-      if (untilS !== null) events.push({ atS: untilS, kind: "outage-ends", text: "ends" });
+      const who = `node ${id}${name && ` ${name}`}`;
+      events.push({ atS: fromS, kind: "outage", text: `${who} out` });
+      if (untilS !== null) events.push({ atS: untilS, kind: "outage-ends", text: `${who} back` });
     }
   }
   return events.filter((event) => event.atS < end || (event.kind.endsWith("-ends") && event.atS <= end));

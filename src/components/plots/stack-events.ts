@@ -40,7 +40,9 @@ export function markedEvents(events: readonly RunEvent[], endS: number, steps = 
   const open: Marked[] = [];
   for (const event of [...events].sort((a, b) => a.atS - b.atS)) {
     if (event.kind === "outage-ends") {
-      const began = open.shift();
+      const words = event.text.replace(/ back$/, " out");
+      const own = open.findIndex((item) => item.words === words);
+      const [began] = open.splice(Math.max(0, own), 1);
       if (began) began.untilS = event.atS;
       continue;
     }

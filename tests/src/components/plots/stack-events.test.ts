@@ -13,6 +13,19 @@ const space = (rows: number) => ({
 });
 
 describe("events above the plots", () => {
+  it("joins outages of nodes that overlap with their own ends", () => {
+    const events = [
+      at(1, "outage", "node 1 out"),
+      at(2, "outage", "node 14 out"),
+      at(3, "outage-ends", "node 14 back"),
+      at(4, "outage-ends", "node 1 back"),
+    ];
+    expect(markedEvents(events, 5).map(({ words, atS, untilS }) => [words, atS, untilS])).toEqual([
+      ["node 1 out", 1, 4],
+      ["node 14 out", 2, 3],
+    ]);
+  });
+
   it("joins an outage with its end, and one without an end with the end of the run", () => {
     const marked = markedEvents([at(1, "outage", "outage"), at(2, "outage-ends"), at(3, "outage", "jamming")], 5);
     expect(marked.map(({ words, atS, untilS }) => [words, atS, untilS])).toEqual([
