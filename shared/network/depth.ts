@@ -2,6 +2,7 @@
 import { NO_SLOT, received } from "./flood.ts";
 import type { FloodRecord } from "./floods.ts";
 import type { RoundTiming } from "./round.ts";
+import { medianStep } from "./tally.ts";
 
 export interface DeepNode {
   node: number;
@@ -24,12 +25,7 @@ export function deeperThanBound({ nodes, slots, rounds, firstStep }: FloodRecord
         floods++;
         if (received(first)) counts[first]++;
       }
-      let sum = 0;
-      const median = counts.findIndex((count) => {
-        sum += count;
-        return floods > 0 && 2 * sum >= floods;
-      });
-      latest = Math.max(latest, median);
+      latest = Math.max(latest, medianStep({ firstStep: counts, steps: table[slot].steps, floods }, 0) ?? 0);
     }
     if (latest > hops) deep.push({ node: nodes[i], step: latest });
   }

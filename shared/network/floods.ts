@@ -8,6 +8,7 @@ import type { Floor } from "#shared/scenario/floor-schema.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
 import { hopOffset } from "./channels.ts";
 import { FloodWave, NO_SLOT, RADIO_OFF, type Relay, radioOnTime, received, type SlotTimes, sendsIn, type WaveLinks } from "./flood.ts";
+import { Outages } from "./outages.ts";
 import { occurs, type RoundTiming, type Slot } from "./round.ts";
 import { toNs } from "./schedule.ts";
 import { waveLinks } from "./wave-links.ts";
@@ -38,12 +39,6 @@ interface PreparedSlot extends SlotTimes {
   key: RandomKey;
 }
 
-/** Nanoseconds in which a node is out of service. */
-interface Outage {
-  from: number;
-  until: number;
-}
-
 export class FloodProcess {
   /** Node numbers, in the floor's order. */
   readonly nodes: number[];
@@ -63,7 +58,7 @@ export class FloodProcess {
   private readonly prepared: PreparedSlot[];
   /** Of each place, its index in the floor's list. Places go by node number, so that sums do not depend on the list's order. */
   private readonly places: number[];
-  private readonly outages: Outage[][];
+  private readonly outages: Outages;
   private readonly first: Uint8Array;
   private readonly silent: Uint8Array;
   private readonly beaconNeeded: boolean;
@@ -83,12 +78,7 @@ export class FloodProcess {
     this.rxNs = new Float64Array(n);
     this.first = new Uint8Array(n);
     this.silent = new Uint8Array(n);
-    this.outages = this.places.map((index) =>
-      floor.nodes[index].outages.map(({ fromS, untilS }) => ({
-        from: toNs(fromS),
-        until: untilS === null ? Number.POSITIVE_INFINITY : toNs(untilS),
-      })),
-    );
+    this.outages = new Outages(scenario, timing);
     this.wave = new FloodWave(
       Int32Array.from(this.places, (index) => this.nodes[index]),
       this.relay,
@@ -138,7 +128,8 @@ export class FloodProcess {
     const { source } = slot;
     const n = places.length;
     const begin = round * this.period;
-    for (let i = 0; i < n; i++) first[i] = silent[i] === 1 || this.isDown(i, begin + slot.start, begin + slot.end) ? RADIO_OFF : 0;
+    for (let i = 0; i < n; i++)
+      first[i] = silent[i] === 1 || this.outages.down(this.nodes[places[i]], begin + slot.start, begin + slot.end) ? RADIO_OFF : 0;
     const sent = source >= 0 && first[source] !== RADIO_OFF;
     if (sent) {
       const start = begin + slot.floodStart;
@@ -158,12 +149,6 @@ export class FloodProcess {
       this.rxNs[index] += listen;
     }
   }
-
-  private isDown(place: number, start: number, end: number): boolean {
-    const outages = this.outages[place];
-    for (let i = 0; i < outages.length; i++) if (outages[i].from < end && outages[i].until > start) return true;
-    return false;
-  }
 }
 
 function floorOf(scenario: Scenario): Floor {
@@ -171,16 +156,46 @@ function floorOf(scenario: Scenario): Floor {
   return scenario.floor;
 }
 
+/** Keeps every round that a process draws; in pieces, so that a worker can look around in between. */
+export class FloodRecorder {
+  readonly #process: FloodProcess;
+  readonly #rounds: number;
+  readonly #firstStep: Uint8Array;
+
+  constructor(scenario: Scenario, timing: RoundTiming, rounds: number, seed: number) {
+    this.#process = new FloodProcess(scenario, timing, seed);
+    this.#rounds = rounds;
+    this.#firstStep = new Uint8Array(rounds * this.#process.firstStep.length);
+  }
+
+  /** Rounds drawn. */
+  get done(): number {
+    return this.#process.round;
+  }
+
+  /** Draws at most so many more rounds; true when it has them all. */
+  advance(rounds: number): boolean {
+    const process = this.#process;
+    const until = Math.min(this.#rounds, process.round + rounds);
+    while (process.round < until) {
+      const at = process.round * process.firstStep.length;
+      process.next();
+      this.#firstStep.set(process.firstStep, at);
+    }
+    return process.round >= this.#rounds;
+  }
+
+  record(): FloodRecord {
+    const { nodes, slots, txNs, rxNs } = this.#process;
+    return { nodes, slots, rounds: this.#rounds, firstStep: this.#firstStep, txNs, rxNs };
+  }
+}
+
 /** Draws the floods of all rounds. Same scenario, timing and seed: the same record, bit for bit. */
 export function drawFloods(scenario: Scenario, timing: RoundTiming, rounds: number, seed: number): FloodRecord {
-  const process = new FloodProcess(scenario, timing, seed);
-  const perRound = process.firstStep.length;
-  const firstStep = new Uint8Array(rounds * perRound);
-  for (let round = 0; round < rounds; round++) {
-    process.next();
-    firstStep.set(process.firstStep, round * perRound);
-  }
-  return { nodes: process.nodes, slots: process.slots, rounds, firstStep, txNs: process.txNs, rxNs: process.rxNs };
+  const recorder = new FloodRecorder(scenario, timing, rounds, seed);
+  recorder.advance(rounds);
+  return recorder.record();
 }
 
 /**

@@ -1,4 +1,4 @@
-/** Nodes out of service (model 2): a radio that is off neither sends, relays nor hears; here for processes that know no floods. */
+/** Nodes out of service (model 2): a radio that is off neither sends, relays nor hears. */
 import type { Scenario } from "#shared/scenario/schema.ts";
 import type { RoundTiming, Slot } from "./round.ts";
 import { toNs } from "./schedule.ts";
@@ -36,7 +36,7 @@ export class Outages {
     return spans.some(({ from, until }) => from < until && until > fromNs && (from < untilNs || from === fromNs));
   }
 
-  /** Are sender and receivers of the slot in service in round k, and were they and its host for the beacon when that is needed? */
+  /** For processes that know no floods: are sender and receivers of the slot in service in round k, and were they and its host for the beacon when that is needed? */
   travels(slot: Slot, ns: Span, k: number): boolean {
     if (this.#spans.size === 0) return true;
     const begin = k * this.#period;

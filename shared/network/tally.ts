@@ -273,7 +273,7 @@ export function receivedBy({ firstStep, steps }: SlotTally, place: number): numb
 }
 
 /** Step by which half of all floods have arrived at a node; null: less than half ever do. */
-export function medianStep({ firstStep, steps, floods }: SlotTally, place: number): number | null {
+export function medianStep({ firstStep, steps, floods }: Pick<SlotTally, "firstStep" | "steps" | "floods">, place: number): number | null {
   let sum = 0;
   for (let step = 0; step <= steps; step++) {
     sum += firstStep[place * (steps + 1) + step];

@@ -1,5 +1,6 @@
 /** Radio and round: what a packet costs in time and energy, and who shares the round. */
 import { z } from "zod";
+import { RADIO_FIGURES } from "#shared/network/radio-figures.ts";
 import { nodeId } from "./floor-schema.ts";
 import { count, quantity } from "./quantity.ts";
 
@@ -53,14 +54,7 @@ export const radioSchema = z.strictObject({
       supplyV: quantity("supply", "V", 0.5, 60),
       source: z.string().max(300).default(""),
     })
-    .default({
-      device: "nRF52840, DC/DC",
-      txMa: 6.4,
-      rxMa: 6.53,
-      sleepUa: 3.2,
-      supplyV: 3,
-      source: "Nordic nRF52840 product specification: 802.15.4, 0 dBm, 3 V; sleep with RTC and RAM from memory",
-    }),
+    .default(RADIO_FIGURES[0]),
   battery: z
     .strictObject({
       capacityMah: quantity("battery capacity", "mAh", 1, 1_000_000),

@@ -1,6 +1,6 @@
 /** Longer jobs on a floor, cut into pieces between which a worker hears messages. A job yields how far it is, 0 to 1. */
 import { type ContourOptions, type FloodContours, floodContours } from "#shared/network/contours.ts";
-import { FloodProcess, type FloodRecord } from "#shared/network/floods.ts";
+import { type FloodRecord, FloodRecorder } from "#shared/network/floods.ts";
 import { type LinkRow, meanLinks } from "#shared/network/link-table.ts";
 import type { PreparedFloor } from "#shared/network/prepare.ts";
 import { type FloodSurvey, Survey, type SurveyOptions } from "#shared/network/survey.ts";
@@ -15,15 +15,9 @@ const ROUNDS_AT_ONCE = 20;
 /** Every flood of a run: what the page draws, and what decided the run's deliveries when floods did. */
 export function* floodsJob({ scenario, timing }: Prepared, seed: number | null): Job<FloodRecord> {
   const rounds = roundsOf(scenario);
-  const process = new FloodProcess(scenario, timing, seed ?? scenario.run.seed);
-  const perRound = process.firstStep.length;
-  const firstStep = new Uint8Array(rounds * perRound);
-  for (let round = 0; round < rounds; round++) {
-    process.next();
-    firstStep.set(process.firstStep, round * perRound);
-    if (round % ROUNDS_AT_ONCE === 0) yield round / rounds;
-  }
-  return { nodes: process.nodes, slots: process.slots, rounds, firstStep, txNs: process.txNs, rxNs: process.rxNs };
+  const recorder = new FloodRecorder(scenario, timing, rounds, seed ?? scenario.run.seed);
+  while (!recorder.advance(ROUNDS_AT_ONCE)) yield recorder.done / rounds;
+  return recorder.record();
 }
 
 /** Many floods in figures, and what would help. */

@@ -1,8 +1,9 @@
 /** What a round costs a radio. */
 import { describe, expect, it } from "vitest";
-import { energyBound, nodeFigures, RADIO_FIGURES, radioEnergy, utilisationHint } from "#shared/network/energy.ts";
+import { energyBound, nodeFigures, radioEnergy, utilisationHint } from "#shared/network/energy.ts";
 import { drawFloods } from "#shared/network/floods.ts";
 import { phyTiming } from "#shared/network/phy.ts";
+import { RADIO_FIGURES } from "#shared/network/radio-figures.ts";
 import { roundTiming } from "#shared/network/round.ts";
 import { type Radio, radioSchema } from "#shared/scenario/round-schema.ts";
 import { hall, line } from "../../helpers/floors.ts";

@@ -1,5 +1,6 @@
 import { Link, useParams } from "react-router-dom";
-import { RADIO_FIGURES, utilisationHint } from "#shared/network/energy.ts";
+import { utilisationHint } from "#shared/network/energy.ts";
+import { RADIO_FIGURES } from "#shared/network/radio-figures.ts";
 import type { RoundTiming } from "#shared/network/round.ts";
 import type { Radio } from "#shared/scenario/round-schema.ts";
 import type { Scenario } from "#shared/scenario/schema.ts";
